@@ -1,0 +1,22 @@
+import tailwindcss from '@tailwindcss/vite'
+import react from '@vitejs/plugin-react'
+import { defineConfig } from 'vitest/config'
+
+const root = import.meta.dirname
+
+export default defineConfig({
+  root: 'client',
+  plugins: [react(), tailwindcss()],
+  build: { outDir: '../dist/client', emptyOutDir: true, target: 'es2022' },
+  worker: { format: 'es' },
+  test: {
+    root,
+    reporters: ['default', './tests/support/summary-reporter.ts'],
+    projects: [
+      { extends: true, test: { name: 'engine', root, include: ['tests/{engine,published,reference}/**/*.test.ts'], environment: 'node', testTimeout: 60_000 } },
+      { extends: true, test: { name: 'server', root, include: ['tests/{api,jobs,server}/**/*.test.ts'], environment: 'node', globalSetup: ['tests/support/database.ts'], testTimeout: 30_000, hookTimeout: 60_000 } },
+      { extends: true, test: { name: 'client', root, include: ['tests/client/**/*.test.{ts,tsx}'], environment: 'jsdom', setupFiles: ['tests/support/client-setup.ts'] } },
+      { extends: true, test: { name: 'e2e', root, include: ['tests/e2e/**/*.test.ts'], environment: 'node', globalSetup: ['tests/support/database.ts'], testTimeout: 180_000, hookTimeout: 180_000, fileParallelism: false } },
+    ],
+  },
+})
