@@ -1,0 +1,89 @@
+import type { Definition } from '../sets/definition.ts'
+
+/** `transform`: Mellin transform by the trapezoid; `panels`: the same integral by power series and Gauss-Legendre panels. */
+export type Method = 'transform' | 'panels' | 'partial-sum' | 'finite'
+export type ArithmeticName = 'ball' | 'mpfr'
+
+/** What is asked for: certified digits after the point, or (partial sum) the cut-off up to which terms are added. */
+export type Goal = { digits: number } | { cutoff: string }
+
+export interface ComputationRequest {
+  /** One definition, or several that share one sweep (a table over k). */
+  definitions: Definition[]
+  method: Method
+  arithmetic: ArithmeticName
+  goal: Goal
+  /**
+   * Everything that `prepare` would otherwise choose (precision in bits, step, node range, …), as a certificate records it.
+   * Given, the computation repeats exactly; a value that is not sound is refused, never trusted.
+   */
+  parameters?: Parameters
+}
+
+/** Flat and exact: integers as numbers below 2^53 or decimal strings, rationals as "a/b". */
+export type Parameters = Record<string, string | number>
+
+/** Decimal end points, rounded outward: the number is certainly in [lo, hi]. */
+export interface Enclosure {
+  lo: string
+  hi: string
+}
+
+export type ErrorSource = 'discretisation' | 'truncation-below' | 'truncation-above' | 'tail' | 'series' | 'rounding'
+
+export interface BudgetItem {
+  source: ErrorSource
+  /** Id of the bound in BOUNDS.md that this part of the radius rests on. */
+  bound: string
+  /** Contribution to the radius, decimal in scientific notation, rounded up: "3.1e-42". */
+  magnitude: string
+}
+
+/** One published estimate that the enclosure rests on, and where it was used. */
+export interface EstimateUse {
+  /** Id in the library of estimates. */
+  id: string
+  /** The points or ranges at which it was applied, e.g. "x >= 1000000000". */
+  usedAt: string
+  /** The range in which it is stated to hold, copied from the library. */
+  validFor: string
+  conditional: boolean
+}
+
+export interface Outcome {
+  definition: Definition
+  enclosure: Enclosure
+  /** Half the width, rounded up, scientific notation. */
+  radius: string
+  /** Decimals after the point that every number of the enclosure shares, truncated and rounded. */
+  digits: { truncated: number; rounded: number }
+  method: Method
+  arithmetic: ArithmeticName
+  goal: Goal
+  parameters: Parameters
+  budget: BudgetItem[]
+  estimates: EstimateUse[]
+  /** Enclosures on the way, for the convergence chart: `at` is the cut-off or the number of nodes. */
+  convergence: { at: string; lo: string; hi: string }[]
+}
+
+/** Exact JSON value; integers beyond 2^53 travel as strings. */
+export type Json = null | boolean | number | string | Json[] | { [key: string]: Json }
+export type ShardResult = Json
+
+/**
+ * A computation cut into independent shards: a shard can run on any thread or machine, its result can be stored, and the
+ * outcome depends on the results alone, so that a run is resumed after an interruption and shared between cores without
+ * changing a bit of its enclosure.
+ */
+export interface Computation {
+  readonly request: ComputationRequest
+  /** The request's parameters made complete: pass them back in to repeat the computation. */
+  readonly parameters: Parameters
+  readonly shardCount: number
+  /** Relative cost of a shard, for progress and scheduling. heuristic: affects speed only */
+  shardCost(index: number): number
+  runShard(index: number): Promise<ShardResult>
+  /** One outcome a definition, in the order of the request; needs the results of all shards, in order. */
+  combine(results: ShardResult[]): Promise<Outcome[]>
+}
