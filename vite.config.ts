@@ -3,6 +3,8 @@ import react from '@vitejs/plugin-react'
 import { defineConfig } from 'vitest/config'
 
 const root = import.meta.dirname
+/** What the tests with a database share: one cluster for the run, one database a file. */
+const database = { globalSetup: ['tests/support/database.ts'], setupFiles: ['tests/support/test-database.ts'], hookTimeout: 60_000 }
 
 export default defineConfig({
   root: 'client',
@@ -14,9 +16,9 @@ export default defineConfig({
     reporters: ['default', './tests/support/summary-reporter.ts'],
     projects: [
       { extends: true, test: { name: 'engine', root, include: ['tests/{engine,published,reference}/**/*.test.ts'], environment: 'node', testTimeout: 60_000 } },
-      { extends: true, test: { name: 'server', root, include: ['tests/{api,jobs,server}/**/*.test.ts'], environment: 'node', globalSetup: ['tests/support/database.ts'], testTimeout: 30_000, hookTimeout: 60_000 } },
+      { extends: true, test: { name: 'server', root, include: ['tests/{api,jobs,server}/**/*.test.ts'], environment: 'node', ...database, testTimeout: 30_000 } },
       { extends: true, test: { name: 'client', root, include: ['tests/client/**/*.test.{ts,tsx}'], environment: 'jsdom', setupFiles: ['tests/support/client-setup.ts'] } },
-      { extends: true, test: { name: 'e2e', root, include: ['tests/e2e/**/*.test.ts'], environment: 'node', globalSetup: ['tests/support/database.ts'], testTimeout: 180_000, hookTimeout: 180_000, fileParallelism: false } },
+      { extends: true, test: { name: 'e2e', root, include: ['tests/e2e/**/*.test.ts'], environment: 'node', ...database, testTimeout: 180_000, hookTimeout: 180_000, fileParallelism: false } },
     ],
   },
 })

@@ -1,0 +1,57 @@
+import { setTimeout as pause } from 'node:timers/promises'
+import pg from 'pg'
+import { QueryTypes, Sequelize, type Transaction } from 'sequelize'
+import { env } from './env.ts'
+
+/** The one connection pool of the process. Columns are snake_case; models state their own timestamps. */
+export const sequelize = new Sequelize(env.DATABASE_URL, {
+  dialect: 'postgres',
+  dialectModule: pg,
+  logging: false,
+  pool: { max: 10, min: 0, idle: 10_000, acquire: 20_000 },
+  define: { underscored: true, timestamps: false },
+  dialectOptions: { application_name: 'merestone', connectionTimeoutMillis: 10_000 },
+})
+
+/** Failures after which PostgreSQL has undone everything and asks to be tried again: serialization, deadlock. */
+const TRY_AGAIN = new Set(['40001', '40P01'])
+const ATTEMPTS = 4
+
+/** SQLSTATE of a failed query, if the error came from the database. */
+export function sqlState(error: unknown): string | undefined {
+  return (error as { parent?: { code?: string } } | null)?.parent?.code
+}
+
+/**
+ * Runs `work` in one transaction: all of it is kept or nothing. Where the database gave way to another transaction (deadlock),
+ * `work` runs again, so it must touch nothing but the database.
+ */
+export async function inTransaction<T>(work: (transaction: Transaction) => Promise<T>): Promise<T> {
+  for (let attempt = 1; ; attempt += 1) {
+    try {
+      return await sequelize.transaction(work)
+    } catch (error) {
+      if (attempt === ATTEMPTS || !TRY_AGAIN.has(sqlState(error) ?? '')) throw error
+      await pause(20 * attempt * (1 + Math.random()))
+    }
+  }
+}
+
+/** Values bound to `$name` in SQL. */
+export type Bind = Record<string, unknown>
+
+/** Rows of a query with bound values: `select<Row>('SELECT … WHERE id = $id', { id })`. bigint and numeric columns are strings. */
+export async function select<Row extends object>(sql: string, bind: Bind = {}, transaction?: Transaction): Promise<Row[]> {
+  return sequelize.query<Row>(sql, { type: QueryTypes.SELECT, bind, transaction: transaction ?? null })
+}
+
+/** First row or undefined. */
+export async function selectOne<Row extends object>(sql: string, bind: Bind = {}, transaction?: Transaction): Promise<Row | undefined> {
+  return (await select<Row>(sql, bind, transaction))[0]
+}
+
+/** Runs a statement that changes rows and answers what its RETURNING clause gives. */
+export async function change<Row extends object = Record<string, never>>(sql: string, bind: Bind = {}, transaction?: Transaction): Promise<Row[]> {
+  const [rows] = await sequelize.query(sql, { bind, transaction: transaction ?? null })
+  return Array.isArray(rows) ? (rows as Row[]) : []
+}
