@@ -25,6 +25,15 @@ const settings = z.object({
   LOG_LEVEL: z.enum(['silent', 'error', 'warn', 'info', 'debug']).default('info'),
   /** Threads that compute; 0 means as many as there are cores. */
   COMPUTE_THREADS: z.coerce.number().int().min(0).max(256).default(0),
+  /** A run whose worker has been silent for so long is taken up by another. */
+  RUN_LEASE_SECONDS: z.coerce.number().int().min(1).max(600).default(6),
+  /** CPU time after which a run is ended, and beyond which none is started. */
+  RUN_CPU_LIMIT_SECONDS: z.coerce.number().int().min(1).default(4 * 3600),
+  /** Memory of one computing thread. */
+  RUN_MEMORY_MEGABYTES: z.coerce.number().int().min(64).default(1024),
+  /** Runs of one person, and of one group, that may wait or work at the same time. */
+  RUNS_PER_MEMBER: z.coerce.number().int().min(1).default(6),
+  RUNS_PER_GROUP: z.coerce.number().int().min(1).default(24),
   /** Requests a minute from one address before it is asked to wait. */
   RATE_LIMIT: z.coerce.number().int().min(1).default(1200),
 })
