@@ -6,13 +6,15 @@ import { evenBernoulliNumbers } from './bernoulli.ts'
 import { units } from './characters.ts'
 
 /**
- * For one s: sums over the residue classes, sum of n^-ms over n = a mod q, for every unit a and m = 1, 2, 3, … in turn. For
- * m = 1 the common pole is taken out: the sum less 1/(q (s-1)), continued to s = 1. Sums over a against a non-principal
- * character do not feel it.
+ * For one s: sums over the residue classes, sum of n^-ms over n = a mod q, for every unit a and one m after the other, from 1
+ * on. For m = 1 the common pole is taken out: the sum less 1/(q (s-1)), continued to s = 1. Sums over a against a
+ * non-principal character do not feel it.
  */
 export interface ClassSums<N> {
-  /** Moves on to the next m and returns its sums in the order of `units(q)`. */
-  next(): N[]
+  /** Goes on from m to m + 1. */
+  advance(): void
+  /** The sums for the present m, in the order of `units(q)`. */
+  sums(): N[]
 }
 
 /**
@@ -20,7 +22,7 @@ export interface ClassSums<N> {
  * omitted term), L-2 (the regular part near s = 1). *Rounding*: powers are shared between the m, one product each.
  */
 export function createClassSums<N>(a: Arithmetic<N>, q: number): (s: N, sMinusOne: N) => ClassSums<N> {
-  // heuristic: affects speed only. N terms a class before the Euler-Maclaurin tail, and its length.
+  // Terms of a class before the Euler-Maclaurin tail, and the length of that.
   const blocks = Math.max(6, Math.ceil(a.precision / 9)) // heuristic: affects speed only
   const corrections = Math.max(4, Math.ceil(a.precision / 7)) // heuristic: affects speed only
   const coprime = units(q)
@@ -38,11 +40,13 @@ export function createClassSums<N>(a: Arithmetic<N>, q: number): (s: N, sMinusOn
     // One vector a class: its first terms, and last the power at the edge where the tail begins.
     const first = coprime.map((c) => a.vector(Array.from({ length: blocks + 1 }, (_, j) => powers[c + j * q])))
     let current: Vector<N>[] = first
-    let m = 0
+    let m = 1
     return {
-      next() {
+      advance() {
         m += 1
-        if (m > 1) current = current.map((v, i) => a.multiplyVectors(v, first[i]))
+        current = current.map((v, i) => a.multiplyVectors(v, first[i]))
+      },
+      sums() {
         const ms = m === 1 ? s : a.scale(s, rational(m))
         const factors = risingFactors(a, ms, tails)
         return coprime.map((_, i) => {

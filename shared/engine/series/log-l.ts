@@ -6,15 +6,20 @@ import { createClassSums } from './class-sums.ts'
 import { type Complex, logComplex, multiplyComplex, rootsOfUnity } from './complex.ts'
 
 /**
- * Logarithms of L_A(ms, chi) = L(ms, chi) prod over p <= A of (1 - chi(p) p^-ms), m = 1, 2, 3, …, for one character of each
- * conjugate pair, in the order of `LogL.characters`.
+ * Logarithms of L_A(ms, chi) = L(ms, chi) prod over p <= A of (1 - chi(p) p^-ms), for one m after the other, from 1 on, and
+ * one character of each conjugate pair, in the order of `LogL.characters`.
  */
 export interface LogLAt<N> {
-  next(): Complex<N>[]
+  /** Goes on from m to m + 1. */
+  advance(): void
+  /** The logarithms for the present m. */
+  logs(): Complex<N>[]
 }
 
 export interface LogL<N> {
   readonly characters: readonly Character[]
+  /** exp(2 pi i j / order), `order` being that of the characters. */
+  readonly roots: readonly Complex<N>[]
   /** s >= 1 and s - 1, both enclosed, since near s = 1 the difference carries what s has lost. */
   at(s: N, sMinusOne: N): LogLAt<N>
 }
@@ -32,35 +37,39 @@ export function createLogL<N>(a: Arithmetic<N>, q: number, split: number): LogL<
   const order = chosen[0].order
   const roots = rootsOfUnity(a, order)
 
-  /** L_A(ms, chi) for the next m, before logarithms. */
-  const values = (s: N, sMinusOne: N): (() => Complex<N>[]) => {
+  /** L_A(ms, chi), before logarithms. */
+  const valuesAt = (s: N, sMinusOne: N): { advance(): void; values(): Complex<N>[] } => {
     const sums = classSums(s, sMinusOne)
     const first = a.vector(logs.map((log) => a.exp(a.negate(a.multiply(s, log)))))
     let powers = first
-    let m = 0
-    return () => {
-      m += 1
-      if (m > 1) powers = a.multiplyVectors(powers, first)
-      const h = sums.next()
-      return chosen.map((chi) => {
-        let value: Complex<N> = weighted(a, roots, h.map((_, i) => chi.exponents[classes[i] % q]), h)
-        primes.forEach((p, i) => {
-          const minusPower = a.negate(a.item(powers, i))
-          const root = roots[chi.exponents[p % q]]
-          const factor = { re: a.add(a.rational(ONE), a.multiply(root.re, minusPower)), im: a.multiply(root.im, minusPower) }
-          value = multiplyComplex(a, value, factor)
+    return {
+      advance() {
+        powers = a.multiplyVectors(powers, first)
+        sums.advance()
+      },
+      values() {
+        const h = sums.sums()
+        return chosen.map((chi) => {
+          let value: Complex<N> = weighted(a, roots, classes.map((c) => chi.exponents[c]), h)
+          primes.forEach((p, i) => {
+            const minusPower = a.negate(a.item(powers, i))
+            const root = roots[chi.exponents[p % q]]
+            const factor = { re: a.add(a.rational(ONE), a.multiply(root.re, minusPower)), im: a.multiply(root.im, minusPower) }
+            value = multiplyComplex(a, value, factor)
+          })
+          return value
         })
-        return value
-      })
+      },
     }
   }
 
-  certifyHalfPlane(a, q, split, (s) => values(a.rational(s), a.rational(add(s, rational(-1))))())
+  certifyHalfPlane(a, q, split, (s) => valuesAt(a.rational(s), a.rational(add(s, rational(-1)))).values())
   return {
     characters: chosen,
+    roots,
     at(s, sMinusOne) {
-      const next = values(s, sMinusOne)
-      return { next: () => next().map((value) => logComplex(a, value)) }
+      const at = valuesAt(s, sMinusOne)
+      return { advance: () => at.advance(), logs: () => at.values().map((value) => logComplex(a, value)) }
     },
   }
 }
