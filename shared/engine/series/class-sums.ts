@@ -2,7 +2,7 @@ import { type Arithmetic, type Vector, type Weights, magnitudeUpper, makeWeights
 import { bitLength, factorial } from '../arithmetic/integers.ts'
 import { leastPrimeDivisors } from '../arithmetic/primes.ts'
 import { type Rational, ONE, divide, multiply, rational } from '../arithmetic/rational.ts'
-import { evenBernoulliNumbers } from './bernoulli.ts'
+import { bernoulliNumbers } from './bernoulli.ts'
 import { units } from './characters.ts'
 
 /**
@@ -64,7 +64,7 @@ export function createClassSums<N>(a: Arithmetic<N>, q: number): (s: N, sMinusOn
 
 /** B_2k q^(2k-1) / (2k)! for k = 1 … count. */
 function tailCoefficients(q: number, count: number): Rational[] {
-  return evenBernoulliNumbers(count).map((b, i) => multiply(b, rational(BigInt(q) ** BigInt(2 * i + 1), factorial(2 * i + 2))))
+  return bernoulliNumbers(count).slice(1).map((b, i) => multiply(b, rational(BigInt(q) ** BigInt(2 * i + 1), factorial(2 * i + 2))))
 }
 
 /**

@@ -1,6 +1,6 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type Rational, ZERO, add, magnitude, multiply, rational, subtract } from '../arithmetic/rational.ts'
-import { evenBernoulliNumbers } from './bernoulli.ts'
+import { bernoulliNumbers } from './bernoulli.ts'
 
 /**
  * Euler's constant.
@@ -9,13 +9,13 @@ import { evenBernoulliNumbers } from './bernoulli.ts'
  */
 export function eulerGamma<N>(arithmetic: Arithmetic<N>): N {
   const n = BigInt(Math.max(10, arithmetic.precision >> 1)) // heuristic: affects speed only
-  const terms = evenBernoulliNumbers(Math.max(4, arithmetic.precision >> 2)) // heuristic: affects speed only
+  const terms = bernoulliNumbers(Math.max(4, arithmetic.precision >> 2)) // heuristic: affects speed only
   let exact = subtract(harmonic(1n, n + 1n), rational(1n, 2n * n))
   let omitted: Rational = ZERO
-  for (let k = 1; k <= terms.length; k++) {
-    const term = multiply(terms[k - 1], rational(1n, BigInt(2 * k) * n ** BigInt(2 * k)))
+  for (let k = 1; k < terms.length; k++) {
+    const term = multiply(terms[k], rational(1n, BigInt(2 * k) * n ** BigInt(2 * k)))
     omitted = magnitude(term)
-    if (k === terms.length || omitted.num << BigInt(arithmetic.precision + 4) < omitted.den) break
+    if (k === terms.length - 1 || omitted.num << BigInt(arithmetic.precision + 4) < omitted.den) break
     exact = add(exact, term)
   }
   const value = arithmetic.subtract(arithmetic.rational(exact), arithmetic.log(arithmetic.rational(rational(n))))
