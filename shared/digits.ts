@@ -108,8 +108,8 @@ export function splitEnclosure(lo: string, hi: string, show = Infinity): SplitEn
   if (shared === places) return { negative, integer: lowInteger, decimals, lowerNext: '', upperNext: '' }
   const prefix = `${lowInteger}.${decimals}`
   let kept = Math.min(places, shared + show)
-  let lower = lowText
-  let upper = highText
+  let lower: string
+  let upper: string
   do {
     lower = decimalText(floorTo(low, places, kept), kept).replace('-', '')
     upper = decimalText(ceilTo(high, places, kept), kept).replace('-', '')

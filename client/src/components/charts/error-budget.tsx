@@ -1,0 +1,68 @@
+import { lazy } from 'react'
+import { ChartFigure } from './chart-figure.tsx'
+import { Table } from '../ui/table.tsx'
+import { Power } from './power.tsx'
+
+const ErrorBudgetPlot = lazy(() => import('./error-budget-plot.tsx'))
+
+export type ErrorSource = 'discretisation' | 'truncation-below' | 'truncation-above' | 'tail' | 'series' | 'rounding'
+
+export interface BudgetLine {
+  source: ErrorSource
+  /** Id of the bound. */
+  bound: string
+  /** The bound in one line. */
+  statement: string
+  /** Contribution to the radius, rounded up: "3.1e-42". */
+  magnitude: string
+}
+
+export const SOURCE_WORDS: Record<ErrorSource, string> = {
+  discretisation: 'Discretisation',
+  'truncation-below': 'Truncation below',
+  'truncation-above': 'Truncation above',
+  tail: 'Tail',
+  series: 'Series',
+  rounding: 'Rounding',
+}
+
+/** "3.1e-42" as it is printed. */
+export function Magnitude({ text }: { text: string }) {
+  const [mantissa, exponent] = text.toLowerCase().split('e')
+  return exponent && Number(exponent) !== 0 ? <Power factor={mantissa ?? ''} exponent={Number(exponent)} /> : <span className="whitespace-nowrap">{mantissa}</span>
+}
+
+interface ErrorBudgetProps {
+  items: BudgetLine[]
+  /** Half the width of the enclosure, rounded up. */
+  radius: string
+}
+
+/** How much of the radius each source brings. */
+export function ErrorBudget({ items, radius }: ErrorBudgetProps) {
+  return (
+    <ChartFigure
+      caption="Each source's share of the radius on a logarithmic scale, each rounded up; the radius of the enclosure last."
+      chart={<ErrorBudgetPlot items={items} radius={radius} />}
+      table={<BudgetTable items={items} radius={radius} />}
+    />
+  )
+}
+
+/** The same numbers with the statement of each bound. */
+export function BudgetTable({ items, radius }: ErrorBudgetProps) {
+  const rows = [...items.map((item, index) => ({ key: String(index), ...item })), { key: 'radius', source: null, bound: '', statement: 'Half the width of the enclosure', magnitude: radius }]
+  return (
+    <Table
+      caption="Error budget"
+      rows={rows}
+      rowKey={(row) => row.key}
+      columns={[
+        { key: 'source', header: 'Source', cell: (row) => (row.source ? SOURCE_WORDS[row.source] : <strong className="font-semibold">Radius</strong>) },
+        { key: 'magnitude', header: 'At most', align: 'right', cell: (row) => <Magnitude text={row.magnitude} /> },
+        { key: 'bound', header: 'Bound', cell: (row) => row.bound && <code className="whitespace-nowrap">{row.bound}</code> },
+        { key: 'statement', header: 'What the bound says', cell: (row) => row.statement },
+      ]}
+    />
+  )
+}
