@@ -84,6 +84,11 @@ export interface Computation {
   /** Relative cost of a shard, for progress and scheduling. heuristic: affects speed only */
   shardCost(index: number): number
   runShard(index: number): Promise<ShardResult>
+  /**
+   * Enclosures that hold already when only some shards are there (in order, undefined where missing), one a definition; null where
+   * these shards do not tell any yet. Absent where the method has nothing to tell before the end.
+   */
+  interim?(results: (ShardResult | undefined)[]): Promise<Enclosure[] | null>
   /** One outcome a definition, in the order of the request; needs the results of all shards, in order. */
   combine(results: ShardResult[]): Promise<Outcome[]>
 }
