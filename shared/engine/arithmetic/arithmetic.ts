@@ -38,17 +38,21 @@ export interface Arithmetic<N> {
   pi(): N
   log2(): N
 
-  /** Many values handled at once, which an implementation may store tightly; their magnitudes must be at most 1. */
+  /** Numbers in [0, 1] handled many at once, which an implementation may store tightly. */
   vector(items: readonly N[]): Vector<N>
   /** Entry by entry products. */
   multiplyVectors(a: Vector<N>, b: Vector<N>): Vector<N>
   item(v: Vector<N>, index: number): N
   /** (sum of weights[i] v[i]) / divisor with exact integers; divisor > 0. The sum goes over the shorter of the two. */
   dot(weights: Weights, v: Vector<N>): N
+  /** Product of 1 - v[i] over the first `count` entries. */
+  eulerProduct(v: Vector<N>, count: number): N
 
   /** Exact end points: dyadic rationals. */
   lower(x: N): Rational
   upper(x: N): Rational
+  /** Integers lo, hi with x in [lo, hi] 2^-precision. */
+  fixedBounds(x: N): [bigint, bigint]
 
   /**
    * Runs `work` and releases every value made inside it; `work` must return plain data, not an N. Needed by implementations

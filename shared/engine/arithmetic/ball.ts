@@ -11,7 +11,7 @@ export interface Ball {
   readonly rad: bigint
 }
 
-/** Midpoints with one radius for all: bulk accounting for the inner loops. Magnitudes, radius included, are at most 1. */
+/** Midpoints in [0, 1] with one radius for all: bulk accounting for the inner loops (A-3). */
 interface BallVector extends Vector<Ball> {
   readonly mids: readonly bigint[]
   readonly rad: bigint
@@ -93,7 +93,7 @@ export function createBallArithmetic(precision: number): Arithmetic<Ball> {
         mids: items.map((item) => item.mid),
         rad: items.reduce((largest, item) => max(largest, item.rad), 0n),
       }
-      if (vector.mids.some((mid) => abs(mid) + vector.rad > one)) throw new RangeError('a vector holds numbers of magnitude at most 1')
+      if (vector.mids.some((mid) => mid < 0n || mid > one)) throw new RangeError('a vector holds numbers in [0, 1]')
       return vector
     },
     multiplyVectors: (a, b) => {
@@ -101,7 +101,7 @@ export function createBallArithmetic(precision: number): Arithmetic<Ball> {
       const length = Math.min(x.length, y.length)
       const mids = new Array<bigint>(length)
       for (let i = 0; i < length; i++) mids[i] = (x.mids[i] * y.mids[i]) >> p
-      // |ab - a'b'| <= |a| rad b + |b'| rad a <= rad a + rad b, magnitudes being at most 1; one unit for the shift (A-3).
+      // |ab - a'b'| <= |a - a'| |b| + |a'| |b - b'| <= rad a + rad b, as b and a' are in [0, 1]; one unit for the shift (A-3).
       const product: BallVector = { length, mids, rad: x.rad + y.rad + 1n }
       return product
     },
@@ -114,9 +114,17 @@ export function createBallArithmetic(precision: number): Arithmetic<Ball> {
       for (let i = 0; i < length; i++) total += numerators[i] * mids[i]
       return { mid: floorDivide(total, divisor), rad: ceilDivide(weights.absoluteSum * rad, divisor) + 1n }
     },
+    eulerProduct: (v, count) => {
+      const { mids, rad } = v as BallVector
+      let mid = one
+      for (let i = 0; i < count; i++) mid = (mid * (one - mids[i])) >> p
+      // Each factor is in [0, 1] and known up to rad, each shift costs less than one unit (A-3).
+      return { mid, rad: BigInt(count) * (rad + 1n) }
+    },
 
     lower: (x) => dyadic(x.mid - x.rad, precision),
     upper: (x) => dyadic(x.mid + x.rad, precision),
+    fixedBounds: (x) => [x.mid - x.rad, x.mid + x.rad],
     frame: (work) => work(),
   }
 }
