@@ -14,10 +14,12 @@ interface Tier {
 }
 
 export const TIERS: readonly Tier[] = [
+  { from: 2 ** 9, cellBytes: 4, order: 8, ratio: 7 },
   { from: 2 ** 13, cellBytes: 16, order: 6, ratio: 9 },
   { from: 2 ** 17, cellBytes: 64, order: 5, ratio: 11 },
   { from: 2 ** 20, cellBytes: 256, order: 4, ratio: 12 },
 ]
+export const HIGHEST_ORDER = TIERS[0].order
 export const LONGEST_BLOCK = 2 ** 16
 
 /** Primes below this are handed out singly. */
@@ -28,7 +30,9 @@ const OFFSETS = Float64Array.from({ length: 32 }, (_, i) => 15 * (i >> 3) + (RES
 
 /** The block that contains a byte: blocks are aligned powers of two, which segments and cells respect. */
 function blockAround(byte: number): { tier: Tier; start: number; length: number } {
-  const tier = TIERS[byte >= TIERS[2].from ? 2 : byte >= TIERS[1].from ? 1 : 0]
+  let t = TIERS.length - 1
+  while (byte < TIERS[t].from) t--
+  const tier = TIERS[t]
   let length = tier.cellBytes
   while (length < LONGEST_BLOCK && length * 2 ** (tier.ratio + 1) <= byte) length *= 2
   return { tier, start: byte - (byte % length), length }
@@ -91,7 +95,7 @@ export function primeMoments(lo: number, hi: number, take: (batch: MomentSet) =>
   let singles: number[] = WHEEL_PRIMES.filter(
     (p) => lo < p && p <= hi && (!residueClass || (p - residueClass.residue) % residueClass.modulus === 0),
   )
-  const cell = new Float64Array(7)
+  const cell = new Float64Array(HIGHEST_ORDER + 1)
   let current: MomentBlock | undefined
 
   const handOver = () => {
