@@ -81,7 +81,7 @@ export const up: Migration['up'] = async (query) => {
     );
     CREATE INDEX access_tokens_member ON access_tokens (member_id);
 
-    -- One row a failure; key is "account:<sha-256 of the e-mail>" or "address:<network>".
+    -- One row an attempt that failed; key names an account, a network, or the two together.
     CREATE TABLE sign_in_failures (
       id bigint GENERATED ALWAYS AS IDENTITY PRIMARY KEY,
       key text NOT NULL,

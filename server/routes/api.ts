@@ -1,7 +1,21 @@
 import { Router } from 'express'
+import { authenticate } from '../middleware/authenticate.ts'
+import { accessToken } from './access-token.ts'
+import { account } from './account.ts'
+import { group } from './group.ts'
+import { invitation } from './invitation.ts'
+import { passwordReset } from './password-reset.ts'
+import { session } from './session.ts'
 
 /** Everything under /api/v1, one router a resource. */
 export function api(): Router {
   const router = Router()
+  router.use(authenticate)
+  router.use(session)
+  router.use('/password-resets', passwordReset)
+  router.use('/invitations', invitation)
+  router.use('/group', group)
+  router.use('/account', account)
+  router.use('/access-tokens', accessToken)
   return router
 }

@@ -1,0 +1,63 @@
+import type { RequestHandler } from 'express'
+import { hasRight, type Right } from '../../shared/permissions.ts'
+import type { TokenScope } from '../../shared/schemas/session.ts'
+import { sessionOfCookie } from '../auth/session-cookie.ts'
+import { tokenHash } from '../auth/tokens.ts'
+import { forbidden, Problem, unauthenticated } from '../errors.ts'
+import { readerBySession, readerByToken } from '../queries/reader.ts'
+import './request.ts'
+
+const SAFE = new Set(['GET', 'HEAD', 'OPTIONS'])
+
+/** Finds out who asks and sets `req.reader`; a request without cookie or token is a reader without account. */
+export const authenticate: RequestHandler = async (req, _res, next) => {
+  Object.defineProperty(req, 'member', {
+    configurable: true,
+    get: () => {
+      if (!req.reader) throw unauthenticated()
+      return req.reader
+    },
+  })
+  const bearer = /^Bearer +(\S+)$/i.exec(req.headers.authorization ?? '')?.[1]
+  if (req.headers.authorization !== undefined) {
+    req.reader = bearer === undefined ? undefined : await readerByToken(tokenHash(bearer))
+    if (!req.reader) throw new Problem(401, 'token_refused', 'This access token is unknown, expired or revoked. Make a new one under Group, access tokens.', { headers: { 'WWW-Authenticate': 'Bearer error="invalid_token"' } })
+  } else {
+    const sessionId = sessionOfCookie(req.headers.cookie)
+    req.reader = sessionId === undefined ? undefined : await readerBySession(sessionId)
+  }
+  next()
+}
+
+/** The request must come from a member: by session, or for reading by an access token with the scope "read". */
+export const signedIn: RequestHandler = (req, _res, next) => {
+  const { via } = req.member
+  if (via.kind === 'token') {
+    if (!SAFE.has(req.method)) throw forbidden('session_needed', 'This cannot be done with an access token. Sign in.')
+    requireScope(via.scopes, 'read')
+  }
+  next()
+}
+
+/** As `signedIn`, and open to access tokens with this scope. */
+export const signedInFor = (scope: TokenScope): RequestHandler => (req, _res, next) => {
+  const { via } = req.member
+  if (via.kind === 'token') requireScope(via.scopes, scope)
+  next()
+}
+
+/** The request must come from a member who is signed in by password: what concerns the account itself. */
+export const signedInByPassword: RequestHandler = (req, _res, next) => {
+  if (req.member.via.kind !== 'session') throw forbidden('session_needed', 'This cannot be done with an access token. Sign in.')
+  next()
+}
+
+/** One of the member's roles must carry the right. Whether it covers the thing at hand is for the policies, on the loaded row. */
+export const may = (right: Right): RequestHandler => (req, _res, next) => {
+  if (!hasRight(req.member.roles, right)) throw forbidden('role_needed', 'Your roles do not allow this. A lead of your group can change them.')
+  next()
+}
+
+function requireScope(scopes: string[], scope: TokenScope): void {
+  if (!scopes.includes(scope)) throw forbidden('scope_needed', `This access token lacks the scope "${scope}".`)
+}
