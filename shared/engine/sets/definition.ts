@@ -38,10 +38,10 @@ export interface SeriesDefinition {
   weight: Weight
 }
 
-/** Sum over primes of f(p), or product of 1 + f(p), f a rational function with rational coefficients, or a named constant. */
+/** Sum over the primes of f(p), or product of f(p), f a rational function with rational coefficients. */
 export interface OverPrimesDefinition {
   type: 'over-primes'
-  /** Canonical text of f: numerator and denominator coefficient lists in p, lowest terms, integers as decimal strings, ascending powers. */
+  /** f in lowest terms: integer coefficients as decimal strings, ascending powers of p, leading one of the denominator positive. */
   numerator: string[]
   denominator: string[]
   combine: 'sum' | 'product'
