@@ -170,11 +170,12 @@ function joinThousands(text: string): string {
 /** Digits after the point, in groups of one size; the first and the last may be shorter, and a line may break anywhere. */
 function joinGroups(text: string): string {
   const lines = text.split(/\s*\n\s*/).map((line) => line.split(/[\s,']+/).filter((group) => group !== ''))
-  for (const groups of lines) {
+  for (const [index, groups] of lines.entries()) {
     if (groups.length < 2) continue
     const sizes = groups.map((group) => group.length)
     const size = Math.max(...sizes)
-    const regular = sizes.slice(1, -1).every((length) => length === size) && (groups.length > 2 || (sizes[0] ?? 0) >= size - 1)
+    // Two groups on the first line show no regular size by themselves: the first may lack one digit, the one before the point.
+    const regular = sizes.slice(1, -1).every((length) => length === size) && (index > 0 || groups.length > 2 || (sizes[0] ?? 0) >= size - 1)
     if (!regular || size > 10 || size < 2) refuse('The groups of digits are of unequal size, so this may be more than one number. Paste the digits of one number, or join them.')
   }
   const fraction = lines.flat().join('')
