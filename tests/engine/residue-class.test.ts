@@ -24,9 +24,8 @@ describe('Dirichlet characters', () => {
     for (let q = 1; q <= 100; q++) {
       const [group, all] = [units(q), characters(q)]
       expect(new Set(all.map((chi) => chi.exponents.join())).size).toBe(group.length)
-      for (const chi of all) {
-        for (const a of group) for (const b of group) expect((chi.exponents[a % q] + chi.exponents[b % q]) % chi.order).toBe(chi.exponents[(a * b) % q])
-      }
+      const broken = all.filter((chi) => group.some((a) => group.some((b) => (chi.exponents[a % q] + chi.exponents[b % q]) % chi.order !== chi.exponents[(a * b) % q])))
+      expect(broken).toEqual([])
       const chosen = upToConjugation(all)
       const real = chosen.filter(isReal).length
       expect(1 + real + 2 * (chosen.length - real)).toBe(group.length)
