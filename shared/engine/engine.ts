@@ -1,22 +1,37 @@
 import { EngineRefusal } from './errors.ts'
-import type { Computation, ComputationRequest, Method, Outcome, ShardResult } from './methods/computation.ts'
+import type { ArithmeticName, Computation, ComputationRequest, Goal, Method, Outcome, ShardResult } from './methods/computation.ts'
+import { expansion } from './methods/expansion.ts'
 import type { MethodModule } from './methods/method.ts'
+import type { Definition } from './sets/definition.ts'
 import { trapezoid } from './methods/trapezoid.ts'
 
 /** Every method there is; a new one is one file and one entry here. */
 export const METHODS: Partial<Record<Method, MethodModule>> = {
   transform: trapezoid,
+  expansion,
 }
 
 export function methodNamed(name: Method): MethodModule {
   const method = METHODS[name]
-  if (!method) throw new EngineRefusal('unknown-method', 'method', `There is no method named ${name}.`)
+  if (!method) throw new EngineRefusal('unknown_method', 'method', `There is no method named ${name}.`)
   return method
+}
+
+/** The quickest method that reaches the goal, by its own forecast; throws EngineRefusal with the methods' reasons where none does. */
+export function quickestMethod(definition: Definition, goal: Goal, arithmetic: ArithmeticName, speed = 1): Method {
+  const forecasts = Object.values(METHODS).map((method) => ({ method, forecast: method.forecast(definition, goal, arithmetic, speed) }))
+  let best: { name: Method; seconds: number } | undefined
+  for (const { method, forecast } of forecasts) {
+    if (forecast.possible && (!best || forecast.seconds < best.seconds)) best = { name: method.name, seconds: forecast.seconds }
+  }
+  if (best) return best.name
+  const reasons = forecasts.flatMap(({ forecast }) => (forecast.possible ? [] : [forecast.reason]))
+  throw new EngineRefusal('no_method', 'method', [...new Set(reasons)].join(' '))
 }
 
 /** Chooses parameters, checks everything and cuts the work into shards; throws EngineRefusal. Definitions must be canonical. */
 export async function prepare(request: ComputationRequest): Promise<Computation> {
-  if (request.definitions.length === 0) throw new EngineRefusal('nothing-to-do', 'definitions', 'Name at least one constant.')
+  if (request.definitions.length === 0) throw new EngineRefusal('nothing_to_do', 'definitions', 'Name at least one constant.')
   return methodNamed(request.method).prepare(request)
 }
 

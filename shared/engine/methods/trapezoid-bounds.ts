@@ -61,7 +61,7 @@ export function truncationAboveUpper<N>(
 function geometricUpper<N>(a: Arithmetic<N>, first: N, ratio: N, field: string): Rational {
   const rest = a.subtract(a.rational(ONE), ratio)
   if (a.lower(rest).num <= 0n) {
-    throw new EngineRefusal('unsound-parameter', field, `The parameter ${field} leaves out terms that do not decrease yet.`)
+    throw new EngineRefusal('unsound_parameter', field, `The parameter ${field} leaves out terms that do not decrease yet.`)
   }
   return a.upper(a.divide(first, rest))
 }

@@ -33,14 +33,14 @@ export function readParameters(given: Parameters): TrapezoidParameters {
     const value = given[name]
     const [least, most] = WHOLE[name]
     if (typeof value !== 'number' || !Number.isInteger(value) || value < least || value > most) {
-      throw new EngineRefusal('unsound-parameter', name, `The parameter ${name} must be a whole number from ${least} to ${most}.`)
+      throw new EngineRefusal('unsound_parameter', name, `The parameter ${name} must be a whole number from ${least} to ${most}.`)
     }
     return value
   }
   const fraction = (name: 'step' | 'gap'): Rational => {
     const value = parseRational(String(given[name] ?? ''))
     if (!value || value.num <= 0n || compare(value, ONE) > 0 || value.den > 2n ** 40n) {
-      throw new EngineRefusal('unsound-parameter', name, `The parameter ${name} must be a fraction above 0 and at most 1.`)
+      throw new EngineRefusal('unsound_parameter', name, `The parameter ${name} must be a fraction above 0 and at most 1.`)
     }
     return value
   }
@@ -94,7 +94,7 @@ export function chooseParameters(
   const first = -Math.ceil(depth / step) - 1
   const last = Math.max(1, Math.ceil(Math.log(height) / step)) // heuristic: affects speed only
   if (last - first > MOST_NODES) {
-    throw new EngineRefusal('too-slow', 'logPower', 'The sum converges too slowly for so many digits by this method: ask for fewer digits.')
+    throw new EngineRefusal('too_slow', 'logPower', 'The sum converges too slowly for so many digits by this method: ask for fewer digits.')
   }
 
   // Loss through sums of many terms, through t^b at large t, through 1/(s0 - 1), and through symmetric functions.

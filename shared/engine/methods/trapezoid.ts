@@ -25,21 +25,21 @@ interface Task {
 function taskOf(definitions: readonly Definition[]): Task {
   const first = definitions[0]
   if (definitions.some((one) => one.type !== 'series')) {
-    throw new EngineRefusal('method-does-not-fit', 'method', 'The transform sums weights over a set of integers; this constant is of another kind.')
+    throw new EngineRefusal('method_does_not_fit', 'method', 'The transform sums weights over a set of integers; this constant is of another kind.')
   }
   const { weight } = first as SeriesDefinition
   const [power, logPower] = [parseRational(weight.power), parseRational(weight.logPower)]
-  if (!power || !logPower) throw new EngineRefusal('not-a-number', 'power', 'The weight is not written as exact numbers.')
+  if (!power || !logPower) throw new EngineRefusal('not_a_number', 'power', 'The weight is not written as exact numbers.')
   if (logPower.num <= 0n) {
-    throw new EngineRefusal('method-does-not-fit', 'method', 'The transform needs a positive power of the logarithm; use the method for derivatives.')
+    throw new EngineRefusal('method_does_not_fit', 'method', 'The transform needs a positive power of the logarithm; use the method for derivatives.')
   }
   const series = definitions.map((one) => {
     const { set, weight: other } = one as SeriesDefinition
     if (other.power !== weight.power || other.logPower !== weight.logPower) {
-      throw new EngineRefusal('mixed-weights', 'definitions', 'One sweep serves one weight: ask for other weights in runs of their own.')
+      throw new EngineRefusal('mixed_weights', 'definitions', 'One sweep serves one weight: ask for other weights in runs of their own.')
     }
     const found = dirichletSeries(set, power)
-    if (!found) throw new EngineRefusal('method-does-not-fit', 'method', 'The transform does not know the Dirichlet series of this set.')
+    if (!found) throw new EngineRefusal('method_does_not_fit', 'method', 'The transform does not know the Dirichlet series of this set.')
     if (compare(logPower, rational(found.pole)) <= 0) {
       throw new EngineRefusal('diverges', 'logPower', 'The sum diverges: over such a set 1/(n log^b n) needs b > 1.')
     }
@@ -51,9 +51,9 @@ function taskOf(definitions: readonly Definition[]): Task {
 }
 
 function parametersFor(task: Task, goal: Goal): TrapezoidParameters {
-  if (!('digits' in goal)) throw new EngineRefusal('method-does-not-fit', 'cutoff', 'The transform has no cut-off: ask for a number of digits.')
+  if (!('digits' in goal)) throw new EngineRefusal('method_does_not_fit', 'cutoff', 'The transform has no cut-off: ask for a number of digits.')
   if (goal.digits > MOST_DIGITS) {
-    throw new EngineRefusal('too-many-digits', 'digits', `The trapezoid goes up to ${MOST_DIGITS} digits: use panels, or ask for fewer.`)
+    throw new EngineRefusal('too_many_digits', 'digits', `The trapezoid goes up to ${MOST_DIGITS} digits: use panels, or ask for fewer.`)
   }
   return chooseParameters(goal.digits, task.series, task.power, task.logPower, task.complexity, task.distinct)
 }

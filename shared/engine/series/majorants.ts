@@ -10,12 +10,12 @@ import type { Majorant } from './dirichlet.ts'
 /** Coefficients are rounded up to this many bits after the point, so that they stay short. */
 const BITS = 64
 
-function roundUp(a: Rational): Rational {
+export function roundUp(a: Rational): Rational {
   return dyadic(ceilScaled(a, BITS), BITS)
 }
 
 /** *Claim*: log(1 + 1/x) <= result for x > 0. *Bound*: T-3. log q <= log 2 times the bit length of ceil(q), log 2 < 0.6932. */
-function logZetaUpper(excess: Rational): Rational {
+export function logZetaUpper(excess: Rational): Rational {
   const q = ceil(add(ONE, rational(excess.den, excess.num)))
   return multiply(rational(bitLength(q)), rational(6932, 10_000))
 }
