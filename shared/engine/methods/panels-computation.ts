@@ -1,0 +1,186 @@
+import type { Arithmetic } from '../arithmetic/arithmetic.ts'
+import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
+import { ONE, type Rational, ZERO, add, divide, dyadic, multiply, rational, subtract, toText } from '../arithmetic/rational.ts'
+import { reciprocalGamma } from '../series/gamma.ts'
+import { areDescending, spareBits } from '../series/gauss-legendre.ts'
+import type { Computation, ComputationRequest, Enclosure, Outcome, Parameters, ShardResult } from './computation.ts'
+import type { MellinTask } from './mellin-task.ts'
+import { type ExactBudgetItem, decimalEnclosure, describeEnclosure, halfWidth } from './outcome.ts'
+import { type Summand, edgeErrorUpper, panelErrorUpper, seriesUpper, tailUpper } from './panels-bounds.ts'
+import { type PanelsParameters, nodeCount, writeParameters } from './panels-parameters.ts'
+import { nodeCost } from './panels-plan.ts'
+import { type BlockResult, type Block, cutIntoBlocks, readBlock, writeBlock } from './panels-shards.ts'
+import { NODE_BITS, PanelsSweep, type SweepSeries } from './panels-sweep.ts'
+
+/** Bits that the arithmetic of the bounds has beyond that of the sums, so that they are not rounded up to its last unit. */
+const BOUND_BITS = 64
+
+/** What the pieces up to some point give for one series: lo and hi of their sums, and the bounds of their errors. */
+interface Prefix {
+  nodes: number
+  lo: Rational
+  hi: Rational
+  edge: Rational
+  panels: Rational
+  /** Bound of the integral beyond the last piece; null where none applies yet. */
+  tail: Rational | null
+}
+
+/** A run by panels with everything chosen (P-1 to P-8): the edge [0, eps], then panel after panel, then a bound of the rest. */
+export class PanelsComputation implements Computation {
+  readonly request: ComputationRequest
+  readonly parameters: Parameters
+  readonly shardCount: number
+  private readonly chosen: PanelsParameters
+  private readonly task: MellinTask
+  private readonly list: readonly SweepSeries[]
+  private readonly blocks: readonly Block[]
+  private sweep: Promise<PanelsSweep> | undefined
+
+  constructor(request: ComputationRequest, chosen: PanelsParameters, task: MellinTask, list: readonly SweepSeries[]) {
+    this.request = request
+    this.chosen = chosen
+    this.parameters = writeParameters(chosen)
+    this.task = task
+    this.list = list
+    this.blocks = cutIntoBlocks(chosen, (t) => nodeCost({ ...chosen, complexity: task.complexity }, Number(task.power.num) / Number(task.power.den) + t))
+    this.shardCount = this.blocks.length
+  }
+
+  shardCost(index: number): number {
+    return this.blocks[index].cost
+  }
+
+  async runShard(index: number): Promise<ShardResult> {
+    const { piece, from, to } = this.blocks[index]
+    return writeBlock((await this.ready()).sum(piece, from, to))
+  }
+
+  async interim(results: (ShardResult | undefined)[]): Promise<Enclosure[] | null> {
+    const pieces = this.pieces(results.map((result) => (result === undefined ? null : readBlock(result))))
+    const bounds = await this.boundArithmetic()
+    const gamma = gammaBounds(bounds, this.task.logPower)
+    const found = this.list.map((_, index) => {
+      const last = this.prefixes(bounds, pieces, index).filter((prefix) => prefix.tail).pop()
+      return last && decimalEnclosure(...enclose(last, gamma))
+    })
+    return found.every((one) => one !== undefined) ? found : null
+  }
+
+  async combine(results: ShardResult[]): Promise<Outcome[]> {
+    const pieces = this.pieces(results.map(readBlock))
+    const bounds = await this.boundArithmetic()
+    const gamma = gammaBounds(bounds, this.task.logPower)
+    return this.list.map((_, index) => this.outcome(index, this.prefixes(bounds, pieces, index), gamma))
+  }
+
+  private boundArithmetic(): Promise<Arithmetic<AnyNumber>> {
+    return createArithmetic(this.request.arithmetic, this.chosen.precision + BOUND_BITS)
+  }
+
+  private ready(): Promise<PanelsSweep> {
+    const { precision, edgeNodes, panels } = this.chosen
+    const most = Math.max(edgeNodes, ...panels.map((panel) => panel.nodes))
+    this.sweep ??= Promise.all([
+      createArithmetic(this.request.arithmetic, precision),
+      createArithmetic(this.request.arithmetic, precision + NODE_BITS + spareBits(most)),
+    ]).then(([arithmetic, wide]) => new PanelsSweep(arithmetic, wide, this.chosen, this.task, this.list))
+    return this.sweep
+  }
+
+  /** The blocks of the leading pieces that are complete, piece by piece, their nodes checked to be in falling order throughout. */
+  private pieces(results: readonly (BlockResult | null)[]): BlockResult[][] {
+    const pieces: BlockResult[][] = []
+    for (let piece = 0; piece <= this.chosen.panels.length; piece++) {
+      const found = results.filter((_, index) => this.blocks[index].piece === piece)
+      const complete = found.filter((one) => one !== null)
+      if (complete.length < found.length || complete.length === 0) break
+      if (!areDescending(complete.flatMap(({ first, last }) => (first.centre === last.centre ? [first] : [first, last])))) {
+        throw new Error('the nodes of a rule are not in order: these results do not belong together')
+      }
+      pieces.push(complete)
+    }
+    return pieces
+  }
+
+  private prefixes(bounds: Arithmetic<AnyNumber>, pieces: readonly BlockResult[][], index: number): Prefix[] {
+    const { chosen, task, list } = this
+    const summand: Summand = { power: task.power, logPower: task.logPower, least: list[index].series.leastMember }
+    const prefixes: Prefix[] = []
+    pieces.forEach((blocks, piece) => {
+      const before = prefixes[piece - 1] ?? { nodes: 0, lo: ZERO, hi: ZERO, edge: ZERO, panels: ZERO, tail: null }
+      const [lo, hi] = blocks.reduce(([a, b], { sums }) => [a + sums[index][0], b + sums[index][1]], [0n, 0n])
+      const panel = chosen.panels[piece - 1]
+      prefixes.push({
+        nodes: before.nodes + (panel?.nodes ?? chosen.edgeNodes),
+        lo: add(before.lo, dyadic(lo, chosen.precision)),
+        hi: add(before.hi, dyadic(hi, chosen.precision)),
+        edge: panel ? before.edge : this.edgeError(bounds, blocks, index, summand),
+        panels: panel ? add(before.panels, panelErrorUpper(bounds, panel, summand)) : ZERO,
+        tail: tailUpper(bounds, panel?.to ?? chosen.edge, summand),
+      })
+    })
+    return prefixes
+  }
+
+  /** P-4 for every power of the logarithm, with the bounds of P-3 where s0 = 1 and |D(s)| <= D(Re s) else. */
+  private edgeError(bounds: Arithmetic<AnyNumber>, blocks: readonly BlockResult[], index: number, summand: Summand): Rational {
+    const { edge: eps, edgeReach, edgeNodes, precision } = this.chosen
+    const { edge } = this.list[index]
+    const beta = subtract(this.task.logPower, rational(edge.pole))
+    const scale = bounds.exp(bounds.scale(bounds.log(bounds.rational(eps)), beta))
+    const most = this.task.power.num === this.task.power.den
+      ? edge.partBounds(eps, edgeReach).map((bound) => bounds.rational(bound))
+      : [seriesUpper(bounds, summand.least, subtract(this.task.power, edgeReach))]
+    let total = ZERO
+    let norm = ONE
+    for (let i = 0; i <= edge.logs; i++) {
+      // The integral of the weight over [0, 1] is beta^-(i+1); the weights W_j have eps^beta in them already.
+      norm = divide(norm, beta)
+      const sizes = blocks.reduce((sum, { weights }) => sum + weights[toText(beta)][i], 0n)
+      const both = add(bounds.upper(bounds.scale(scale, norm)), dyadic(sizes, precision))
+      total = add(total, edgeErrorUpper(bounds, eps, edgeReach, edgeNodes, both, most[edge.logs - i]))
+    }
+    return total
+  }
+
+  private outcome(index: number, prefixes: readonly Prefix[], gamma: [Rational, Rational]): Outcome {
+    const whole = prefixes[prefixes.length - 1]
+    if (prefixes.length <= this.chosen.panels.length || !whole.tail) throw new Error('results are missing, or the last panel ends too early')
+    const [lo, hi] = enclose(whole, gamma)
+    const items: ExactBudgetItem[] = [
+      { source: 'discretisation', bound: 'P-4', magnitude: multiply(whole.edge, gamma[1]) },
+      { source: 'discretisation', bound: 'P-7', magnitude: multiply(whole.panels, gamma[1]) },
+      { source: 'truncation-above', bound: 'P-8', magnitude: multiply(multiply(whole.tail, rational(1, 2)), gamma[1]) },
+    ]
+    const rounding = subtract(halfWidth(lo, hi), items.reduce((total, item) => add(total, item.magnitude), ZERO))
+    return {
+      definition: this.request.definitions[index],
+      method: 'panels',
+      arithmetic: this.request.arithmetic,
+      goal: this.request.goal,
+      parameters: this.parameters,
+      estimates: [],
+      ...describeEnclosure(lo, hi, [...items, { source: 'rounding', bound: 'A-3', magnitude: rounding.num > 0n ? rounding : ZERO }]),
+      convergence: prefixes.flatMap((prefix) => (prefix.tail ? [{ at: String(prefix.nodes), ...decimalEnclosure(...enclose(prefix, gamma)) }] : [])),
+    }
+  }
+
+  /** Nodes in all, for whoever wants to tell the size of the run. */
+  get nodes(): number {
+    return nodeCount(this.chosen)
+  }
+}
+
+function gammaBounds(a: Arithmetic<AnyNumber>, logPower: Rational): [Rational, Rational] {
+  const gamma = reciprocalGamma(a, logPower)
+  return [a.lower(gamma), a.upper(gamma)]
+}
+
+/** The integral is within the sums' bounds, widened by the discretisation and, above, by the tail; the constant is it over Gamma(b). */
+function enclose(prefix: Prefix, [low, high]: [Rational, Rational]): [Rational, Rational] {
+  const error = add(prefix.edge, prefix.panels)
+  const lo = subtract(prefix.lo, error)
+  const hi = add(add(prefix.hi, error), prefix.tail ?? ZERO)
+  return [multiply(lo, lo.num < 0n ? high : low), multiply(hi, hi.num < 0n ? low : high)]
+}

@@ -1,0 +1,147 @@
+import { type Rational, parseRational, rational } from '../arithmetic/rational.ts'
+import { EngineRefusal } from '../errors.ts'
+import type { Panel } from './panels-bounds.ts'
+import type { PanelsParameters } from './panels-parameters.ts'
+
+/**
+ * Chooses edge, panels, ellipses and numbers of nodes by a model of their cost. Doubles may be used here: every choice is
+ * recorded, and the bounds are computed from what was recorded. heuristic: affects speed only
+ */
+
+/** What the plan depends on. */
+export interface PlanInput {
+  digits: number
+  /** s0 - 1 and b. */
+  excess: number
+  logPower: number
+  /** Largest k, how the parts at the edge may grow (log2), and the exponent beta of its weight. */
+  complexity: number
+  edgeGrowth: (eps: Rational, reach: Rational) => number
+  edgeExponent: number
+  least: bigint
+  /** Whether 1/(p^s - 1) takes the place of p^-s, whose powers lose accuracy. */
+  distinct: boolean
+}
+
+/** Digits computed beyond those asked for, so that the digits asked for are certified but for rare strings of 0 or 9. */
+const SPARE_DIGITS = 5
+/** Panel ends are the edge times these and their multiples by powers of 4. */
+const GRID = [1, 1.25, 1.5, 2, 2.5, 3]
+/** Semi-axes tried, as parts of the way from 1 to where the ellipse touches 0. */
+const PARTS = [0.2, 0.3, 0.4, 0.5, 0.6, 0.7, 0.8, 0.85, 0.9, 0.93, 0.96, 0.98]
+const AXIS_DENOMINATOR = 1_024
+
+const log2 = (x: number): number => Math.log2(x) // heuristic: affects speed only
+const ellipse = (axis: number): number => log2(axis + Math.sqrt(axis * axis - 1)) // heuristic: affects speed only
+
+/** log2 of least^-sigma (1 + least/(sigma - 1)) for sigma = 1 + x. */
+function logSeries(x: number, logLeast: number): number {
+  return logLeast * -(1 + x) + log2(1 + 2 ** Math.min(logLeast, 500) / x)
+}
+
+/** Microseconds for one node at s on the reference machine: powers, zeta values, Newton's identities. heuristic: affects speed only */
+export function nodeCost(p: { precision: number; terms: number; split: number; complexity: number }, s: number): number {
+  const words = p.precision / 64
+  const orders = Math.min(p.precision / log2(p.split), p.precision / log2(p.split) / s) + 1
+  const product = 0.12 + 0.006 * words * words
+  return 40 + orders * (1.2 * p.terms * product + 4) + 0.25 * p.terms * (2 + product * words) + p.complexity ** 2 * 0.4
+}
+
+export function planPanels(input: PlanInput): PanelsParameters {
+  const { excess, logPower: b, digits } = input
+  const logLeast = log2(Number(input.least > 1n << 1000n ? 1n << 1000n : input.least))
+  const bits = (digits + SPARE_DIGITS) * log2(10)
+  const end = truncationPoint(bits, 1 + excess, b, logLeast)
+  const size = input.complexity * Math.max(0, -log2(Math.min(1, input.edgeExponent)))
+  const loss = 30 + Math.max(0, b - 1) * log2(end) + size + log2(1 + 1 / Math.max(excess, 1e-300)) * (excess > 0 ? 1 : 0)
+  const precision = Math.ceil(bits + loss + (input.distinct ? 2 * input.complexity + 10 : 0))
+  const settings = { precision, terms: Math.ceil(precision / 2.54) + 1, split: Math.max(50, Math.ceil(precision / 2.54)) }
+  const cost = (t: number): number => nodeCost({ ...settings, complexity: input.complexity }, 1 + excess + t)
+
+  const unit = excess > 0 ? 2 ** Math.round(log2(excess)) : 1
+  const sizes = excess > 0 ? [4, 2, 1, 0.5] : [1, 0.5, 0.25]
+  const plans = sizes.map((part) => {
+    const edge = unit * part
+    const eps = exact(edge)
+    const reach = excess > 0 ? scaled(excess, 15 / 16) : rational(31, 64)
+    const edgeBits = bits + input.edgeGrowth(eps, reach) + input.edgeExponent * log2(edge)
+    const edgeNodes = Math.max(2, Math.ceil(edgeBits / ellipse(1 + (2 * approx(reach)) / edge)) + 1)
+    const { panels, total } = bestPanels(edge, Math.max(end, 2 * edge), bits, b, excess, logLeast, cost)
+    // The product rule costs a row of Legendre polynomials a node and as many products a power of the logarithm.
+    const rule = edgeNodes * edgeNodes * (0.4 + 0.12 * input.complexity) * (1 + (precision / 512) ** 2) * 0.5
+    return { edge: eps, edgeReach: reach, edgeNodes, panels, total: total + edgeNodes * cost(0) + rule }
+  })
+  const { edge, edgeReach, edgeNodes, panels } = plans.reduce((best, plan) => (plan.total < best.total ? plan : best))
+  return { ...settings, edge, edgeReach, edgeNodes, panels }
+}
+
+/** t with t^b least^-(s0 + t) about 2^-bits (P-8). */
+function truncationPoint(bits: number, s0: number, b: number, logLeast: number): number {
+  let end = Math.max(1, Math.ceil((2 * b) / logLeast))
+  while (Math.max(0, b - 1) * log2(end) - (s0 + end) * logLeast + logLeast > -bits) end += 1
+  return end
+}
+
+interface Chain {
+  panels: Panel[]
+  total: number
+}
+
+/** The cheapest chain of panels from edge to at least `end`, over the ends of the grid. */
+function bestPanels(edge: number, end: number, bits: number, b: number, excess: number, logLeast: number, cost: (t: number) => number): Chain {
+  const ends: number[] = []
+  for (let scale = 1; ends.length === 0 || ends[ends.length - 1] < end; scale *= 4) {
+    for (const part of [...GRID, ...GRID.map((x) => 2 * x).filter((x) => x >= 4)]) ends.push(edge * scale * part)
+    ends.sort((x, y) => x - y)
+  }
+  const points = [...new Set(ends)].filter((_, i, all) => i === 0 || all[i - 1] < end)
+  if (points.length > 2_000) throw new EngineRefusal('too_slow', 'logPower', 'The sum converges too slowly for this method: ask for fewer digits.')
+  const best: Chain[] = [{ panels: [], total: 0 }]
+  for (let i = 1; i < points.length; i++) {
+    for (let j = i - 1; j >= 0 && points[i] <= 16 * points[j]; j--) {
+      const { nodes, axis } = fewestNodes(points[j], points[i], bits, b, excess, logLeast)
+      const total = best[j].total + nodes * cost((points[i] + 2 * points[j]) / 3) + nodes * nodes * 1.5
+      if (best[i] && best[i].total <= total) continue
+      best[i] = { total, panels: [...best[j].panels, { from: exact(points[j]), to: exact(points[i]), nodes, axis: rational(axis, AXIS_DENOMINATOR) }] }
+    }
+  }
+  return best[best.length - 1]
+}
+
+/** The ellipse that needs the fewest nodes (P-7). */
+function fewestNodes(from: number, to: number, bits: number, b: number, excess: number, logLeast: number): { nodes: number; axis: number } {
+  const [centre, half] = [(from + to) / 2, (to - from) / 2]
+  const touching = centre / half
+  let best = { nodes: Infinity, axis: 0 }
+  for (const part of PARTS) {
+    const axis = Math.max(AXIS_DENOMINATOR + 1, Math.floor((1 + (touching - 1) * part) * AXIS_DENOMINATOR))
+    const semi = axis / AXIS_DENOMINATOR
+    const left = centre - semi * half
+    if (left <= 0) continue
+    const weight = b >= 1 ? Math.ceil(b - 1) * Math.max(0, log2(centre + semi * half)) : Math.ceil(1 - b) * Math.max(0, -log2(left))
+    const height = bits + 2.1 + log2(half) + weight + logSeries(excess + left, logLeast)
+    const nodes = Math.max(2, Math.ceil(height / (2 * ellipse(semi))) + 1)
+    if (nodes < best.nodes) best = { nodes, axis }
+  }
+  return best
+}
+
+/** Exactly the double, a dyadic fraction. */
+function exact(x: number): Rational {
+  let den = 1n
+  while (!Number.isInteger(x)) {
+    x *= 2
+    den *= 2n
+  }
+  return rational(BigInt(x), den)
+}
+
+/** A short fraction near x part, below it. */
+function scaled(x: number, part: number): Rational {
+  const text = (x * part).toPrecision(3)
+  return parseRational(text) ?? exact(x * part)
+}
+
+function approx(a: Rational): number {
+  return Number(a.num) / Number(a.den)
+}

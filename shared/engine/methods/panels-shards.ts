@@ -1,0 +1,59 @@
+import type { ShardResult } from './computation.ts'
+import type { PanelsParameters } from './panels-parameters.ts'
+import type { BlockSums } from './panels-sweep.ts'
+
+/** Cutting a run by panels into blocks of nodes, and their results as exact JSON. */
+
+/** Pairs from <= index < to of one piece; piece 0 is the edge. */
+export interface Block {
+  piece: number
+  from: number
+  to: number
+  /** heuristic: affects speed only */
+  cost: number
+}
+
+export type BlockResult = BlockSums
+
+/** About as many shards as there are, so that progress is smooth, cores are kept busy and an interruption loses little. */
+const SHARDS = 48
+const LEAST_PAIRS = 2
+
+/** Blocks of about equal cost; `cost` is that of a node at t. */
+export function cutIntoBlocks(p: PanelsParameters, cost: (t: number) => number): Block[] {
+  const approx = ({ num, den }: { num: bigint; den: bigint }): number => Number(num) / Number(den)
+  const pieces = [
+    { nodes: p.edgeNodes, each: cost(0) * 1.3 },
+    ...p.panels.map(({ nodes, from, to }) => ({ nodes, each: cost((2 * approx(from) + approx(to)) / 3) })),
+  ]
+  const whole = pieces.reduce((total, { nodes, each }) => total + nodes * each, 0)
+  return pieces.flatMap(({ nodes, each }, piece) => {
+    const pairs = Math.ceil(nodes / 2)
+    const count = Math.max(1, Math.min(Math.floor(pairs / LEAST_PAIRS), Math.round((SHARDS * nodes * each) / whole)))
+    return Array.from({ length: count }, (_, i): Block => {
+      const [from, to] = [Math.floor((i * pairs) / count), Math.floor(((i + 1) * pairs) / count)]
+      return { piece, from, to, cost: 2 * (to - from) * each }
+    })
+  })
+}
+
+export function writeBlock(block: BlockSums): ShardResult {
+  const text = (pair: { centre: bigint; reach: bigint }): string[] => [pair.centre.toString(), pair.reach.toString()]
+  return {
+    sums: block.sums.map(([lo, hi]) => [lo.toString(), hi.toString()]),
+    weights: Object.fromEntries(Object.entries(block.weights).map(([key, sizes]) => [key, sizes.map(String)])),
+    first: text(block.first),
+    last: text(block.last),
+  }
+}
+
+export function readBlock(result: ShardResult): BlockResult {
+  const { sums, weights, first, last } = result as { sums: string[][]; weights: Record<string, string[]>; first: string[]; last: string[] }
+  const pair = ([centre, reach]: string[]) => ({ centre: BigInt(centre), reach: BigInt(reach) })
+  return {
+    sums: sums.map(([lo, hi]) => [BigInt(lo), BigInt(hi)]),
+    weights: Object.fromEntries(Object.entries(weights).map(([key, sizes]) => [key, sizes.map(BigInt)])),
+    first: pair(first),
+    last: pair(last),
+  }
+}

@@ -1,0 +1,104 @@
+import { ONE, compare } from '../arithmetic/rational.ts'
+import { EngineRefusal } from '../errors.ts'
+import type { DirichletSeries } from '../series/dirichlet.ts'
+import { type EdgeSeries, edgeSeries } from '../series/edge.ts'
+import type { ComputationRequest, Goal } from './computation.ts'
+import { type MellinTask, mellinTask } from './mellin-task.ts'
+import type { Forecast, MethodModule } from './method.ts'
+import { PanelsComputation } from './panels-computation.ts'
+import { type PanelsParameters, readParameters } from './panels-parameters.ts'
+import { nodeCost, planPanels } from './panels-plan.ts'
+import type { SweepSeries } from './panels-sweep.ts'
+
+const MOST_DIGITS = 1_000
+
+interface Task extends MellinTask {
+  readonly list: readonly SweepSeries[]
+}
+
+function taskOf(definitions: ComputationRequest['definitions']): Task {
+  const task = mellinTask(definitions)
+  const list = task.series.map((series, index): SweepSeries => {
+    const edge = compare(task.power, ONE) === 0 ? edgeSeries(task.definitions[index].set) : smoothEdge(series)
+    if (!edge) {
+      throw new EngineRefusal('method_does_not_fit', 'method', 'Panels do not know how this set behaves at s = 1: use the transform, or a power above 1.')
+    }
+    return { series, edge }
+  })
+  return { ...task, list }
+}
+
+/** With s0 > 1 the series is analytic at s0 itself; it is bounded there by D(Re s), not by its parts. */
+function smoothEdge(series: DirichletSeries): EdgeSeries {
+  return {
+    pole: 0,
+    logs: 0,
+    parts: (at) => [series.evaluate(at)],
+    partBounds: () => {
+      throw new Error('a series without a singularity at the edge has no parts')
+    },
+  }
+}
+
+function parametersFor(task: Task, goal: Goal): PanelsParameters {
+  if (!('digits' in goal)) throw new EngineRefusal('method_does_not_fit', 'cutoff', 'Panels have no cut-off: ask for a number of digits.')
+  if (goal.digits > MOST_DIGITS) {
+    throw new EngineRefusal('too_many_digits', 'digits', `Panels go up to ${MOST_DIGITS} digits.`)
+  }
+  const approx = ({ num, den }: { num: bigint; den: bigint }): number => Number(num) / Number(den)
+  const [power, logPower] = [approx(task.power), approx(task.logPower)]
+  const exponents = task.list.map(({ edge }) => logPower - edge.pole)
+  return planPanels({
+    digits: goal.digits,
+    excess: power - 1,
+    logPower,
+    complexity: task.complexity,
+    edgeExponent: Math.min(...exponents),
+    distinct: task.distinct,
+    least: task.list.reduce((least, { series }) => (series.leastMember < least ? series.leastMember : least), task.list[0].series.leastMember),
+    edgeGrowth: (eps, reach) =>
+      power > 1
+        ? 6 + Math.log2(1 + 1 / (power - 1)) // heuristic: affects speed only
+        : Math.max(...task.list.map(({ edge }, index) => partsGrowth(edge.partBounds(eps, reach).map(approx), exponents[index]))),
+  })
+}
+
+/** log2 of the factor of rho^-nodes in P-4, the weights taken for about twice their integral. heuristic: affects speed only */
+function partsGrowth(bounds: readonly number[], exponent: number): number {
+  const total = bounds.reduce((sum, _, i) => sum + bounds[bounds.length - 1 - i] * exponent ** -(i + 1), 0)
+  return Math.log2(8 * total) // heuristic: affects speed only
+}
+
+/** CPU seconds for one sweep on the reference machine. heuristic: affects choice only */
+function predictSeconds(p: PanelsParameters, task: Task, arithmetic: ComputationRequest['arithmetic']): number {
+  const power = Number(task.power.num) / Number(task.power.den)
+  const cost = (t: number): number => nodeCost({ ...p, complexity: task.complexity }, power + t)
+  const nodes = p.panels.reduce((total, panel) => {
+    const third = (2 * Number(panel.from.num)) / Number(panel.from.den) + Number(panel.to.num) / Number(panel.to.den)
+    return total + panel.nodes * cost(third / 3)
+  }, p.edgeNodes * cost(0))
+  return 0.05 + nodes * 1e-6 * (arithmetic === 'mpfr' ? 5 : 1)
+}
+
+/** The Mellin transform by a product rule at its singularity and Gauss-Legendre panels after. */
+export const panels: MethodModule = {
+  name: 'panels',
+
+  forecast(definition, goal, arithmetic, speed): Forecast {
+    try {
+      const task = taskOf([definition])
+      const parameters = parametersFor(task, goal)
+      const digits = 'digits' in goal ? goal.digits : 0
+      return { possible: true, radius: `1.0e-${digits + 1}`, seconds: predictSeconds(parameters, task, arithmetic) / speed }
+    } catch (refusal) {
+      if (refusal instanceof EngineRefusal) return { possible: false, reason: refusal.message }
+      throw refusal
+    }
+  },
+
+  async prepare(request) {
+    const task = taskOf(request.definitions)
+    const parameters = request.parameters ? readParameters(request.parameters, task.power) : parametersFor(task, request.goal)
+    return new PanelsComputation(request, parameters, task, task.list)
+  },
+}
