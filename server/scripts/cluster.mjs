@@ -23,15 +23,16 @@ export function freePort() {
 }
 
 /**
- * Whether a port of loopback can be listened on.
+ * Whether a port can be listened on.
  * @param {number} port
+ * @param {string} [host]
  * @returns {Promise<boolean>}
  */
-export function isFree(port) {
+export function isFree(port, host = '127.0.0.1') {
   return new Promise((resolve) => {
     const probe = createServer()
     probe.on('error', () => resolve(false))
-    probe.listen(port, '127.0.0.1', () => probe.close(() => resolve(true)))
+    probe.listen(port, host, () => probe.close(() => resolve(true)))
   })
 }
 

@@ -15,6 +15,7 @@ const locationFile = join(dataFolder, 'cluster-location.json')
  * The private cluster of this installation: made at the first start, kept, and started and stopped with the product.
  * @typedef {object} LocalCluster
  * @property {{ superuser: string, owner: string, application: string }} urls
+ * @property {() => Promise<void>} revive starts the server again if it has died, on the same port
  * @property {() => Promise<void>} stop
  */
 
@@ -27,7 +28,16 @@ export async function startLocalCluster() {
   const settings = JSON.parse(readFileSync(settingsFile, 'utf8'))
   const port = await startCluster(folder, { preferred: settings.port, durable: true })
   if (port !== settings.port) writeFileSync(settingsFile, JSON.stringify({ ...settings, port }), { mode: 0o600 })
-  return { urls: addresses(port, settings.passwords), stop: () => stopCluster(folder, 'fast') }
+  return {
+    urls: addresses(port, settings.passwords),
+    revive: async () => {
+      if (runningPort(folder) !== undefined) return
+      say('The database server has ended; starting it again …')
+      const revived = await startCluster(folder, { preferred: port, durable: true })
+      if (revived !== port) throw new SetupError(`The database's port ${port} was taken by another program meanwhile. Stop Merestone and start it again.`)
+    },
+    stop: () => stopCluster(folder, 'fast'),
+  }
 }
 
 /**
