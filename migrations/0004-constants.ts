@@ -31,7 +31,7 @@ export const up: Migration['up'] = async (query) => {
       CHECK (best_lo <= best_hi)
     );
     CREATE INDEX constants_set ON constants (set_kind, k, number);
-    CREATE INDEX constants_k ON constants (k, number);
+    CREATE INDEX constants_k ON constants (coalesce(k, 0), number);
     CREATE INDEX constants_weight ON constants (power, log_power, number);
     CREATE INDEX constants_exclude ON constants (exclude, number);
     CREATE INDEX constants_words ON constants USING gin (to_tsvector('simple', words));
@@ -60,7 +60,9 @@ export const up: Migration['up'] = async (query) => {
     CREATE INDEX register_entries_group ON register_entries (audience, group_id, number);
     CREATE INDEX register_entries_digits ON register_entries (audience, coalesce(digits_truncated, -1), number);
     CREATE INDEX register_entries_changed ON register_entries (audience, changed_at, number);
-    CREATE INDEX register_entries_value ON register_entries (audience, best_lo, number);
+    CREATE INDEX register_entries_value ON register_entries (audience, coalesce(best_lo, 'Infinity'), number);
+    CREATE INDEX register_entries_value_down ON register_entries (audience, coalesce(best_lo, '-Infinity'), number);
+    CREATE INDEX register_entries_lower ON register_entries (audience, best_lo);
     CREATE INDEX register_entries_upper ON register_entries (audience, best_hi);
 
     -- A new group sees at once what is public, and every constant that is stated.

@@ -1,0 +1,128 @@
+import type { Transaction } from 'sequelize'
+import { certifiedRounded, certifiedTruncated } from '../../shared/digits.ts'
+import type { ClaimState } from '../../shared/schemas/claim.ts'
+import { change, select } from '../db.ts'
+import { PUBLIC } from '../queries/audience.ts'
+
+/** States from the beginning of a claim's way to its end at the register; the furthest one stands for the constant. */
+const WAY: readonly (ClaimState | 'stated')[] = ['stated', 'withdrawn', 'draft', 'returned', 'submitted', 'in-review', 'endorsed', 'superseded', 'suspended', 'signed']
+
+interface ClaimRow {
+  group_id: string
+  public: boolean
+  state: ClaimState
+  lo: string | null
+  hi: string | null
+  signed: boolean
+  since: Date
+  in_conflict: boolean
+}
+
+interface Best {
+  lo: string | null
+  hi: string | null
+  truncated: number | null
+  rounded: number | null
+}
+
+const NONE: Best = { lo: null, hi: null, truncated: null, rounded: null }
+
+/** Whether a >= b for decimals as PostgreSQL writes them, exactly. */
+function atLeast(a: string, b: string): boolean {
+  const places = Math.max(a.split('.')[1]?.length ?? 0, b.split('.')[1]?.length ?? 0)
+  const scaled = (text: string): bigint => {
+    const [whole, part = ''] = text.split('.')
+    return BigInt(whole + part.padEnd(places, '0'))
+  }
+  return scaled(a) >= scaled(b)
+}
+
+/** The intersection of enclosures, exactly; none where there is no enclosure or no common point. */
+function intersection(claims: readonly ClaimRow[]): Best {
+  let lo: string | null = null
+  let hi: string | null = null
+  for (const claim of claims) {
+    if (claim.lo === null || claim.hi === null) continue
+    if (lo === null || atLeast(claim.lo, lo)) lo = claim.lo
+    if (hi === null || atLeast(hi, claim.hi)) hi = claim.hi
+  }
+  if (lo === null || hi === null || !atLeast(hi, lo)) return NONE
+  return { lo, hi, truncated: certifiedTruncated(lo, hi).decimals, rounded: certifiedRounded(lo, hi).decimals }
+}
+
+const furthest = (claims: readonly ClaimRow[]): ClaimState | 'stated' =>
+  claims.reduce<ClaimState | 'stated'>((state, claim) => (WAY.indexOf(claim.state) > WAY.indexOf(state) ? claim.state : state), 'stated')
+
+/** What one audience sees of a constant, from the claims that are open to it. */
+function entryOf(claims: readonly ClaimRow[]) {
+  const entered = claims.filter((claim) => claim.signed)
+  const newest = entered.reduce<ClaimRow | null>((latest, claim) => (latest === null || claim.since > latest.since ? claim : latest), null)
+  return {
+    groupId: newest?.group_id ?? null,
+    state: furthest(claims),
+    enteredState: furthest(entered),
+    inConflict: claims.some((claim) => claim.in_conflict),
+    ...intersection(entered.filter((claim) => claim.state === 'signed')),
+  }
+}
+
+/**
+ * Works out anew what every audience sees of a constant: the intersection of the signed enclosures open to it, the state of the
+ * claim that is furthest, whether claims contradict each other. To be called, in the same transaction, after every change of a
+ * claim's state, enclosure or conflicts.
+ */
+export async function refreshBest(transaction: Transaction, constantId: string): Promise<void> {
+  // Two who change claims of one constant at once come one after the other here, and the second sees what the first has done.
+  await select('SELECT id FROM constants WHERE id = $id FOR UPDATE', { id: constantId }, transaction)
+  const claims = await select<ClaimRow>(
+    `SELECT c.group_id, g.public, c.state, c.lo, c.hi, c.signed_at IS NOT NULL AS signed, c.since,
+            EXISTS (SELECT 1 FROM conflicts x WHERE (x.claim_id = c.id OR x.signed_claim_id = c.id) AND x.closed_at IS NULL) AS in_conflict
+     FROM claims c JOIN groups g ON g.id = c.group_id WHERE c.constant_id = $id`,
+    { id: constantId },
+    transaction,
+  )
+  const published = claims.filter((claim) => claim.public && claim.signed)
+  const best = intersection(claims.filter((claim) => claim.signed && claim.state === 'signed'))
+  await change(
+    'UPDATE constants SET best_lo = $lo, best_hi = $hi, best_digits = $truncated WHERE id = $id',
+    { id: constantId, lo: best.lo, hi: best.hi, truncated: best.truncated },
+    transaction,
+  )
+  if (published.length > 0) await writeEntry(transaction, constantId, [PUBLIC], entryOf(published))
+  else await change('DELETE FROM register_entries WHERE constant_id = $id AND audience = $audience', { id: constantId, audience: PUBLIC }, transaction)
+
+  // Groups without a claim of their own here all see the same.
+  const own = new Set(claims.map((claim) => claim.group_id))
+  const groups = await select<{ id: string }>('SELECT id FROM groups', {}, transaction)
+  await writeEntry(transaction, constantId, groups.map(({ id }) => id).filter((id) => !own.has(id)), entryOf(published))
+  for (const id of own) {
+    await writeEntry(transaction, constantId, [id], entryOf(claims.filter((claim) => claim.group_id === id || (claim.public && claim.signed))))
+  }
+}
+
+/** Writes what audiences see; the time of change moves only where something did change. */
+async function writeEntry(transaction: Transaction, constantId: string, audiences: string[], entry: ReturnType<typeof entryOf>): Promise<void> {
+  if (audiences.length === 0) return
+  await change(
+    `INSERT INTO register_entries AS e (constant_id, audience, number, group_id, state, entered_state, in_conflict, best_lo, best_hi, digits_truncated, digits_rounded)
+     SELECT c.id, a.id, c.number, coalesce($groupId::uuid, c.group_id), $state, $enteredState, $inConflict, $lo::numeric, $hi::numeric, $truncated::int, $rounded::int
+     FROM constants c, unnest($audiences::uuid[]) AS a(id) WHERE c.id = $constantId
+     ON CONFLICT (constant_id, audience) DO UPDATE
+     SET group_id = excluded.group_id, state = excluded.state, entered_state = excluded.entered_state, in_conflict = excluded.in_conflict, best_lo = excluded.best_lo,
+         best_hi = excluded.best_hi, digits_truncated = excluded.digits_truncated, digits_rounded = excluded.digits_rounded, changed_at = now()
+     WHERE (e.group_id, e.state, e.entered_state, e.in_conflict, e.best_lo, e.best_hi) IS DISTINCT FROM
+           (excluded.group_id, excluded.state, excluded.entered_state, excluded.in_conflict, excluded.best_lo, excluded.best_hi)`,
+    { constantId, audiences, ...entry },
+    transaction,
+  )
+}
+
+/** After a group has begun or ceased to publish: works out anew every constant that it has signed claims for. */
+export async function refreshGroup(transaction: Transaction, groupId: string): Promise<void> {
+  const touched = await select<{ constant_id: string }>(
+    'SELECT DISTINCT constant_id FROM claims WHERE group_id = $groupId AND signed_at IS NOT NULL ORDER BY constant_id',
+    { groupId },
+    transaction,
+  )
+  for (const { constant_id: id } of touched) await refreshBest(transaction, id)
+}

@@ -1,0 +1,182 @@
+import type { z } from 'zod'
+import { parseRational, toText } from '../../shared/engine/arithmetic/rational.ts'
+import { isPrime } from '../../shared/engine/arithmetic/primes.ts'
+import type { ConstantSummary, constantQuery } from '../../shared/schemas/constant.ts'
+import { select, selectOne, type Bind } from '../db.ts'
+import { invalid, invalidField, type FieldError } from '../errors.ts'
+import { audienceOf, stateColumn, type Reader } from './audience.ts'
+import { readTextQuery } from './constant-text.ts'
+import { readCursor, writeCursor, type CursorKey } from './cursor.ts'
+
+export type ConstantQuery = Omit<z.output<typeof constantQuery>, 'cursor' | 'limit'>
+
+export interface ConstantRow {
+  id: string
+  number: number
+  definition: unknown
+  latex: string
+  text: string
+  aliases: string[]
+  state: ConstantSummary['state']
+  in_conflict: boolean
+  best_lo: string | null
+  best_hi: string | null
+  digits_truncated: number | null
+  digits_rounded: number | null
+  group_id: string
+  group_name: string
+  changed_at: Date
+  sort_key: string | null
+}
+
+const columns = (reader: Reader, sortKey: string): string => `c.id, c.number, CASE WHEN octet_length(c.definition::text) < 4000 THEN c.definition END AS definition,
+  c.latex, c.text, c.aliases, e.${stateColumn(reader)} AS state, e.in_conflict, e.best_lo, e.best_hi, e.digits_truncated, e.digits_rounded,
+  g.id AS group_id, g.name AS group_name, e.changed_at, (${sortKey})::text AS sort_key`
+const FROM = 'FROM register_entries e JOIN constants c ON c.id = e.constant_id JOIN groups g ON g.id = e.group_id'
+
+/** Set kinds that have no k, or one only: a filter by k beside them makes no sense. */
+const WITHOUT_K = new Set(['integers', 'squarefree', 'smooth', 'residue-class', 'finite', 'over-primes', 'named'])
+const WITH_K = new Set(['primes', 'almost-primes', 'squarefree-almost-primes', 'distinct-prime-factors'])
+
+interface Filter {
+  where: string[]
+  bind: Bind
+}
+
+/** The conditions of a query of the register, over `e` (what this reader sees) and `c` (the definition). Refuses what makes no sense. */
+export function registerFilter(reader: Reader, query: ConstantQuery): Filter {
+  const where = ['e.audience = $audience']
+  const bind: Bind = { audience: audienceOf(reader) }
+  const faults: FieldError[] = []
+  const add = (condition: string, values: Bind): void => {
+    where.push(condition)
+    Object.assign(bind, values)
+  }
+  if (query.set !== undefined) {
+    if (!WITH_K.has(query.set) && !WITHOUT_K.has(query.set)) faults.push({ path: 'set', message: 'there is no such set' })
+    else if (query.k !== undefined && WITHOUT_K.has(query.set)) faults.push({ path: 'k', message: 'this set has no k' })
+    add('c.set_kind = $set', { set: query.set })
+  }
+  if (query.k !== undefined) add('c.k = $k', { k: query.k })
+  for (const [field, column] of [['power', 'power'], ['logPower', 'log_power']] as const) {
+    const text = query[field]
+    if (text === undefined) continue
+    const value = parseRational(text)
+    if (value === null) faults.push({ path: field, message: 'write a whole number, a fraction such as 1/2, or a decimal' })
+    else add(`c.${column} = $${field}`, { [field]: toText(value) })
+  }
+  if (query.exclude !== undefined) {
+    const primes = query.exclude === 'none' ? [] : [...new Set(query.exclude.split(',').map((text) => (/^\s*\d{1,9}\s*$/.test(text) ? Number(text) : 0)))].sort((a, b) => a - b)
+    if (!primes.every(isPrime)) faults.push({ path: 'exclude', message: 'write primes with commas between them, or "none"' })
+    add('c.exclude = $exclude', { exclude: primes.join(',') })
+  }
+  if (query.state !== undefined) add(`e.${stateColumn(reader)} = $state`, { state: query.state })
+  if (query.minDigits !== undefined && query.minDigits > 0) add('coalesce(e.digits_truncated, -1) >= $minDigits', { minDigits: query.minDigits })
+  if (query.group !== undefined) add('e.group_id = $group', { group: query.group })
+  if (query.text !== undefined && query.text !== '') textFilter(query.text, add)
+  if (faults.length > 0) throw invalid(faults)
+  return { where, bind }
+}
+
+function textFilter(text: string, add: (condition: string, values: Bind) => void): void {
+  const asked = readTextQuery(text)
+  if (Object.keys(asked).length === 1 && asked.words.length === 0) throw invalidField('text', 'says nothing to search for: write words, a definition such as "odd, k = 3", or leading digits such as 1.6366')
+  if (asked.number !== undefined) add('c.number = $textNumber', { textNumber: asked.number })
+  if (asked.power !== undefined) add('c.power = $textPower AND c.log_power = $textLogPower', { textPower: asked.power, textLogPower: asked.logPower })
+  if (asked.overPrimes && asked.k === undefined) add(`c.set_kind IN ('primes', 'residue-class')`, {})
+  if (asked.k !== undefined) add('c.k = $textK', { textK: asked.k })
+  if (asked.odd) add(`(c.exclude = '2' OR c.exclude LIKE '2,%')`, {})
+  if (asked.exclude) add('c.exclude = $textExclude', { textExclude: asked.exclude.join(',') })
+  if (asked.digits !== undefined) {
+    const [lo, hi] = leadingDigits(asked.digits)
+    add('e.best_lo <= $digitsHi::numeric AND e.best_hi >= $digitsLo::numeric', { digitsLo: lo, digitsHi: hi })
+  }
+  if (asked.words.length > 0) add(`to_tsvector('simple', c.words) @@ to_tsquery('simple', $words)`, { words: asked.words.map((word) => `${word}:*`).join(' & ') })
+}
+
+/** Numbers that begin with these digits, truncated, or round to them. */
+export function leadingDigits(digits: string): [lo: string, hi: string] {
+  const [whole, part = ''] = digits.replace('-', '').split('.')
+  const scaled = BigInt(whole + part) * 2n
+  const write = (half: bigint): string => {
+    const tenths = (half * 5n).toString().padStart(part.length + 2, '0')
+    return `${tenths.slice(0, -part.length - 1)}.${tenths.slice(-part.length - 1)}`
+  }
+  // Truncated digits allow a whole unit upwards, rounded ones half a unit each way.
+  const [low, high] = [scaled > 0n ? scaled - 1n : 0n, scaled + 2n]
+  return digits.startsWith('-') ? [`-${write(high)}`, `-${write(low)}`] : [write(low), write(high)]
+}
+
+/** By what each sorting goes, and the type of that; every one has an index. */
+function sorting({ sort, order }: ConstantQuery): [key: string, type: string] {
+  switch (sort) {
+    case 'number':
+      return ['e.number', 'int']
+    case 'digits':
+      return ['coalesce(e.digits_truncated, -1)', 'int']
+    case 'value':
+      // Constants without an enclosure come last, whichever way.
+      return [`coalesce(e.best_lo, '${order === 'asc' ? '' : '-'}Infinity')`, 'numeric']
+    case 'changed':
+      return ['e.changed_at', 'timestamptz']
+    case 'k':
+      return ['coalesce(c.k, 0)', 'int']
+  }
+}
+
+/** A page of the register as this reader sees it. `total` comes with the first page; null where there are very many. */
+export async function listConstants(
+  reader: Reader,
+  { cursor, limit, ...query }: z.output<typeof constantQuery>,
+): Promise<{ rows: ConstantRow[]; next: string | null; total?: number }> {
+  const { where, bind } = registerFilter(reader, query)
+  const mark = { list: 'constants', audience: audienceOf(reader), state: stateColumn(reader), ...query }
+  const [key, type] = sorting(query)
+  const conditions = [...where]
+  if (cursor !== undefined) {
+    const [after, number] = readCursor(mark, cursor)
+    conditions.push(`(${key}, e.number) ${query.order === 'asc' ? '>' : '<'} ($after::${type}, $afterNumber::int)`)
+    Object.assign(bind, { after, afterNumber: number })
+  }
+  const rows = await select<ConstantRow>(
+    `SELECT ${columns(reader, key)} ${FROM} WHERE ${conditions.join(' AND ')} ORDER BY ${key} ${query.order}, e.number ${query.order} LIMIT $limit`,
+    { ...bind, limit: limit + 1 },
+  )
+  const page = rows.slice(0, limit)
+  const last = page.at(-1)
+  const after: CursorKey | null = rows.length > limit && last ? [last.sort_key, last.number] : null
+  const total = cursor === undefined ? await countConstants(where, bind) : undefined
+  return { rows: page, next: after && writeCursor(mark, after), ...(total !== undefined && { total }) }
+}
+
+/** Most that is counted of a filtered list, so that counting never costs more than listing. */
+const MOST_COUNTED = 5_000
+
+async function countConstants(where: string[], bind: Bind): Promise<number | undefined> {
+  const plain = where.length === 1
+  const sql = plain
+    ? 'SELECT count(*)::int AS total FROM register_entries e WHERE e.audience = $audience'
+    : `SELECT count(*)::int AS total FROM (SELECT 1 FROM register_entries e JOIN constants c ON c.id = e.constant_id WHERE ${where.join(' AND ')} LIMIT ${MOST_COUNTED + 1}) AS counted`
+  const row = await selectOne<{ total: number }>(sql, bind)
+  return row && (plain || row.total <= MOST_COUNTED) ? row.total : undefined
+}
+
+/** Every row of a query, for an export, up to `most`. */
+export async function allConstants(reader: Reader, query: ConstantQuery, most: number): Promise<ConstantRow[]> {
+  const { where, bind } = registerFilter(reader, query)
+  const [key] = sorting(query)
+  return select<ConstantRow>(
+    `SELECT ${columns(reader, key)} ${FROM} WHERE ${where.join(' AND ')} ORDER BY ${key} ${query.order}, e.number ${query.order} LIMIT $most`,
+    { ...bind, most },
+  )
+}
+
+/** One constant as this reader sees it. */
+export async function findConstant(reader: Reader, number: number): Promise<ConstantRow | undefined> {
+  return selectOne<ConstantRow>(`SELECT ${columns(reader, 'e.number')} ${FROM} WHERE e.audience = $audience AND e.number = $number`, { audience: audienceOf(reader), number })
+}
+
+/** Several constants by id, in no particular order. */
+export async function constantsById(reader: Reader, ids: string[]): Promise<ConstantRow[]> {
+  return select<ConstantRow>(`SELECT ${columns(reader, 'e.number')} ${FROM} WHERE e.audience = $audience AND e.constant_id = ANY($ids::uuid[])`, { audience: audienceOf(reader), ids })
+}
