@@ -1,0 +1,109 @@
+import type { z } from 'zod'
+import { parseConstantNumber } from '../../shared/constant-number.ts'
+import type { Outcome } from '../../shared/engine/methods/computation.ts'
+import { hasRight } from '../../shared/permissions.ts'
+import type { Run, RunSummary, runQuery } from '../../shared/schemas/run.ts'
+import { select, selectOne } from '../db.ts'
+import type { SignedInMember } from '../middleware/request.ts'
+import { readCursor, writeCursor } from './cursor.ts'
+
+/** A run as lists show it. */
+export interface RunRow {
+  id: string
+  number: number
+  definition: unknown
+  latex: string
+  text: string
+  aliases: string[]
+  group_id: string
+  group_name: string
+  started_by: string
+  starter_name: string
+  state: RunSummary['state']
+  method: RunSummary['method']
+  arithmetic: RunSummary['arithmetic']
+  goal: RunSummary['goal']
+  progress: string
+  purpose: RunSummary['purpose']
+  claim_number: number | null
+  claim_ordinal: number | null
+  created_at: Date
+  started_at: Date | null
+  finished_at: Date | null
+  digits: { truncated: number; rounded: number } | null
+  at: string
+}
+
+const COLUMNS = `r.id, c.number, CASE WHEN octet_length(c.definition::text) < 4000 THEN c.definition END AS definition, c.latex, c.text, c.aliases, r.group_id, g.name AS group_name,
+  r.started_by, m.name AS starter_name, r.state, r.method, r.arithmetic, r.goal, r.progress, r.purpose, cc.number AS claim_number, cl.ordinal AS claim_ordinal,
+  r.created_at, r.started_at, r.finished_at, r.outcome->'digits' AS digits, r.created_at::text AS at`
+const FROM = `FROM runs r JOIN constants c ON c.id = r.constant_id JOIN groups g ON g.id = r.group_id JOIN members m ON m.id = r.started_by
+  LEFT JOIN claims cl ON cl.id = r.claim_id LEFT JOIN constants cc ON cc.id = cl.constant_id`
+
+/** The runs that a member may see, newest first. */
+export async function listRuns(reader: SignedInMember, { cursor, limit, ...query }: z.output<typeof runQuery>): Promise<{ rows: RunRow[]; next: string | null }> {
+  const mark = { list: 'runs', reader: reader.id, ...query }
+  const bind: Record<string, unknown> = { me: reader.id, group: reader.groupId, limit: limit + 1 }
+  const where = [query.mine || !hasRight(reader.roles, 'group-work.read') ? 'r.started_by = $me' : '(r.group_id = $group OR r.started_by = $me)']
+  if (query.state) {
+    where.push('r.state = $state')
+    bind.state = query.state
+  }
+  if (query.constant) {
+    where.push('c.number = $number')
+    bind.number = parseConstantNumber(query.constant) ?? 0
+  }
+  if (cursor !== undefined) {
+    const [at, id] = readCursor(mark, cursor)
+    where.push('(r.created_at, r.id) < ($at::timestamptz, $id::uuid)')
+    Object.assign(bind, { at, id })
+  }
+  const rows = await select<RunRow>(`SELECT ${COLUMNS} ${FROM} WHERE ${where.join(' AND ')} ORDER BY r.created_at DESC, r.id DESC LIMIT $limit`, bind)
+  const page = rows.slice(0, limit)
+  const last = page.at(-1)
+  return { rows: page, next: rows.length > limit && last ? writeCursor(mark, [last.at, last.id]) : null }
+}
+
+export interface RunDetailRow extends RunRow {
+  forecast_seconds: string | null
+  cpu_ms: string
+  seconds_left: string | null
+  shards_done: number
+  shards_total: number | null
+  outcome: Outcome | null
+  certificate_digest: string | null
+  failure: string | null
+}
+
+/** One run by id, whoever may see it: the policy decides on the row. */
+export async function findRun(id: string): Promise<RunDetailRow | undefined> {
+  return selectOne<RunDetailRow>(
+    `SELECT ${COLUMNS}, r.forecast_seconds, r.cpu_ms, r.seconds_left, r.shards_done, r.shards_total, r.outcome, r.certificate_digest, r.failure ${FROM} WHERE r.id = $id`,
+    { id },
+  )
+}
+
+/** Claims that were registered from a run. */
+export async function claimsOfRun(runId: string): Promise<{ id: string; number: number; ordinal: number | null; state: string }[]> {
+  return select('SELECT cl.id, c.number, cl.ordinal, cl.state FROM claims cl JOIN constants c ON c.id = cl.constant_id WHERE cl.run_id = $runId ORDER BY cl.created_at', { runId })
+}
+
+/** What those who follow a run are told. */
+export interface RunEventRow {
+  state: Run['state']
+  progress: string
+  shards_done: number
+  shards_total: number | null
+  seconds_left: string | null
+  cpu_ms: string
+  lo: string | null
+  hi: string | null
+}
+
+export async function runEventOf(id: string): Promise<RunEventRow | undefined> {
+  return selectOne<RunEventRow>(
+    `SELECT state, progress, shards_done, shards_total, seconds_left, cpu_ms, coalesce(outcome->'enclosure'->>'lo', interim_lo) AS lo, coalesce(outcome->'enclosure'->>'hi', interim_hi) AS hi
+     FROM runs WHERE id = $id`,
+    { id },
+  )
+}
