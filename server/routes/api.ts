@@ -2,9 +2,12 @@ import { Router } from 'express'
 import { authenticate } from '../middleware/authenticate.ts'
 import { accessToken } from './access-token.ts'
 import { account } from './account.ts'
+import { estimate } from './estimate.ts'
 import { group } from './group.ts'
 import { invitation } from './invitation.ts'
 import { passwordReset } from './password-reset.ts'
+import { plan } from './plan.ts'
+import { run } from './run.ts'
 import { session } from './session.ts'
 
 /** Everything under /api/v1, one router a resource. */
@@ -17,5 +20,8 @@ export function api(): Router {
   router.use('/group', group)
   router.use('/account', account)
   router.use('/access-tokens', accessToken)
+  router.use('/plans', plan)
+  router.use('/runs', run)
+  router.use('/estimates', estimate)
   return router
 }
