@@ -1,5 +1,6 @@
 import { EngineRefusal } from './errors.ts'
 import type { ArithmeticName, Computation, ComputationRequest, Goal, Method, Outcome, ShardResult } from './methods/computation.ts'
+import { derivatives } from './methods/derivatives.ts'
 import { expansion } from './methods/expansion.ts'
 import type { MethodModule } from './methods/method.ts'
 import type { Definition } from './sets/definition.ts'
@@ -9,6 +10,7 @@ import { trapezoid } from './methods/trapezoid.ts'
 export const METHODS: Partial<Record<Method, MethodModule>> = {
   transform: trapezoid,
   expansion,
+  derivatives,
 }
 
 export function methodNamed(name: Method): MethodModule {

@@ -3,7 +3,7 @@ import { decimalText, enclosure, id, instant, pageOf, pageQuery, personRef, cons
 import { definitionInput, definitionView } from './definition.ts'
 import { LIMITS } from '../limits.ts'
 
-export const method = z.enum(['transform', 'panels', 'partial-sum', 'finite', 'expansion'])
+export const method = z.enum(['transform', 'panels', 'partial-sum', 'finite', 'expansion', 'derivatives'])
 export const arithmetic = z.enum(['ball', 'mpfr'])
 export const goal = z.union([
   z.object({ digits: z.number().int().min(1, 'at least one digit').max(LIMITS.digits, `at most ${LIMITS.digits} digits`) }),

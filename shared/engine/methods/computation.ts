@@ -2,9 +2,9 @@ import type { Definition } from '../sets/definition.ts'
 
 /**
  * `transform`: Mellin transform by the trapezoid; `panels`: the same integral by power series and Gauss-Legendre panels;
- * `expansion`: over the primes, by powers of 1/p and prime zeta values.
+ * `expansion`: over the primes, by powers of 1/p and prime zeta values; `derivatives`: the Dirichlet series or a derivative at s0.
  */
-export type Method = 'transform' | 'panels' | 'partial-sum' | 'finite' | 'expansion'
+export type Method = 'transform' | 'panels' | 'partial-sum' | 'finite' | 'expansion' | 'derivatives'
 export type ArithmeticName = 'ball' | 'mpfr'
 
 /** What is asked for: certified digits after the point, or (partial sum) the cut-off up to which terms are added. */

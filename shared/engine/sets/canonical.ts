@@ -38,9 +38,9 @@ export function canonicalDefinition(input: DefinitionText): Definition {
 function named(name: NamedDefinition['name'] | 'twin-prime' | 'artin'): Definition {
   switch (name) {
     case 'twin-prime':
-      return canonicalOverPrimes({ type: 'over-primes', expression: '-1/(p-1)^2', combine: 'product', exclude: [2] })
+      return canonicalOverPrimes({ type: 'over-primes', expression: '1 - 1/(p-1)^2', combine: 'product', exclude: [2] })
     case 'artin':
-      return canonicalOverPrimes({ type: 'over-primes', expression: '-1/(p*(p-1))', combine: 'product', exclude: [] })
+      return canonicalOverPrimes({ type: 'over-primes', expression: '1 - 1/(p*(p-1))', combine: 'product', exclude: [] })
     default:
       return { type: 'named', name }
   }

@@ -59,18 +59,21 @@ function divergence(set: SetOfIntegers, power: Rational, logPower: Rational): st
   }
 }
 
-/** f(p) must fall like 1/p^2 and have no pole at a prime; 1 + f(p) must not vanish in a product. */
+/** f(p), in a product f(p) - 1, must fall like 1/p^2; f must have no pole at a prime, and no zero there in a product. */
 function requireOverPrimes({ numerator, denominator, combine: way, exclude }: OverPrimesDefinition): void {
   const [top, bottom] = [numerator.map(BigInt), denominator.map(BigInt)]
-  if (top.length > 0 && bottom.length - top.length < 2) {
-    throw new EngineRefusal('diverges', 'expression', `The ${way} diverges: the expression must fall at least like 1/p^2.`)
+  const falling = way === 'sum' ? top : combine(1n, top, -1n, bottom)
+  if (falling.length === 0) throw new EngineRefusal('trivial', 'expression', `The expression is ${way === 'sum' ? 0 : 1} for every prime, and so is the ${way}.`)
+  if (bottom.length - falling.length < 2) {
+    const need = way === 'sum' ? 'the expression must fall at least like 1/p^2' : 'the expression must differ from 1 by at most about 1/p^2'
+    throw new EngineRefusal('diverges', 'expression', `The ${way} does not converge: ${need}.`)
   }
   const included = (p: number): boolean => !exclude.includes(p)
   const pole = primeRoots(bottom).find(included)
   if (pole !== undefined) {
     throw new EngineRefusal('pole_at_prime', 'expression', `The expression has a pole at p = ${pole}: exclude this prime.`)
   }
-  const zero = way === 'product' ? primeRoots(sum(top, bottom)).find(included) : undefined
+  const zero = way === 'product' ? primeRoots(top).find(included) : undefined
   if (zero !== undefined) {
     throw new EngineRefusal('zero_factor', 'expression', `The factor at p = ${zero} is 0, and so is the product: exclude this prime.`)
   }
@@ -92,8 +95,4 @@ function primeRoots(polynomial: Polynomial): number[] {
     if (nonzero[0] % p === 0n && isPrime(Number(p)) && valueAt(polynomial, p) === 0n) roots.push(Number(p))
   }
   return roots
-}
-
-function sum(a: Polynomial, b: Polynomial): Polynomial {
-  return combine(1n, a, 1n, b)
 }

@@ -1,3 +1,4 @@
+import { combine as linear } from '../arithmetic/polynomial.ts'
 import { type Rational, ONE, parseRational } from '../arithmetic/rational.ts'
 import type { Definition, OverPrimesDefinition, SeriesDefinition, SetOfIntegers } from './definition.ts'
 import { polynomialText } from './polynomial-text.ts'
@@ -108,7 +109,9 @@ function logarithm(b: Rational, name: string, latex: boolean): string {
 }
 
 function overPrimes({ numerator, denominator, combine, exclude }: OverPrimesDefinition): Plain {
-  const [top, bottom] = [numerator.map(BigInt), denominator.map(BigInt)]
+  // A factor is shown as what it differs from 1 by.
+  const bottom = denominator.map(BigInt)
+  const top = combine === 'sum' ? numerator.map(BigInt) : linear(1n, numerator.map(BigInt), -1n, bottom)
   // A minus sign of the whole numerator goes in front.
   const negative = top.length > 0 && top[top.length - 1] < 0n
   const shown = negative ? top.map((c) => -c) : top
@@ -129,8 +132,8 @@ function mertens(): Plain {
 }
 
 const NAMED_PRODUCTS: Record<string, string> = {
-  '-1|1,-2,1|2': 'twin prime constant',
-  '-1|0,-1,1|': "Artin's constant",
+  '0,-2,1|1,-2,1|2': 'twin prime constant',
+  '-1,-1,1|0,-1,1|': "Artin's constant",
 }
 
 function aliasesOf(definition: Definition): string[] {
