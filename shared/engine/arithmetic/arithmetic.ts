@@ -55,10 +55,12 @@ export interface Arithmetic<N> {
   fixedBounds(x: N): [bigint, bigint]
 
   /**
-   * Runs `work` and releases every value made inside it; `work` must return plain data, not an N. Needed by implementations
-   * whose numbers live outside the garbage collector; values made outside of any frame live as long as the arithmetic.
+   * Runs `work` and releases every number made inside; `work` must return plain data. Numbers of some arithmetics live outside
+   * the garbage collector: a number used after its frame has ended throws. What a cache keeps is made inside `keep`.
    */
   frame<T>(work: () => T): T
+  /** Runs `work` such that the numbers made inside outlive every frame: for what is computed once and remembered. */
+  keep<T>(work: () => T): T
 }
 
 /** Opaque to everybody but the arithmetic that made it. */

@@ -126,5 +126,6 @@ export function createBallArithmetic(precision: number): Arithmetic<Ball> {
     upper: (x) => dyadic(x.mid + x.rad, precision),
     fixedBounds: (x) => [x.mid - x.rad, x.mid + x.rad],
     frame: (work) => work(),
+    keep: (work) => work(),
   }
 }

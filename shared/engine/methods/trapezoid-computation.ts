@@ -138,7 +138,7 @@ export class TrapezoidComputation implements Computation {
       goal: this.request.goal,
       parameters: this.parameters,
       estimates: [],
-      ...describeEnclosure(lo, hi, [...items, { source: 'rounding', bound: 'A-3', magnitude: rounding.num > 0n ? rounding : rational(0) }]),
+      ...describeEnclosure(lo, hi, [...items, { source: 'rounding', bound: this.request.arithmetic === 'ball' ? 'A-3' : 'A-8', magnitude: rounding.num > 0n ? rounding : rational(0) }]),
       convergence: [3, 2, 1, 0].flatMap((level) => {
         const enclosed = enclose(level)
         if (!enclosed) return []

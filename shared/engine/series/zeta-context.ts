@@ -61,7 +61,7 @@ export function createZetaContext<N>(arithmetic: Arithmetic<N>, settings: ZetaSe
     logPrime(p) {
       let value = logs.get(p)
       if (value === undefined) {
-        value = p === 2 ? arithmetic.log2() : arithmetic.log(arithmetic.rational(rational(p)))
+        value = arithmetic.keep(() => (p === 2 ? arithmetic.log2() : arithmetic.log(arithmetic.rational(rational(p)))))
         logs.set(p, value)
       }
       return value
