@@ -31,7 +31,7 @@ async function mailLink(invitation: Invitation, actor: SignedInMember, token: st
       inviter: actor.name,
       group: actor.groupName,
       roles: invitation.roles,
-      link: `${env.publicUrl}/invitation/${token}`,
+      link: `${env.publicUrl}/invitations/${token}`,
       expires: invitation.expiresAt.toISOString(),
     },
     { groupId: invitation.groupId },

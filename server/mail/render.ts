@@ -1,12 +1,36 @@
 import type { MailData, MailTemplate } from './catalogue.ts'
+import { renderContent, type MailContent, type RenderedMail } from './layout.ts'
+import { answerGiven } from './templates/answer-given.ts'
+import { claimReturned } from './templates/claim-returned.ts'
+import { claimSigned } from './templates/claim-signed.ts'
+import { claimSubmitted } from './templates/claim-submitted.ts'
+import { claimSuspended } from './templates/claim-suspended.ts'
+import { claimWithdrawn } from './templates/claim-withdrawn.ts'
+import { invitation } from './templates/invitation.ts'
+import { objectionRaised } from './templates/objection-raised.ts'
+import { passwordReset } from './templates/password-reset.ts'
+import { refereeAssigned } from './templates/referee-assigned.ts'
+import { refereeDeclined } from './templates/referee-declined.ts'
+import { reminder } from './templates/reminder.ts'
+import { signRequest } from './templates/sign-request.ts'
 
-export interface RenderedMail {
-  subject: string
-  text: string
-  html: string
+const templates: { [T in MailTemplate]: (data: MailData[T]) => MailContent } = {
+  invitation,
+  'password-reset': passwordReset,
+  'claim-submitted': claimSubmitted,
+  'referee-assigned': refereeAssigned,
+  'referee-declined': refereeDeclined,
+  'objection-raised': objectionRaised,
+  'answer-given': answerGiven,
+  'sign-request': signRequest,
+  'claim-signed': claimSigned,
+  'claim-returned': claimReturned,
+  'claim-suspended': claimSuspended,
+  'claim-withdrawn': claimWithdrawn,
+  reminder,
 }
 
 /** Subject, text and HTML of a mail. */
 export function renderMail<T extends MailTemplate>(template: T, data: MailData[T]): RenderedMail {
-  return { subject: template, text: JSON.stringify(data), html: '' }
+  return renderContent(templates[template](data))
 }

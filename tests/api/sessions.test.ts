@@ -10,7 +10,7 @@ const NEXT = 'a quite different password'
 /** The one-time token in the last mail to somebody. */
 async function mailedToken(email: string): Promise<string> {
   const mail = await lastMailTo(email)
-  return /\/(?:password-reset|invitation)\/([\w-]+)/.exec(mail?.text ?? '')?.[1] ?? ''
+  return /\/(?:password-reset|invitations)\/([\w-]+)/.exec(mail?.text ?? '')?.[1] ?? ''
 }
 
 describe('signing in', () => {
