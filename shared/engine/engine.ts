@@ -4,12 +4,14 @@ import { derivatives } from './methods/derivatives.ts'
 import { expansion } from './methods/expansion.ts'
 import type { MethodModule } from './methods/method.ts'
 import type { Definition } from './sets/definition.ts'
+import { partialSum } from './methods/partial-sum.ts'
 import { trapezoid } from './methods/trapezoid.ts'
 
 /** Every method there is; a new one is one file and one entry here. */
 export const METHODS: Partial<Record<Method, MethodModule>> = {
   transform: trapezoid,
   expansion,
+  'partial-sum': partialSum,
   derivatives,
 }
 

@@ -1,20 +1,14 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
-import { ONE, ZERO, ceilScaled, floorScaled, rational } from '../arithmetic/rational.ts'
+import { ONE, ZERO, rational } from '../arithmetic/rational.ts'
 import type { MomentBlock, MomentSet } from './moments.ts'
 import { type WeightExpansion, weightAt } from './weight.ts'
 
-/** A sum as an interval whose ends are exact integers in units of 2^-precision of the arithmetic that enclosed it. */
-export interface FixedInterval {
-  lo: bigint
-  hi: bigint
-}
-
 /**
- * Encloses, for each of several weights, the sum of the weight over a batch of integers.
+ * Encloses, for each of several weights, the sum of the weight over a batch of integers, in units of 2^-precision.
  * *Claim*: inclusion. *Valid for*: blocks with log(centre) >= 9 and reach/centre <= 3/4; moments of order at most the
  * expansions'. *Bound*: S-3. *Rounding*: the ends outward.
  */
-export function sumBatch<N>(arithmetic: Arithmetic<N>, expansions: readonly WeightExpansion[], batch: MomentSet): FixedInterval[] {
+export function sumBatch<N>(arithmetic: Arithmetic<N>, expansions: readonly WeightExpansion[], batch: MomentSet): [bigint, bigint][] {
   return arithmetic.frame(() => {
     const totals = expansions.map(() => arithmetic.rational(ZERO))
     for (const n of batch.singles) {
@@ -30,10 +24,7 @@ export function sumBatch<N>(arithmetic: Arithmetic<N>, expansions: readonly Weig
         totals[i] = arithmetic.add(totals[i], blockSum(arithmetic, expansion, block, logCentre, inverseLog))
       })
     }
-    return totals.map((total) => ({
-      lo: floorScaled(arithmetic.lower(total), arithmetic.precision),
-      hi: ceilScaled(arithmetic.upper(total), arithmetic.precision),
-    }))
+    return totals.map((total) => arithmetic.fixedBounds(total))
   })
 }
 

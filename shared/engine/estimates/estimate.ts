@@ -1,0 +1,77 @@
+/**
+ * A published explicit inequality, for people (statement, source, what was checked) and for the machine (claim). Whether it
+ * is in force or in doubt is for the users to say and lives in the database.
+ */
+export interface Estimate {
+  /** Stable; certificates cite it. */
+  id: string
+  title: string
+  statement: string
+  statementLatex: string
+  validFor: string
+  conditional: boolean
+  /** What it is conditional on. */
+  condition: string | null
+  /** Where it is published, with the number of the theorem. */
+  source: string
+  /** What was checked here, and how far; and whether the source's own text was seen. */
+  checked: string
+  claim: Claim
+}
+
+/**
+ * theta, psi: Chebyshev's functions less x. pi: the number of primes. pi-li: that less li(x). reciprocals: the sum of 1/p over
+ * p <= x, less log log x + B. log-ratios: the sum of log(p)/p, less log x + E.
+ */
+export type Quantity = 'theta' | 'psi' | 'pi' | 'pi-li' | 'reciprocals' | 'log-ratios'
+
+/** lower(x) <= quantity(x) <= upper(x) for all x in the range; either may be missing. */
+export interface Claim {
+  quantity: Quantity
+  from: Point
+  /** null: for all larger x. */
+  to: Point | null
+  lower?: Bound
+  upper?: Bound
+}
+
+/** An end of a range, exactly: x itself, or its logarithm. */
+export type Point = { x: string } | { log: string }
+
+export type Bound =
+  /** A sum of terms. */
+  | { form: 'sum'; terms: Term[] }
+  /** x divided by a sum of terms. */
+  | { form: 'quotient'; terms: Term[] }
+  /** coefficient x (log x / r)^logPower exp(-rate sqrt(log x / r)), the decay that a zero-free region gives. */
+  | { form: 'decay'; coefficient: string; r: string; logPower: string; rate: string }
+
+/** coefficient x^power (log x)^logPower, divided by pi where it says so; exact decimals or fractions. */
+export interface Term {
+  coefficient: string
+  power: string
+  logPower: string
+  overPi?: true
+}
+
+export const term = (coefficient: string, power: string, logPower: string): Term => ({ coefficient, power, logPower })
+
+export const sum = (...terms: Term[]): Bound => ({ form: 'sum', terms })
+
+/** The same bound with the sign turned: for |quantity| <= bound. */
+export function negated(bound: Bound): Bound {
+  if (bound.form === 'quotient') return { ...bound, terms: bound.terms.map(turned) }
+  if (bound.form === 'decay') return { ...bound, coefficient: turnedText(bound.coefficient) }
+  return { ...bound, terms: bound.terms.map(turned) }
+}
+
+/** |quantity| <= bound. */
+export const twoSided = (bound: Bound): { lower: Bound; upper: Bound } => ({ lower: negated(bound), upper: bound })
+
+function turned(t: Term): Term {
+  return { ...t, coefficient: turnedText(t.coefficient) }
+}
+
+function turnedText(coefficient: string): string {
+  return coefficient.startsWith('-') ? coefficient.slice(1) : `-${coefficient}`
+}

@@ -1,0 +1,12 @@
+import type { Estimate } from './estimate.ts'
+import { THETA_ESTIMATES } from './theta.ts'
+
+/** Every estimate that a certificate may cite. Entries are added and explained, never changed under the same id. */
+export const ESTIMATES: readonly Estimate[] = [...THETA_ESTIMATES]
+
+const byId = new Map(ESTIMATES.map((estimate) => [estimate.id, estimate]))
+
+/** The estimate with this id; undefined where there is none. */
+export function estimateById(id: string): Estimate | undefined {
+  return byId.get(id)
+}
