@@ -110,7 +110,7 @@ export function ComponentsPage() {
           { key: 'state', header: 'State', cell: () => <StateMark state="signed" /> },
           { key: 'changed', header: 'Changed', sortable: true, cell: (row) => <Time at={row.at} /> },
         ]} />
-        <Pagination shown={3} total={40} unit="constants" previous="/x" next="/y" />
+        <Pagination shown={3} total={40} unit="constants" previous={{ to: '/x', state: { trail: [] } }} next={{ to: '/y', state: { trail: [] } }} />
       </Section>
     </Page>
   )

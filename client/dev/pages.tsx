@@ -4,9 +4,11 @@ import { createRoot } from 'react-dom/client'
 import { createMemoryRouter, RouterProvider } from 'react-router-dom'
 import '../src/styles.css'
 import { Masthead } from '../src/app/masthead.tsx'
+import { AccountExample } from './account.tsx'
 import { DigitCheckPage } from './digit-check.tsx'
 
 const VIEWS: Record<string, ReactNode> = {
+  account: <AccountExample />,
   'digit-check': <DigitCheckPage />,
 }
 
