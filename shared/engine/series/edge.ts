@@ -3,8 +3,10 @@ import { primesUpTo } from '../arithmetic/primes.ts'
 import { ONE, type Rational, ZERO, add, compare, divide, multiply, rational, subtract } from '../arithmetic/rational.ts'
 import type { SetOfIntegers } from '../sets/definition.ts'
 import type { SeriesPoint } from './dirichlet.ts'
-import { dirichletSeries, distinctFactorSeries, primeProductSeries, primeSeries } from './families.ts'
+import { dirichletSeries } from './families.ts'
 import { logZetaUpper, roundUp } from './majorants.ts'
+import { distinctFactorPowerSum } from './prime-power-sums.ts'
+import { type SymmetricKind, symmetricFunction } from './symmetric.ts'
 
 /**
  * D(1 + t) near t = 0, its singularity made explicit: with x = t/eps and L = log(1/x)
@@ -15,7 +17,7 @@ export interface EdgeSeries {
   readonly pole: 0 | 1
   readonly logs: number
   /**
-   * parts[0 … logs] at a point whose `logExcess` is log eps in place of log t: this takes the logarithm log(1/x) out of P(s),
+   * parts[0 … logs], and perhaps more, at a point whose `logExcess` is log eps in place of log t: this takes the logarithm log(1/x) out of P(s),
    * and Newton's identities turn that into the factor exp(-z L) of the generating function.
    * *Claim*: contains them. *Valid for*: t > 0. *Bound*: P-2.
    */
@@ -31,13 +33,13 @@ export interface EdgeSeries {
 export function edgeSeries(set: SetOfIntegers): EdgeSeries | null {
   switch (set.kind) {
     case 'primes':
-      return primeEdge(1, set.exclude, false, (_, at) => primeSeries(set.exclude, ONE).evaluate(at))
+      return primeEdge('complete', 1, set.exclude, false)
     case 'almost-primes':
-      return primeEdge(set.k, set.exclude, false, (c, at) => primeProductSeries('complete', c, set.exclude, ONE).evaluate(at))
+      return primeEdge('complete', set.k, set.exclude, false)
     case 'squarefree-almost-primes':
-      return primeEdge(set.k, set.exclude, false, (c, at) => primeProductSeries('elementary', c, set.exclude, ONE).evaluate(at))
+      return primeEdge('elementary', set.k, set.exclude, false)
     case 'distinct-prime-factors':
-      return primeEdge(set.k, set.exclude, true, (c, at) => distinctFactorSeries(c, set.exclude, ONE).evaluate(at))
+      return primeEdge('elementary', set.k, set.exclude, true)
     case 'integers':
     case 'squarefree':
     case 'smooth': {
@@ -50,16 +52,19 @@ export function edgeSeries(set: SetOfIntegers): EdgeSeries | null {
   }
 }
 
-function primeEdge(
-  k: number,
-  exclude: readonly number[],
-  distinct: boolean,
-  part: <N>(c: number, at: SeriesPoint<N>) => N,
-): EdgeSeries {
+function primeEdge(kind: SymmetricKind, k: number, exclude: readonly number[], distinct: boolean): EdgeSeries {
+  const name = `edge:${kind}:${distinct}:${exclude.join()}`
   return {
     pole: 0,
     logs: k,
-    parts: (at) => Array.from({ length: k + 1 }, (_, c) => (c === 0 ? at.point.context.one : part(c, at))),
+    parts<N>(at: SeriesPoint<N>): N[] {
+      const { shared, context } = at.point
+      const [known, sums] = [shared.get(name) ?? [], shared.get(`sums of ${name}`) ?? []]
+      shared.set(name, known).set(`sums of ${name}`, sums)
+      const powerSum = (j: number): N => (sums[j] ??= distinct ? distinctFactorPowerSum(at, j, exclude) : at.value(j, exclude))
+      symmetricFunction(context.arithmetic, kind, powerSum, known, k)
+      return known
+    },
     partBounds: (eps, reach) => generatingBounds(powerSumBounds(k, exclude, distinct, eps, reach)),
   }
 }
