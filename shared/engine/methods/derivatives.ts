@@ -103,6 +103,7 @@ class DerivativeComputation implements Computation {
   async runShard(index: number): Promise<ShardResult> {
     const a = await createArithmetic(this.request.arithmetic, this.choice.precision)
     const context = createZetaContext(a, this.choice)
+    this.task.series.prepare?.(context)
     const spacing = this.choice.half === 0 ? ZERO : divide(this.reach, rational(this.choice.half))
     const first = index * POINTS_PER_SHARD - this.choice.half
     const last = Math.min(first + POINTS_PER_SHARD - 1, this.choice.half)
@@ -154,7 +155,9 @@ class DerivativeComputation implements Computation {
 
   private async interpolationError(radius: Rational): Promise<Rational> {
     const a = await createArithmetic(this.request.arithmetic, this.choice.precision)
-    const size = a.upper(this.valueAt(a, createZetaContext(a, this.choice), negate(radius)))
+    const context = createZetaContext(a, this.choice)
+    this.task.series.prepare?.(context)
+    const size = a.upper(this.valueAt(a, context, negate(radius)))
     return interpolationErrorUpper(size, radius, this.reach, 2 * this.choice.half + 1, this.task.order)
   }
 }

@@ -39,6 +39,7 @@ export class TrapezoidSweep {
   /** Integer bounds of f(jh) Gamma(b) for each series, in units of 2^-precision. Sums of integers do not depend on their order. */
   atNode(j: number, series: readonly DirichletSeries[]): [bigint, bigint][] {
     const { arithmetic } = this
+    for (const one of series) one.prepare?.(this.context)
     return arithmetic.frame(() => {
       const u = multiply(this.parameters.step, rational(j))
       const at = this.point(u)

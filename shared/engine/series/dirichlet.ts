@@ -1,5 +1,6 @@
 import type { Rational } from '../arithmetic/rational.ts'
 import type { PrimeZeta } from './prime-zeta.ts'
+import type { ZetaContext } from './zeta-context.ts'
 
 /** One real point s at which every series of a sweep is evaluated: zeta values, prime zeta values, powers, each made once. */
 export type SeriesPoint<N> = PrimeZeta<N>
@@ -13,6 +14,8 @@ export interface DirichletSeries {
   readonly pole: 0 | 1
   /** The least member of S. */
   readonly leastMember: bigint
+  /** Makes what `evaluate` needs once for a context; called outside of any frame before the first point of the context. */
+  prepare?<N>(context: ZetaContext<N>): void
   /** (s-1)^pole D(s), enclosed. */
   evaluate<N>(at: SeriesPoint<N>): N
   /** Bound of D near the power s0 of the weight. */

@@ -63,7 +63,9 @@ export function createLogL<N>(a: Arithmetic<N>, q: number, split: number): LogL<
     }
   }
 
-  certifyHalfPlane(a, q, split, (s) => valuesAt(a.rational(s), a.rational(add(s, rational(-1)))).values())
+  certifyHalfPlane(a, q, split, (s) =>
+    a.frame(() => valuesAt(a.rational(s), a.rational(add(s, rational(-1)))).values().map((z) => a.lower(z.re))),
+  )
   return {
     characters: chosen,
     roots,
@@ -89,11 +91,11 @@ function weighted<N>(a: Arithmetic<N>, roots: readonly Complex<N>[], exponents: 
  * Proves that Re L_A(s, chi) > 0 for every s >= 1 and every non-principal chi, so that the principal logarithm is the branch
  * that tends to 0 at infinity (L-3): for s >= 1.3 by the size of log zeta_A, below that by steps that the derivative allows.
  */
-function certifyHalfPlane<N>(a: Arithmetic<N>, q: number, split: number, valuesAt: (s: Rational) => Complex<N>[]): void {
+function certifyHalfPlane<N>(a: Arithmetic<N>, q: number, split: number, realPartsLower: (s: Rational) => Rational[]): void {
   const slope = derivativeBound(a, q, split)
   let s: Rational = ONE
   while (compare(s, rational(13, 10)) < 0) {
-    const least = valuesAt(s).map((z) => a.lower(z.re)).reduce((x, y) => (compare(x, y) < 0 ? x : y))
+    const least = realPartsLower(s).reduce((x, y) => (compare(x, y) < 0 ? x : y))
     const step = divide(multiply(least, rational(9, 10)), slope)
     if (compare(step, rational(1, 100_000)) < 0) throw new RangeError('the logarithm of an L-function could not be pinned down')
     // Rounded down to a short fraction, so that s stays short.

@@ -21,6 +21,7 @@ export function residueClassSeries(modulus: number, residue: number, exclude: re
     pole: 0,
     leastMember: BigInt(least),
     majorant: almostPrimeMajorant(power, 1),
+    prepare: (context) => prepareLogL(context, modulus),
     evaluate(at) {
       const { arithmetic, primes } = at.point.context
       const powers = (list: readonly number[]) => sum(arithmetic, list.filter(inClass).map((p) => at.point.primePower(p, 1)))
@@ -31,13 +32,17 @@ export function residueClassSeries(modulus: number, residue: number, exclude: re
 
 const known = new WeakMap<object, Map<number, LogL<unknown>>>()
 
-/** The L-functions of one modulus in one context: made once, since their branch takes a proof. */
-function logLOf<N>(context: ZetaContext<N>, modulus: number): LogL<N> {
+/** The L-functions of one modulus in one context are made once, since their branch takes a proof. */
+function prepareLogL<N>(context: ZetaContext<N>, modulus: number): void {
   const ofContext = known.get(context) ?? new Map<number, LogL<unknown>>()
   known.set(context, ofContext)
-  const made = (ofContext.get(modulus) as LogL<N> | undefined) ?? createLogL(context.arithmetic, modulus, context.split)
-  ofContext.set(modulus, made)
-  return made
+  if (!ofContext.has(modulus)) ofContext.set(modulus, createLogL(context.arithmetic, modulus, context.split))
+}
+
+function logLOf<N>(context: ZetaContext<N>, modulus: number): LogL<N> {
+  const made = known.get(context)?.get(modulus)
+  if (!made) throw new Error('the L-functions of this modulus are not prepared')
+  return made as LogL<N>
 }
 
 function overRoughPrimes<N>(at: SeriesPoint<N>, modulus: number, residue: number): N {
