@@ -82,7 +82,8 @@ export function chooseParameters(
   const pole = Math.max(...series.map((one) => one.pole))
   const decay = b - pole
   const target = (digits + SPARE_DIGITS) * Math.log(10) // heuristic: affects speed only
-  const size = complexity * Math.max(0, -Math.log(Math.min(1, decay))) // heuristic: affects speed only
+  // The constant may be as large as decay^-k, or (log 2)^-b where the first member is 2.
+  const size = complexity * Math.max(0, -Math.log(Math.min(1, decay))) + 0.37 * b // heuristic: affects speed only
 
   let units = STEP_DENOMINATOR
   while (units > 1 && logDiscretisation(units / STEP_DENOMINATOR, b) > -target - size) units--
