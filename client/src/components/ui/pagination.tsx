@@ -1,5 +1,6 @@
-import { buttonClass } from './button.tsx'
 import { Link } from 'react-router-dom'
+import { buttonClass } from './button.tsx'
+import type { PageTurn } from './use-cursor-pages.ts'
 
 interface PaginationProps {
   /** How many are shown here, and of how many in all if that is known. */
@@ -7,8 +8,8 @@ interface PaginationProps {
   total?: number | undefined
   /** What is counted: "constants". */
   unit: string
-  previous: string | null
-  next: string | null
+  previous: PageTurn | null
+  next: PageTurn | null
 }
 
 /** Turns the pages of a list that is read by cursors; the addresses are shareable. */
@@ -16,17 +17,17 @@ export function Pagination({ shown, total, unit, previous, next }: PaginationPro
   return (
     <nav aria-label={`Pages of ${unit}`} className="mt-4 flex flex-wrap items-center justify-between gap-3 print:hidden">
       <p className="text-[0.92rem] text-soft">
-        {total === undefined || total === shown ? `${shown} ${unit}` : `${shown} of ${total} ${unit} on this page`}
+        {total === undefined || total === shown ? `${shown} ${unit}` : `${shown} of ${total} ${unit}`}
       </p>
       {(previous !== null || next !== null) && (
         <p className="flex gap-3">
           {previous !== null && (
-            <Link to={previous} rel="prev" className={buttonClass('plain')}>
+            <Link to={previous.to} state={previous.state} rel="prev" className={buttonClass('plain')}>
               Previous
             </Link>
           )}
           {next !== null && (
-            <Link to={next} rel="next" className={buttonClass('plain')}>
+            <Link to={next.to} state={next.state} rel="next" className={buttonClass('plain')}>
               Next
             </Link>
           )}

@@ -1,0 +1,77 @@
+import type { QueryClient } from '@tanstack/react-query'
+import { createBrowserRouter } from 'react-router-dom'
+import type { LoaderFunctionArgs, RouteObject } from 'react-router-dom'
+import { claimQuery } from '../features/claims/queries.ts'
+import { constantListQuery, constantQuery } from '../features/constants/queries.ts'
+import { registerQueryOf } from '../features/constants/register-filters.ts'
+import { deskQuery } from '../features/desk/queries.ts'
+import { runListQuery, runQuery } from '../features/runs/queries.ts'
+import { runListQueryOf } from '../features/runs/run-filters.ts'
+import { sessionQuery } from '../features/session/queries.ts'
+import { RouteError } from './route-error.tsx'
+import { Shell } from './shell.tsx'
+import type { RouteHandle } from './shell.tsx'
+
+const MEMBERS: RouteHandle = { membersOnly: true }
+
+/**
+ * All routes. A page's code comes when it is first opened; its data is asked for at the same time and not waited for, since
+ * each view shows by itself what it is still missing.
+ */
+export function createRouter(client: QueryClient) {
+  const prefetch = (start: (args: { params: LoaderFunctionArgs['params']; search: URLSearchParams }) => Promise<unknown>) => ({ params, request }: LoaderFunctionArgs) => {
+    void start({ params, search: new URL(request.url).searchParams })
+    return null
+  }
+
+  const pages: RouteObject[] = [
+    { index: true, lazy: async () => ({ Component: (await import('../pages/home/home-page.tsx')).HomePage }) },
+    {
+      path: 'register',
+      loader: prefetch(({ search }) => client.prefetchQuery(constantListQuery(registerQueryOf(search)))),
+      lazy: async () => ({ Component: (await import('../pages/register/register-page.tsx')).RegisterPage }),
+    },
+    {
+      path: 'constants/:number',
+      loader: prefetch(({ params }) => client.prefetchQuery(constantQuery(params.number ?? ''))),
+      lazy: async () => ({ Component: (await import('../pages/constant/constant-page.tsx')).ConstantPage }),
+    },
+    {
+      path: 'runs',
+      handle: MEMBERS,
+      loader: prefetch(({ search }) => client.prefetchQuery(runListQuery(runListQueryOf(search)))),
+      lazy: async () => ({ Component: (await import('../pages/runs/runs-page.tsx')).RunsPage }),
+    },
+    { path: 'runs/new', handle: MEMBERS, lazy: async () => ({ Component: (await import('../pages/new-run/new-run-page.tsx')).NewRunPage }) },
+    {
+      path: 'runs/:id',
+      handle: MEMBERS,
+      loader: prefetch(({ params }) => client.prefetchQuery(runQuery(params.id ?? ''))),
+      lazy: async () => ({ Component: (await import('../pages/run/run-page.tsx')).RunPage }),
+    },
+    {
+      path: 'claims/:id',
+      loader: prefetch(({ params }) => client.prefetchQuery(claimQuery(params.id ?? ''))),
+      lazy: async () => ({ Component: (await import('../pages/claim/claim-page.tsx')).ClaimPage }),
+    },
+    {
+      path: 'desk',
+      handle: MEMBERS,
+      loader: prefetch(() => client.prefetchQuery(deskQuery())),
+      lazy: async () => ({ Component: (await import('../pages/desk/desk-page.tsx')).DeskPage }),
+    },
+    { path: 'sign-in', lazy: async () => ({ Component: (await import('../pages/sign-in/sign-in-page.tsx')).SignInPage }) },
+    { path: '*', lazy: async () => ({ Component: (await import('../pages/not-found/not-found-page.tsx')).NotFoundPage }) },
+  ]
+
+  return createBrowserRouter([
+    {
+      path: '/',
+      Component: Shell,
+      ErrorBoundary: RouteError,
+      loader: prefetch(() => client.prefetchQuery(sessionQuery())),
+      HydrateFallback: () => null,
+      children: [{ ErrorBoundary: RouteError, children: pages }],
+    },
+  ])
+}

@@ -1,0 +1,39 @@
+import type { ConstantSummary } from '../../../../../shared/schemas/constant.ts'
+import { paths } from '../../../app/paths.ts'
+import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
+import { Formula } from '../../../components/formula/formula.tsx'
+import { StateMark } from '../../../components/state-mark/state-mark.tsx'
+import { TextLink } from '../../../components/ui/link.tsx'
+import { Table } from '../../../components/ui/table.tsx'
+import type { Column, Sorting } from '../../../components/ui/table.tsx'
+import { Time } from '../../../components/ui/time.tsx'
+
+const COLUMNS: Column<ConstantSummary>[] = [
+  { key: 'number', header: 'Number', sortable: true, plain: true, cell: (row) => <TextLink to={paths.constant(row.number)} className="whitespace-nowrap">{row.number}</TextLink> },
+  { key: 'k', header: 'Definition', sortable: true, plain: true, cell: (row) => <Formula latex={row.definition.latex} text={row.definition.text} /> },
+  { key: 'value', header: 'Best enclosure', sortable: true, plain: true, cell: (row) => (row.best ? <DigitLine lo={row.best.lo} hi={row.best.hi} limit={40} /> : <span className="text-soft italic">none signed yet</span>) },
+  { key: 'digits', header: 'Digits', sortable: true, align: 'right', cell: (row) => row.best?.digits.truncated ?? '' },
+  {
+    key: 'state',
+    header: 'State',
+    cell: (row) => (
+      <>
+        <StateMark state={row.state} />
+        {row.inConflict && <span className="block text-refused">in conflict</span>}
+      </>
+    ),
+  },
+  { key: 'group', header: 'Group', cell: (row) => row.group.name },
+  { key: 'changed', header: 'Changed', sortable: true, cell: (row) => <Time at={row.changedAt} /> },
+]
+
+interface ConstantTableProps {
+  rows: ConstantSummary[]
+  sorting: Sorting
+  onTurn: (direction: 'previous' | 'next') => void
+  busy: boolean
+}
+
+export function ConstantTable({ rows, sorting, onTurn, busy }: ConstantTableProps) {
+  return <Table caption="Constants of the register" columns={COLUMNS} rows={rows} rowKey={(row) => row.number} sorting={sorting} onTurn={onTurn} busy={busy} />
+}

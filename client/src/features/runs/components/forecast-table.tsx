@@ -1,0 +1,55 @@
+import type { Plan } from '../../../../../shared/schemas/run.ts'
+import { Magnitude } from '../../../components/charts/error-budget.tsx'
+import { secondsInWords } from '../../../components/ui/time.tsx'
+import { Table } from '../../../components/ui/table.tsx'
+import { METHOD_WORDS } from '../run-words.ts'
+
+type Forecast = Plan['forecasts'][number]
+export type Choice = Pick<Forecast, 'method' | 'arithmetic'>
+
+interface ForecastTableProps {
+  forecasts: Forecast[]
+  chosen: Choice | null
+  onChoose: (choice: Choice) => void
+  busy: boolean
+}
+
+const ARITHMETIC_WORDS: Record<Choice['arithmetic'], string> = { ball: 'ball: midpoint and radius', mpfr: 'mpfr: end points by MPFR' }
+
+/** What each method and arithmetic would reach and how long it would take; one row is chosen. What can't be done says why. */
+export function ForecastTable({ forecasts, chosen, onChoose, busy }: ForecastTableProps) {
+  const key = (forecast: Choice) => `${forecast.method} ${forecast.arithmetic}`
+  return (
+    <Table
+      caption="Methods and what they would reach"
+      rows={forecasts}
+      rowKey={key}
+      busy={busy}
+      columns={[
+        {
+          key: 'method',
+          header: 'Method and arithmetic',
+          plain: true,
+          cell: (row) => (
+            <label className={row.possible ? 'flex items-baseline gap-2.5' : 'flex items-baseline gap-2.5 text-soft'}>
+              <input
+                type="radio"
+                name="forecast"
+                className="relative top-px size-4 shrink-0 accent-certain"
+                disabled={!row.possible}
+                checked={chosen !== null && key(chosen) === key(row)}
+                onChange={() => onChoose({ method: row.method, arithmetic: row.arithmetic })}
+              />
+              <span>
+                {METHOD_WORDS[row.method]}; {ARITHMETIC_WORDS[row.arithmetic]}
+              </span>
+            </label>
+          ),
+        },
+        { key: 'radius', header: 'Radius', align: 'right', cell: (row) => row.radius && <Magnitude text={row.radius} /> },
+        { key: 'seconds', header: 'CPU time', align: 'right', cell: (row) => row.seconds !== null && `about ${secondsInWords(row.seconds)}` },
+        { key: 'remark', header: '', plain: true, cell: (row) => (row.possible ? row.recommended && 'the quickest' : <span className="text-refused">{row.reason}</span>) },
+      ]}
+    />
+  )
+}

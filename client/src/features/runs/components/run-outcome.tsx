@@ -1,0 +1,86 @@
+import type { OutcomeView, Run } from '../../../../../shared/schemas/run.ts'
+import { Convergence } from '../../../components/charts/convergence.tsx'
+import { BudgetTable, ErrorBudget, Magnitude } from '../../../components/charts/error-budget.tsx'
+import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
+import { Section } from '../../../components/ui/page.tsx'
+import { Table } from '../../../components/ui/table.tsx'
+import { convergenceUnit } from '../run-words.ts'
+import { DraftClaimForm } from './draft-claim-form.tsx'
+
+interface RunOutcomeProps {
+  run: Run
+  outcome: OutcomeView
+  onDraft: (remark: string) => Promise<unknown>
+}
+
+/** What came out of a run: error budget with its bounds, estimates, convergence, parameters, and the claim to make of it. */
+export function RunOutcome({ run, outcome, onDraft }: RunOutcomeProps) {
+  return (
+    <>
+      {run.abilities.registerClaim && run.purpose === 'run' && (
+        <Section title="Register a claim from this run" className="mt-9">
+          <DraftClaimForm onDraft={onDraft} />
+        </Section>
+      )}
+      <Section title="Error budget" className="mt-10">
+        <ErrorBudget items={outcome.budget} radius={outcome.radius} />
+        <BudgetTable items={outcome.budget} radius={outcome.radius} />
+      </Section>
+      <Section title="Estimates used">
+        <EstimateUses uses={outcome.estimates} />
+      </Section>
+      {outcome.convergence.length > 1 && (
+        <Section title="Convergence">
+          <Convergence points={outcome.convergence} unit={convergenceUnit(run.method)} />
+        </Section>
+      )}
+      <Section title="Parameters">
+        <Parameters parameters={outcome.parameters} />
+      </Section>
+    </>
+  )
+}
+
+/** The enclosure that a run ended with. */
+export function OutcomeEnclosure({ outcome }: { outcome: OutcomeView }) {
+  return (
+    <div className="mt-3">
+      <DigitLine lo={outcome.enclosure.lo} hi={outcome.enclosure.hi} size="large" copy />
+      <p className="mt-2 text-[0.92rem] text-soft">
+        {outcome.digits.truncated} digits after the point certified when truncated, {outcome.digits.rounded} when rounded; radius at most <Magnitude text={outcome.radius} />.
+      </p>
+    </div>
+  )
+}
+
+/** The published inequalities that an enclosure rests on, with where each was used and where it holds. */
+export function EstimateUses({ uses }: { uses: OutcomeView['estimates'] }) {
+  if (uses.length === 0) return <p className="max-w-prose">No published estimate was used: every bound is proven with the engine, and the budget above names each.</p>
+  return (
+    <Table
+      caption="Estimates used"
+      rows={uses}
+      rowKey={(use) => `${use.id} ${use.usedAt}`}
+      columns={[
+        { key: 'title', header: 'Estimate', plain: true, cell: (use) => use.title },
+        { key: 'usedAt', header: 'Used at', cell: (use) => use.usedAt },
+        { key: 'validFor', header: 'Holds for', cell: (use) => use.validFor },
+        { key: 'conditional', header: 'Rests on a conjecture', cell: (use) => (use.conditional ? <span className="text-undecided">conditional</span> : 'no') },
+      ]}
+    />
+  )
+}
+
+/** Everything that fixes the computation, as the certificate records it. */
+export function Parameters({ parameters }: { parameters: OutcomeView['parameters'] }) {
+  return (
+    <dl className="columns-[14rem] gap-x-8 text-[0.92rem]">
+      {Object.entries(parameters).map(([name, value]) => (
+        <div key={name} className="flex break-inside-avoid justify-between gap-3 border-b border-rule py-0.5">
+          <dt className="text-soft">{name}</dt>
+          <dd className="min-w-0 break-all text-right">{value}</dd>
+        </div>
+      ))}
+    </dl>
+  )
+}

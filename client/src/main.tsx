@@ -1,0 +1,12 @@
+import { StrictMode } from 'react'
+import { createRoot } from 'react-dom/client'
+import { Application } from './app/application.tsx'
+import './styles.css'
+
+const root = document.getElementById('root')
+if (!root) throw new Error('index.html has no element #root')
+createRoot(root).render(
+  <StrictMode>
+    <Application />
+  </StrictMode>,
+)
