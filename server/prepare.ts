@@ -1,7 +1,6 @@
 import { DEMO_PASSWORD, demoAccounts } from '../seeders/demo-people.ts'
 import { select, sequelize } from './db.ts'
-import { env } from './env.ts'
-import { migrate } from './migrate.ts'
+import { bringUpToDate } from './prepare-database.ts'
 import { seedIfEmpty } from './seed.ts'
 
 /*
@@ -20,11 +19,7 @@ interface Prepared {
   separateRoles: boolean
 }
 
-const ownerUrl = env.DATABASE_OWNER_URL ?? env.DATABASE_URL
-const [owner, application] = [ownerUrl, env.DATABASE_URL].map((url) => decodeURIComponent(new URL(url).username))
-const separateRoles = owner !== application
-
-const applied = await migrate(ownerUrl, separateRoles ? application : undefined)
+const { applied, separateRoles } = await bringUpToDate()
 const seeded = process.env.DEMO !== 'off' && (await seedIfEmpty())
 const emails = demoAccounts().map(({ email }) => email)
 const present = await select<{ email: string }>(`SELECT email FROM members WHERE state = 'active' AND email = ANY($emails)`, { emails })

@@ -22,7 +22,9 @@ const expiry = () => new Date(Date.now() + DAYS * 86_400_000)
 const alreadyMember = () => conflict('already_member', 'There is an account with this e-mail address already.')
 const usedUp = () => gone('link_used', 'This invitation has been used, was taken back or has expired. Ask the lead who invited you for a new one.')
 
-async function mailLink(invitation: Invitation, actor: SignedInMember, token: string, transaction: Transaction): Promise<void> {
+const linkOf = (token: string): string => `${env.publicUrl}/invitations/${token}`
+
+async function mailLink(invitation: Invitation, actor: { name: string; groupName: string }, token: string, transaction: Transaction): Promise<void> {
   await queueMail(
     transaction,
     'invitation',
@@ -31,14 +33,14 @@ async function mailLink(invitation: Invitation, actor: SignedInMember, token: st
       inviter: actor.name,
       group: actor.groupName,
       roles: invitation.roles,
-      link: `${env.publicUrl}/invitations/${token}`,
+      link: linkOf(token),
       expires: invitation.expiresAt.toISOString(),
     },
     { groupId: invitation.groupId },
   )
 }
 
-function audit(transaction: Transaction, act: string, actor: { id: string; groupId: string }, invitation: Invitation): Promise<void> {
+function audit(transaction: Transaction, act: string, actor: { id: string | null; groupId: string }, invitation: Invitation): Promise<void> {
   return recordAudit(transaction, {
     act,
     actorId: actor.id,
@@ -66,6 +68,24 @@ export async function invite(actor: SignedInMember, person: { email: string; nam
     if (sqlState(error) !== UNIQUE_VIOLATION) throw error
     throw conflict('already_invited', 'This person is invited already. Send the invitation again, or take it back first.')
   }
+}
+
+/** Invites the first lead of a group from the command line and answers the link. The group is made if there is none of that name. */
+export async function inviteFirstLead({ group: name, ...person }: { group: string; email: string; name: string }): Promise<string> {
+  const token = newToken()
+  return inTransaction(async (transaction) => {
+    if (await Member.findOne({ where: { email: person.email, state: 'active' }, transaction })) throw alreadyMember()
+    const [group] = await Group.findOrCreate({ where: { name }, transaction })
+    // An earlier invitation that was not used gives way: its link may be lost.
+    await Invitation.update({ revokedAt: new Date() }, { where: { groupId: group.id, email: person.email, acceptedAt: null, revokedAt: null }, transaction })
+    const invitation = await Invitation.create(
+      { ...person, roles: ['lead'], groupId: group.id, inviterId: null, tokenHash: tokenHash(token), expiresAt: expiry() },
+      { transaction },
+    )
+    await mailLink(invitation, { name: group.name, groupName: group.name }, token, transaction)
+    await audit(transaction, 'invitation.create', { id: null, groupId: group.id }, invitation)
+    return linkOf(token)
+  })
 }
 
 async function loadManaged(actor: SignedInMember, id: string, transaction: Transaction): Promise<Invitation> {

@@ -2,9 +2,14 @@ import { Router } from 'express'
 import { authenticate } from '../middleware/authenticate.ts'
 import { accessToken } from './access-token.ts'
 import { account } from './account.ts'
+import { audit } from './audit.ts'
+import { constant } from './constant.ts'
 import { estimate } from './estimate.ts'
 import { group } from './group.ts'
 import { invitation } from './invitation.ts'
+import { key } from './key.ts'
+import { outbox } from './outbox.ts'
+import { lookUp } from './look-up.ts'
 import { passwordReset } from './password-reset.ts'
 import { plan } from './plan.ts'
 import { run } from './run.ts'
@@ -20,8 +25,13 @@ export function api(): Router {
   router.use('/group', group)
   router.use('/account', account)
   router.use('/access-tokens', accessToken)
+  router.use('/audit', audit)
+  router.use('/outbox', outbox)
+  router.use('/keys', key)
   router.use('/plans', plan)
   router.use('/runs', run)
   router.use('/estimates', estimate)
+  router.use('/constants', constant)
+  router.use('/look-ups', lookUp)
   return router
 }

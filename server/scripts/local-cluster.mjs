@@ -15,6 +15,7 @@ const locationFile = join(dataFolder, 'cluster-location.json')
  * The private cluster of this installation: made at the first start, kept, and started and stopped with the product.
  * @typedef {object} LocalCluster
  * @property {{ superuser: string, owner: string, application: string }} urls
+ * @property {boolean} wasRunning before it was asked to start
  * @property {() => Promise<void>} revive starts the server again if it has died, on the same port
  * @property {() => Promise<void>} stop
  */
@@ -26,10 +27,12 @@ export async function startLocalCluster() {
   const settingsFile = join(folder, 'settings.json')
   if (!existsSync(settingsFile)) throw new SetupError(`${folder} is there, but its settings.json with the passwords is not. Put it back, or move the folder away to begin with an empty database.`)
   const settings = JSON.parse(readFileSync(settingsFile, 'utf8'))
+  const wasRunning = runningPort(folder) !== undefined
   const port = await startCluster(folder, { preferred: settings.port, durable: true })
   if (port !== settings.port) writeFileSync(settingsFile, JSON.stringify({ ...settings, port }), { mode: 0o600 })
   return {
     urls: addresses(port, settings.passwords),
+    wasRunning,
     revive: async () => {
       if (runningPort(folder) !== undefined) return
       say('The database server has ended; starting it again …')

@@ -1,4 +1,5 @@
 import { fork } from 'node:child_process'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { freePort, isFree } from './cluster.mjs'
 import { startLocalCluster } from './local-cluster.mjs'
@@ -121,6 +122,7 @@ async function main() {
   const env = { DATABASE_URL: application, DATABASE_OWNER_URL: '', PORT: String(port) }
   if (!process.env.SMTP_URL) Object.assign(env, await startCatcher(env))
   const [address] = await Promise.all([run('web', [join(build, 'index.js'), 'web'], env), run('worker', [join(build, 'index.js'), 'worker'], env)])
+  writeFileSync(join(root, '.data', 'address'), process.env.PUBLIC_URL || address)
   announce(process.env.PUBLIC_URL || address, env.MAIL_READER_URL, prepared)
 }
 
