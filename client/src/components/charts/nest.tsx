@@ -21,7 +21,7 @@ export function Nest({ enclosures }: { enclosures: NestedEnclosure[] }) {
         <Table
           caption="Enclosures, widest first"
           rows={rows}
-          rowKey={(row) => row.label}
+          rowKey={(row) => `${row.label} ${row.lo} ${row.hi}`}
           columns={[
             { key: 'label', header: 'Enclosure', cell: (row) => row.label },
             { key: 'window', header: 'Window', cell: (row) => <Power exponent={row.exponent} /> },
@@ -45,7 +45,7 @@ function NestDrawing({ rows }: { rows: NestRow[] }) {
           const ground = index * ROW + 44
           const colour = row.conflict ? REFUSED : CERTAIN
           return (
-            <g key={row.label}>
+            <g key={index}>
               {row.inRowAbove && (
                 <path d={`M${at(row.inRowAbove.start)} ${ground - ROW} L${at(0)} ${ground - 22} M${at(row.inRowAbove.end)} ${ground - ROW} L${at(1)} ${ground - 22}`} stroke={SOFT} strokeOpacity={0.7} strokeDasharray="2 4" fill="none" />
               )}

@@ -33,11 +33,16 @@ export function useDraftClaim() {
 }
 
 export type ActInput<Name extends Act> = z.input<(typeof act)[Name]>
+/** Carries out an act and comes back when everything shown is up to date; throws what the server refuses. */
+export type DoAct = <Name extends Act>(name: Name, input: ActInput<Name>) => Promise<void>
 
-/** One act on a claim. A refusal is told to whoever acts, and the claim is read again: somebody else may have been quicker. */
-export function useAct<Name extends Act>(claimId: string, name: Name) {
+/** Acts on a claim. After a refusal, too, the claim is read again: somebody else may have been quicker. */
+export function useActs(claimId: string): DoAct {
   const invalidate = useInvalidate()
-  return useMutation({ mutationFn: (input: ActInput<Name>) => api.post<unknown>(`/claims/${claimId}/${name}`, input), onSettled: invalidate })
+  const mutation = useMutation({ mutationFn: ({ name, input }: { name: Act; input: unknown }) => api.post<unknown>(`/claims/${claimId}/${name}`, input), onSettled: invalidate })
+  return async (name, input) => {
+    await mutation.mutateAsync({ name, input })
+  }
 }
 
 export function useEditClaim(claimId: string) {
