@@ -7,7 +7,7 @@ import { nearestShift } from './integers.ts'
 const GUARD = 32
 
 /**
- * *Claim*: |atanh(1/q) 2^bits - result| <= terms + 1 where terms = bits/(2 log2 q) + 1.
+ * *Claim*: |atanh(1/q) 2^bits - result| <= 2 terms + 1 where terms = bits/(2 log2 q) + 2.
  * *Valid for*: integers q >= 2. *Bound*: A-4. *Rounding*: every quotient is rounded down.
  */
 function atanhInverse(q: bigint, bits: number): bigint {
@@ -46,7 +46,7 @@ function remembered(compute: (bits: number) => bigint): (bits: number) => bigint
 }
 
 /**
- * *Claim*: |ln 2 - result 2^-bits| <= 2^-bits. *Valid for*: 1 <= bits <= 2^20. *Bound*: A-4. *Rounding*: to nearest.
+ * *Claim*: |ln 2 - result 2^-bits| <= 2^-bits. *Valid for*: 1 <= bits < 2^20. *Bound*: A-4. *Rounding*: to nearest.
  * ln 2 = 18 atanh(1/26) - 2 atanh(1/4801) + 8 atanh(1/8749), as (27/25)^9 (2400/2401) (4375/4374)^4 = 2.
  */
 export const log2Fixed = remembered((bits) => {
@@ -55,7 +55,7 @@ export const log2Fixed = remembered((bits) => {
 })
 
 /**
- * *Claim*: |pi - result 2^-bits| <= 2^-bits. *Valid for*: 1 <= bits <= 2^20. *Bound*: A-4. *Rounding*: to nearest.
+ * *Claim*: |pi - result 2^-bits| <= 2^-bits. *Valid for*: 1 <= bits < 2^20. *Bound*: A-4. *Rounding*: to nearest.
  * pi = 16 atan(1/5) - 4 atan(1/239), for (5+i)^4 (239-i) = 2 (1+i) 2 13^4 up to a positive factor.
  */
 export const piFixed = remembered((bits) => {

@@ -6,6 +6,8 @@ const GUARD = 24
 /** The argument is cut into exponents of 2, then into digits of 6 bits each, and a rest below 2^-18. */
 const DIGIT_BITS = 6
 const DIGITS = 3
+/** Bits with which the tables are made beyond those they keep. */
+const TABLE_GUARD = 32
 
 interface Tables {
   /** steps[d][i] = exp(i 2^(-6(d+1))) in fixed point, error at most one unit. */
@@ -25,9 +27,9 @@ function tables(w: number): Tables {
   return found
 }
 
-/** Powers of exp(2^(-6(d+1))), made with 16 bits more, so that 64 truncated products stay below one unit. */
+/** Powers of exp(2^(-6(d+1))), made with 32 bits more, so that 64 truncated products stay below one unit. */
 function makeTables(w: number): Tables {
-  const wide = w + 16
+  const wide = w + TABLE_GUARD
   const one = 1n << BigInt(wide)
   const steps = Array.from({ length: DIGITS }, (_, d) => {
     const shift = BigInt(DIGIT_BITS * (d + 1))
@@ -39,7 +41,7 @@ function makeTables(w: number): Tables {
     }
     const row = [one]
     for (let i = 1; i < 1 << DIGIT_BITS; i++) row.push((row[i - 1] * base) >> BigInt(wide))
-    return row.map((value) => nearestShift(value, 16))
+    return row.map((value) => nearestShift(value, TABLE_GUARD))
   })
   const inverseFactorials = [1n << BigInt(w)]
   // |r| < 2^-18: the term n is below 2^(-18 n) / n!, and the series stops where that is below 2^-w.
@@ -57,7 +59,7 @@ export interface Scaled {
 
 /**
  * *Claim*: |e^(x 2^-p) - m 2^(e-p)| <= 2^(e-p), and 2^(p-1) < m < 2^(p+2).
- * *Valid for*: p >= 8, |x| < 2^(p+40). *Bound*: A-5. *Rounding*: the last shift is to nearest, all others down.
+ * *Valid for*: 8 <= p < 2^19, |x| < 2^(p+40). *Bound*: A-5. *Rounding*: the last shift is to nearest, all others down.
  */
 export function expFixed(x: bigint, p: number): Scaled {
   const extra = Math.max(0, bitLength(x) - p)

@@ -35,19 +35,19 @@ function tables(w: number): Tables {
 
 /**
  * *Claim*: |log(n / 2^bits) 2^w - result| <= 1. *Valid for*: 2^(bits-1) <= n <= 2^(bits+1). *Bound*: A-6.
- * By 2 atanh(z), z = (n - 2^bits)/(n + 2^bits) exact, |z| <= 1/3, with 16 bits more for the truncated terms.
+ * By 2 atanh(z), z = (n - 2^bits)/(n + 2^bits) exact, |z| <= 1/3, with 32 bits more for the truncated terms.
  */
 function logOfRatio(n: bigint, bits: number, w: number): bigint {
   const one = 1n << BigInt(bits)
   const [top, bottom] = [n - one, n + one]
   const [topSquare, bottomSquare] = [top * top, bottom * bottom]
-  let power = (top << BigInt(w + 17)) / bottom
+  let power = (top << BigInt(w + GUARD + 1)) / bottom
   let total = power
   for (let i = 3n; power !== 0n; i += 2n) {
     power = (power * topSquare) / bottomSquare
     total += power / i
   }
-  return nearestShift(total, 16)
+  return nearestShift(total, GUARD)
 }
 
 function lookUp(table: Map<number, bigint>, key: number, make: () => bigint): bigint {
@@ -61,7 +61,7 @@ function lookUp(table: Map<number, bigint>, key: number, make: () => bigint): bi
 
 /**
  * *Claim*: |log(x 2^-p) - result 2^-p| <= 2^-p.
- * *Valid for*: x > 0, p >= 8, bitLength(x) and p below 2^20. *Bound*: A-6. *Rounding*: the last shift is to nearest.
+ * *Valid for*: x > 0, p >= 8, bitLength(x) <= 2^19, 8 <= p < 2^19. *Bound*: A-6. *Rounding*: the last shift is to nearest.
  */
 export function logFixed(x: bigint, p: number): bigint {
   if (x <= 0n) throw new RangeError('logarithm of a number that is not positive')
