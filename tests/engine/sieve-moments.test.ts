@@ -1,16 +1,16 @@
 import { describe, expect, it } from 'vitest'
 import { forEachPrime } from '../../shared/engine/sieve/prime-counts.ts'
-import type { MomentSet } from '../../shared/engine/sieve/moments.ts'
+import type { MomentBlock } from '../../shared/engine/sieve/moments.ts'
 import { LONGEST_BLOCK, TIERS, primeMoments } from '../../shared/engine/sieve/prime-moments.ts'
 import { RESIDUES } from '../../shared/engine/sieve/wheel.ts'
 
-function collect(lo: number, hi: number, options = {}): MomentSet {
-  const all: MomentSet = { blocks: [], singles: [] }
+function collect(lo: number, hi: number, options = {}): { blocks: MomentBlock[]; singles: number[] } {
+  const [blocks, singles]: [MomentBlock[], number[]] = [[], []]
   primeMoments(lo, hi, (batch) => {
-    all.blocks.push(...batch.blocks)
-    all.singles.push(...batch.singles)
+    blocks.push(...batch.blocks)
+    singles.push(...batch.singles[0])
   }, options)
-  return all
+  return { blocks, singles }
 }
 
 describe('moments of the primes', () => {
@@ -29,7 +29,7 @@ describe('moments of the primes', () => {
     [10 ** 12, 10 ** 12 + 50_000],
   ])('are the power sums of the primes in (%i, %i]', (lo, hi) => {
     const { blocks, singles } = collect(lo, hi)
-    const bySum = new Map(blocks.map((block) => [block.centre, block.moments.map(() => 0n)]))
+    const bySum = new Map(blocks.map((block) => [block.centre, block.classes[0].map(() => 0n)]))
     const ordered = [...bySum.keys()]
     let at = 0
     const seen: number[] = []
@@ -43,7 +43,7 @@ describe('moments of the primes', () => {
       bySum.get(block.centre)?.forEach((_, j, sums) => { sums[j] += e ** BigInt(j) })
     })
     expect(singles).toEqual(seen)
-    for (const block of blocks) expect(block.moments).toEqual(bySum.get(block.centre))
+    for (const block of blocks) expect(block.classes[0]).toEqual(bySum.get(block.centre))
   })
 
   it('keep to blocks that are narrow beside their centre', () => {
@@ -53,7 +53,7 @@ describe('moments of the primes', () => {
   })
 
   it('of a residue class and its complements add up to those of all primes', () => {
-    const count = (options = {}) => collect(0, 3_000_000, options).blocks.reduce((n, block) => n + block.moments[0], 0n)
+    const count = (options = {}) => collect(0, 3_000_000, options).blocks.reduce((n, block) => n + block.classes[0][0], 0n)
     const parts = [1, 2].map((residue) => count({ residueClass: { modulus: 3, residue } }))
     expect(parts[0] + parts[1]).toBe(count())
   })

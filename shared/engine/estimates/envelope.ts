@@ -156,17 +156,33 @@ function chain(candidates: readonly Candidate[], logs: readonly number[], sign: 
   return links
 }
 
+/** c t^a (log t)^k in doubles. */
+type RoughTerm = readonly [c: number, a: number, k: number]
+
+const roughTerms = new WeakMap<readonly Term[], readonly RoughTerm[]>()
+
+function rough(terms: readonly Term[]): readonly RoughTerm[] {
+  let found = roughTerms.get(terms)
+  if (!found) {
+    found = terms.map(({ coefficient, power, logPower, overPi }) => {
+      const [c, a, k] = [coefficient, power, logPower].map((text) => approximate(parseRational(text)!))
+      return [overPi ? c / 3.14 : c, a, k]
+    })
+    roughTerms.set(terms, found)
+  }
+  return found
+}
+
 /** About the integral of a bound against -h' (see primeTail) over log t in [from, to]. */
 function approximateIntegral(terms: readonly Term[], from: number, to: number, { power, logPower }: RationalWeight): number {
   const [s, b] = [approximate(power), approximate(logPower)]
-  const steps = 60
+  const steps = 24
   const width = (to - from) / steps
   let total = 0
-  for (const { coefficient, power: p, logPower: q, overPi } of terms) {
-    const [c, a, k] = [coefficient, p, q].map((text) => approximate(parseRational(text)!))
+  for (const [c, a, k] of rough(terms)) {
     for (let i = 0; i < steps; i++) {
       const v = from + (i + 0.5) * width
-      total += (c / (overPi ? 3.14 : 1)) * width * v ** (k - b - 1) * Math.exp((a - s) * v + (s - 1) * from) // heuristic: affects speed only, and width
+      total += c * width * v ** (k - b - 1) * Math.exp((a - s) * v + (s - 1) * from) // heuristic: affects speed only, and width
     }
   }
   return total

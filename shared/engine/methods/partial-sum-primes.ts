@@ -62,7 +62,7 @@ export class PrimePartialSum implements Computation {
       lo,
       hi,
       (batch) =>
-        sumBatch(arithmetic, this.expansions, batch).forEach(([low, high], i) => {
+        sumBatch(arithmetic, this.expansions, batch).forEach(([[low, high]], i) => {
           totals[i][0] += low
           totals[i][1] += high
         }),

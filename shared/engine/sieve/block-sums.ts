@@ -1,58 +1,92 @@
-import type { Arithmetic } from '../arithmetic/arithmetic.ts'
+import { type Arithmetic, type Vector, type Weights, makeWeights } from '../arithmetic/arithmetic.ts'
+import { bitLength } from '../arithmetic/integers.ts'
 import { ONE, ZERO, rational } from '../arithmetic/rational.ts'
 import type { MomentBlock, MomentSet } from './moments.ts'
 import { type WeightExpansion, weightAt } from './weight.ts'
 
 /**
- * Encloses, for each of several weights, the sum of the weight over a batch of integers, in units of 2^-precision.
+ * Encloses, for each of several weights and each class, the sum of the weight over a batch of integers, in units of
+ * 2^-precision: result[weight][class].
  * *Claim*: inclusion. *Valid for*: blocks with log(centre) >= 9 and reach/centre <= 3/4; moments of order at most the
  * expansions'. *Bound*: S-3. *Rounding*: the ends outward.
  */
-export function sumBatch<N>(arithmetic: Arithmetic<N>, expansions: readonly WeightExpansion[], batch: MomentSet): [bigint, bigint][] {
+export function sumBatch<N>(arithmetic: Arithmetic<N>, expansions: readonly WeightExpansion[], batch: MomentSet): [bigint, bigint][][] {
   return arithmetic.frame(() => {
-    const totals = expansions.map(() => arithmetic.rational(ZERO))
-    for (const n of batch.singles) {
-      const logN = arithmetic.log(arithmetic.rational(rational(n)))
-      expansions.forEach(({ weight }, i) => {
-        totals[i] = arithmetic.add(totals[i], weightAt(arithmetic, weight, n, logN))
-      })
-    }
+    const { add } = arithmetic
+    const totals = expansions.map(() => batch.singles.map(() => arithmetic.rational(ZERO)))
+    batch.singles.forEach((singles, c) => {
+      for (const n of singles) {
+        const logN = arithmetic.log(arithmetic.rational(rational(n)))
+        expansions.forEach(({ weight }, i) => (totals[i][c] = add(totals[i][c], weightAt(arithmetic, weight, n, logN))))
+      }
+    })
+    const rows = expansions.map(rowsOf)
     for (const block of batch.blocks) {
       const logCentre = arithmetic.log(arithmetic.rational(rational(block.centre)))
-      const inverseLog = arithmetic.divide(arithmetic.rational(ONE), logCentre)
+      const powers = powersOfInverse(arithmetic, logCentre, orderOf(block))
       expansions.forEach((expansion, i) => {
-        totals[i] = arithmetic.add(totals[i], blockSum(arithmetic, expansion, block, logCentre, inverseLog))
+        const local = taylor(arithmetic, expansion, rows[i], block, logCentre, powers)
+        block.classes.forEach((moments, c) => {
+          if (moments.length > 0) totals[i][c] = add(totals[i][c], classSum(arithmetic, local, moments))
+        })
       })
     }
-    return totals.map((total) => arithmetic.fixedBounds(total))
+    return totals.map((classes) => classes.map((total) => arithmetic.fixedBounds(total)))
   })
 }
 
-/** The sum over one block: w(c) sum_i y^i nu_i, the nu_i being exact rationals made of the moments, and the remainder (S-3). */
-function blockSum<N>(arithmetic: Arithmetic<N>, expansion: WeightExpansion, block: MomentBlock, logCentre: N, inverseLog: N): N {
-  const { moments, reach, step } = block
-  const { numerators, denominator, remainderFactor } = expansion
-  const order = moments.length - 1
-  const centre = BigInt(block.centre)
-  // scaled[j] = step^j moments[j] centre^(order - j)
-  const scaled = new Array<bigint>(order + 1)
-  let power = 1n
-  for (let j = order; j >= 0; j--, power *= centre) scaled[j] = BigInt(step) ** BigInt(j) * moments[j] * power
-  const den = denominator * (power / centre)
-  let total = arithmetic.rational(ZERO)
-  for (let i = order; i >= 0; i--) {
-    let num = 0n
-    for (let j = i; j <= order; j++) num += numerators[j][i] * scaled[j]
-    total = arithmetic.multiply(total, inverseLog)
-    // Not in lowest terms, which no operation relies on: the division by the greatest common divisor would cost more.
-    if (num !== 0n) total = arithmetic.add(total, arithmetic.rational({ num, den }))
-  }
-  const remainder = {
-    num: moments[0] * (4n * BigInt(reach)) ** BigInt(order + 1) * remainderFactor.num,
-    den: (3n * centre) ** BigInt(order + 1) * remainderFactor.den,
-  }
-  return arithmetic.multiply(
-    arithmetic.addError(total, arithmetic.rational(remainder)),
-    weightAt(arithmetic, expansion.weight, block.centre, logCentre),
-  )
+const orderOf = ({ classes }: MomentBlock): number => classes.reduce((order, moments) => Math.max(order, moments.length - 1), 0)
+
+/** The numerators of each Taylor coefficient as weights for the powers of y = 1/log c. */
+const rowsOf = ({ numerators, denominator }: WeightExpansion): Weights[] => numerators.map((row) => makeWeights(row, denominator))
+
+/** 1, y, y^2, … with y = 1/logCentre < 1. */
+function powersOfInverse<N>(arithmetic: Arithmetic<N>, logCentre: N, order: number): Vector<N> {
+  const inverse = arithmetic.divide(arithmetic.rational(ONE), logCentre)
+  const powers = [arithmetic.rational(ONE), inverse]
+  while (powers.length <= order) powers.push(arithmetic.multiply(powers[powers.length - 1], inverse))
+  return arithmetic.vector(powers)
+}
+
+/** The weight about a centre: w(c + u) = sum of coefficients[j] (u/unit)^j, up to `remainder` for each integer. */
+interface LocalTaylor<N> {
+  coefficients: N[]
+  /** unit/step is 2^scale, so that the moments are brought to size exactly. */
+  scale: number
+  remainder: N
+}
+
+function taylor<N>(
+  arithmetic: Arithmetic<N>,
+  expansion: WeightExpansion,
+  rows: readonly Weights[],
+  block: MomentBlock,
+  logCentre: N,
+  powers: Vector<N>,
+): LocalTaylor<N> {
+  const { centre, reach, step } = block
+  // unit >= reach
+  const scale = bitLength(BigInt(Math.ceil(reach / step) - 1))
+  const ratio = arithmetic.rational({ num: BigInt(step) << BigInt(scale), den: BigInt(centre) })
+  let value = weightAt(arithmetic, expansion.weight, centre, logCentre)
+  const order = orderOf(block)
+  const coefficients = Array.from({ length: order + 1 }, (_, j) => {
+    const coefficient = arithmetic.multiply(value, arithmetic.dot(rows[j], powers))
+    value = arithmetic.multiply(value, ratio)
+    return coefficient
+  })
+  // Now value encloses w(c) (unit/c)^(order+1).
+  const { remainderFactor } = expansion
+  const remainder = arithmetic.scale(value, {
+    num: 4n ** BigInt(order + 1) * remainderFactor.num,
+    den: 3n ** BigInt(order + 1) * remainderFactor.den,
+  })
+  return { coefficients, scale, remainder }
+}
+
+/** The sum over the integers of one class: sum of coefficients[j] moments[j] 2^(-scale j), and the remainders (S-3). */
+function classSum<N>(arithmetic: Arithmetic<N>, { coefficients, scale, remainder }: LocalTaylor<N>, moments: readonly bigint[]): N {
+  const terms = moments.map((moment, j) => arithmetic.scale(coefficients[j], { num: moment, den: 1n << BigInt(scale * j) }))
+  const sum = terms.reduce((total, term) => arithmetic.add(total, term))
+  return arithmetic.addError(sum, arithmetic.scale(remainder, { num: moments[0], den: 1n }))
 }

@@ -1,27 +1,27 @@
 import { binomial } from '../arithmetic/integers.ts'
 
 /**
- * Integers near a centre, by their exact power sums: all that a sum of a smooth weight over them needs.
- * With e = (n - centre) / step, an integer, moments[j] = sum of e^j.
+ * Integers near a centre, by their exact power sums: all that a sum of a smooth weight over them needs. They may be told apart
+ * in classes; for each class, with e = (n - centre) / step an integer, moments[j] = sum of e^j, empty where the class is.
  */
 export interface MomentBlock {
   readonly centre: number
   readonly step: number
   /** |n - centre| <= reach for every integer n of the block. */
   readonly reach: number
-  readonly moments: bigint[]
+  readonly classes: bigint[][]
 }
 
-/** Blocks and, where these do not pay, integers one by one. */
+/** Blocks and, where these do not pay, integers one by one: singles[class]. */
 export interface MomentSet {
   readonly blocks: MomentBlock[]
-  readonly singles: number[]
+  readonly singles: number[][]
 }
 
 /** rows[j][a] = binomial(j, a) shift^(j-a): moments about a centre that lies `shift` steps lower, from those about a higher one. */
 const shiftMemory = new Map<string, bigint[][]>()
 
-function shiftRows(shift: number, order: number): bigint[][] {
+export function shiftRows(shift: number, order: number): bigint[][] {
   const key = `${shift}/${order}`
   let rows = shiftMemory.get(key)
   if (!rows) {

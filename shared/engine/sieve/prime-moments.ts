@@ -99,7 +99,7 @@ export function primeMoments(lo: number, hi: number, take: (batch: MomentSet) =>
   let current: MomentBlock | undefined
 
   const handOver = () => {
-    if (blocks.length + singles.length > 0) take({ blocks, singles })
+    if (blocks.length + singles.length > 0) take({ blocks, singles: [singles] })
     blocks = []
     singles = []
   }
@@ -108,7 +108,7 @@ export function primeMoments(lo: number, hi: number, take: (batch: MomentSet) =>
     const centre = WHEEL * (start + length / 2) + 15
     if (current?.centre !== centre) {
       if (blocks.length >= BATCH) handOver()
-      current = { centre, step: 2, reach: 15 * length + 14, moments: new Array<bigint>(order + 1).fill(0n) }
+      current = { centre, step: 2, reach: 15 * length + 14, classes: [new Array<bigint>(order + 1).fill(0n)] }
       blocks.push(current)
     }
     return current
@@ -133,7 +133,7 @@ export function primeMoments(lo: number, hi: number, take: (batch: MomentSet) =>
           const [from, to] = [i / 4, (i + tier.cellBytes) / 4]
           if (tier.order === 4) gatherFour(words, from, to, cell)
           else gather(words, from, to, tier.order, cell)
-          if (cell[0] > 0) addShifted(block.moments, cell, 15 * (firstByte + i + tier.cellBytes / 2 - start - length / 2))
+          if (cell[0] > 0) addShifted(block.classes[0], cell, 15 * (firstByte + i + tier.cellBytes / 2 - start - length / 2))
         }
       }
     },
