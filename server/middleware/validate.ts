@@ -26,12 +26,21 @@ export function validate(schemas: RequestSchemas): RequestHandler & { schemas: R
     const input = {}
     for (const part of ['body', 'query', 'params'] as const) {
       const parsed = schemas[part]?.safeParse(given[part])
-      if (parsed?.success) Object.assign(input, parsed.data)
-      else if (parsed) errors.push(...fieldErrors(parsed.error))
+      if (parsed?.success) {
+        Object.assign(input, parsed.data)
+        errors.push(...unkeepable(parsed.data))
+      } else if (parsed) errors.push(...fieldErrors(parsed.error))
     }
     if (errors.length > 0) throw invalid(errors)
     req.input = input
     next()
   }
   return Object.assign(check, { schemas })
+}
+
+/** Texts with a zero character or half a surrogate pair, which PostgreSQL cannot keep. */
+function unkeepable(value: unknown, path: string[] = []): FieldError[] {
+  if (typeof value === 'string') return value.includes('\0') || /\p{Surrogate}/u.test(value) ? [{ path: path.join('.'), message: 'holds a character that is none' }] : []
+  if (value === null || typeof value !== 'object') return []
+  return Object.entries(value).flatMap(([key, member]) => unkeepable(member, [...path, key]))
 }
