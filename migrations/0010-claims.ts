@@ -27,8 +27,8 @@ export const up: Migration['up'] = async (query) => {
       source text,
       remark text NOT NULL DEFAULT '',
       -- The file to download, to the letter, and its digest.
-      certificate text,
-      certificate_digest text CHECK (certificate_digest ~ '^[0-9a-f]{64}$'),
+      certificate text NOT NULL,
+      certificate_digest text NOT NULL CHECK (certificate_digest ~ '^[0-9a-f]{64}$'),
       -- SHA-256 of what is asserted: verdicts and the signature are about this.
       digest text NOT NULL CHECK (digest ~ '^[0-9a-f]{64}$'),
       -- Whether a run of this installation meets the enclosure.

@@ -202,6 +202,9 @@ const PAST: Record<LifeAct, string> = {
   endorse: 'endorsed', 'await-referee': 'put back', supersede: 'superseded', restore: 'restored',
 }
 
+/** What an act makes of a claim, for a sentence: "signed", "returned"; undefined for what is no act of its life. */
+export const actParticiple = (act: string): string | undefined => PAST[act as LifeAct]
+
 /** A state as it is written in a sentence. */
 export const stateWord = (state: ClaimState): string => (state === 'in-review' ? 'in review' : state)
 
