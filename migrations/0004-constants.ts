@@ -62,8 +62,8 @@ export const up: Migration['up'] = async (query) => {
     CREATE INDEX register_entries_changed ON register_entries (audience, changed_at, number);
     CREATE INDEX register_entries_value ON register_entries (audience, coalesce(best_lo, 'Infinity'), number);
     CREATE INDEX register_entries_value_down ON register_entries (audience, coalesce(best_lo, '-Infinity'), number);
-    CREATE INDEX register_entries_lower ON register_entries (audience, best_lo);
-    CREATE INDEX register_entries_upper ON register_entries (audience, best_hi);
+    CREATE INDEX register_entries_below ON register_entries (audience, best_lo);
+    CREATE INDEX register_entries_within ON register_entries USING gist (numrange(best_lo, best_hi, '[]')) WHERE best_lo IS NOT NULL;
 
     -- A new group sees at once what is public, and every constant that is stated.
     CREATE FUNCTION open_register() RETURNS trigger LANGUAGE plpgsql AS $$

@@ -1,5 +1,5 @@
 import type { Transaction } from 'sequelize'
-import { certifiedRounded, certifiedTruncated } from '../../shared/digits.ts'
+import { digitsOf, intersection } from '../../shared/intersection.ts'
 import type { ClaimState } from '../../shared/schemas/claim.ts'
 import { change, select } from '../db.ts'
 import { PUBLIC } from '../queries/audience.ts'
@@ -18,36 +18,11 @@ interface ClaimRow {
   in_conflict: boolean
 }
 
-interface Best {
-  lo: string | null
-  hi: string | null
-  truncated: number | null
-  rounded: number | null
-}
-
-const NONE: Best = { lo: null, hi: null, truncated: null, rounded: null }
-
-/** Whether a >= b for decimals as PostgreSQL writes them, exactly. */
-function atLeast(a: string, b: string): boolean {
-  const places = Math.max(a.split('.')[1]?.length ?? 0, b.split('.')[1]?.length ?? 0)
-  const scaled = (text: string): bigint => {
-    const [whole, part = ''] = text.split('.')
-    return BigInt(whole + part.padEnd(places, '0'))
-  }
-  return scaled(a) >= scaled(b)
-}
-
-/** The intersection of enclosures, exactly; none where there is no enclosure or no common point. */
-function intersection(claims: readonly ClaimRow[]): Best {
-  let lo: string | null = null
-  let hi: string | null = null
-  for (const claim of claims) {
-    if (claim.lo === null || claim.hi === null) continue
-    if (lo === null || atLeast(claim.lo, lo)) lo = claim.lo
-    if (hi === null || atLeast(hi, claim.hi)) hi = claim.hi
-  }
-  if (lo === null || hi === null || !atLeast(hi, lo)) return NONE
-  return { lo, hi, truncated: certifiedTruncated(lo, hi).decimals, rounded: certifiedRounded(lo, hi).decimals }
+/** The intersection of the signed enclosures among these claims, with its digits. */
+function bestOf(claims: readonly ClaimRow[]) {
+  const enclosures = claims.flatMap(({ signed, state, lo, hi }) => (signed && state === 'signed' && lo !== null && hi !== null ? [{ lo, hi }] : []))
+  const best = intersection(enclosures)
+  return best ? { ...best, ...digitsOf(best) } : { lo: null, hi: null, truncated: null, rounded: null }
 }
 
 const furthest = (claims: readonly ClaimRow[]): ClaimState | 'stated' =>
@@ -62,7 +37,7 @@ function entryOf(claims: readonly ClaimRow[]) {
     state: furthest(claims),
     enteredState: furthest(entered),
     inConflict: claims.some((claim) => claim.in_conflict),
-    ...intersection(entered.filter((claim) => claim.state === 'signed')),
+    ...bestOf(claims),
   }
 }
 
@@ -77,12 +52,12 @@ export async function refreshBest(transaction: Transaction, constantId: string):
   const claims = await select<ClaimRow>(
     `SELECT c.group_id, g.public, c.state, c.lo, c.hi, c.signed_at IS NOT NULL AS signed, c.since,
             EXISTS (SELECT 1 FROM conflicts x WHERE (x.claim_id = c.id OR x.signed_claim_id = c.id) AND x.closed_at IS NULL) AS in_conflict
-     FROM claims c JOIN groups g ON g.id = c.group_id WHERE c.constant_id = $id`,
+     FROM claims c JOIN groups g ON g.id = c.group_id WHERE c.constant_id = $id AND c.other_constant_id IS NULL`,
     { id: constantId },
     transaction,
   )
   const published = claims.filter((claim) => claim.public && claim.signed)
-  const best = intersection(claims.filter((claim) => claim.signed && claim.state === 'signed'))
+  const best = bestOf(claims)
   await change(
     'UPDATE constants SET best_lo = $lo, best_hi = $hi, best_digits = $truncated WHERE id = $id',
     { id: constantId, lo: best.lo, hi: best.hi, truncated: best.truncated },

@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto'
 import type { z } from 'zod'
 import { canonicalDefinition } from '../../shared/engine/sets/canonical.ts'
+import { convergenceCondition } from '../../shared/engine/sets/convergence.ts'
 import type { Definition, SetKind } from '../../shared/engine/sets/definition.ts'
 import { readDefinition as reading } from '../../shared/engine/sets/typeset.ts'
 import type { definitionInput, DefinitionView } from '../../shared/schemas/definition.ts'
@@ -37,4 +38,16 @@ function filtersOf(definition: Definition): ReadDefinition['filters'] {
   const { set, weight } = definition
   const k = set.kind === 'primes' ? 1 : 'k' in set ? set.k : null
   return { setKind: set.kind, k, exclude: 'exclude' in set ? set.exclude.join(',') : '', power: weight.power, logPower: weight.logPower }
+}
+
+/** A sentence on where the sum or product converges. */
+export function convergenceText(definition: Definition): string {
+  switch (definition.type) {
+    case 'series':
+      return `With terms n^-s (log n)^-b: ${convergenceCondition(definition.set)}.`
+    case 'over-primes':
+      return `The ${definition.combine} converges absolutely, since the expression falls at least like 1/p^2.`
+    case 'named':
+      return 'The limit exists.'
+  }
 }

@@ -7,6 +7,7 @@ import { invalid, invalidField, type FieldError } from '../errors.ts'
 import { audienceOf, stateColumn, type Reader } from './audience.ts'
 import { readTextQuery } from './constant-text.ts'
 import { readCursor, writeCursor, type CursorKey } from './cursor.ts'
+import { leadingDigits } from './leading-digits.ts'
 
 export type ConstantQuery = Omit<z.output<typeof constantQuery>, 'cursor' | 'limit'>
 
@@ -89,22 +90,9 @@ function textFilter(text: string, add: (condition: string, values: Bind) => void
   if (asked.exclude) add('c.exclude = $textExclude', { textExclude: asked.exclude.join(',') })
   if (asked.digits !== undefined) {
     const [lo, hi] = leadingDigits(asked.digits)
-    add('e.best_lo <= $digitsHi::numeric AND e.best_hi >= $digitsLo::numeric', { digitsLo: lo, digitsHi: hi })
+    add(`e.best_lo IS NOT NULL AND numrange(e.best_lo, e.best_hi, '[]') && numrange($digitsLo::numeric, $digitsHi::numeric, '[]')`, { digitsLo: lo, digitsHi: hi })
   }
   if (asked.words.length > 0) add(`to_tsvector('simple', c.words) @@ to_tsquery('simple', $words)`, { words: asked.words.map((word) => `${word}:*`).join(' & ') })
-}
-
-/** Numbers that begin with these digits, truncated, or round to them. */
-export function leadingDigits(digits: string): [lo: string, hi: string] {
-  const [whole, part = ''] = digits.replace('-', '').split('.')
-  const scaled = BigInt(whole + part) * 2n
-  const write = (half: bigint): string => {
-    const tenths = (half * 5n).toString().padStart(part.length + 2, '0')
-    return `${tenths.slice(0, -part.length - 1)}.${tenths.slice(-part.length - 1)}`
-  }
-  // Truncated digits allow a whole unit upwards, rounded ones half a unit each way.
-  const [low, high] = [scaled > 0n ? scaled - 1n : 0n, scaled + 2n]
-  return digits.startsWith('-') ? [`-${write(high)}`, `-${write(low)}`] : [write(low), write(high)]
 }
 
 /** By what each sorting goes, and the type of that; every one has an index. */

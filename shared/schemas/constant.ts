@@ -38,6 +38,8 @@ export const constantQuery = pageQuery.extend({
   sort: z.enum(['number', 'digits', 'value', 'changed', 'k']).default('number'),
   order: z.enum(['asc', 'desc']).default('asc'),
 })
+/** GET /constants/export: what is filtered, as a file. */
+export const constantExportQuery = constantQuery.omit({ cursor: true, limit: true }).extend({ format: z.enum(['csv', 'json', 'bibtex', 'latex']) })
 export const constantPage = pageOf(constantSummary)
 
 export const constant = constantSummary.extend({

@@ -1,0 +1,49 @@
+import { Router } from 'express'
+import { z } from 'zod'
+import { parseConstantNumber } from '../../shared/constant-number.ts'
+import { constantNumber } from '../../shared/schemas/common.ts'
+import { constantExportQuery, constantInput, constantQuery } from '../../shared/schemas/constant.ts'
+import { stateConstant } from '../commands/constant.ts'
+import { inTransaction } from '../db.ts'
+import { readDefinition } from '../engine/definition.ts'
+import { notFound } from '../errors.ts'
+import { may, signedInFor } from '../middleware/authenticate.ts'
+import { validate, type Validated } from '../middleware/validate.ts'
+import { exportConstants } from '../presenters/constant-export.ts'
+import { presentConstantSummary } from '../presenters/constant.ts'
+import { allConstants, listConstants } from '../queries/constant.ts'
+import { constantDetail } from '../queries/constant-page.ts'
+
+/** The register: open to everybody, each to what is open to them. */
+export const constant = Router()
+
+/** Most constants in one export. */
+const MOST_EXPORTED = 10_000
+
+const list = { query: constantQuery }
+const file = { query: constantExportQuery }
+const creation = { body: constantInput }
+const one = { params: z.object({ number: constantNumber }) }
+
+constant.get('/', validate(list), async (req: Validated<typeof list>, res) => {
+  const { rows, next, total } = await listConstants(req.reader, req.input)
+  res.json({ items: rows.map(presentConstantSummary), next, ...(total !== undefined && { total }) })
+})
+
+constant.get('/export', validate(file), async (req: Validated<typeof file>, res) => {
+  const { format, ...query } = req.input
+  const { text, type, name } = exportConstants(await allConstants(req.reader, query, MOST_EXPORTED), format)
+  res.set({ 'Content-Type': type, 'Content-Disposition': `attachment; filename="${name}"`, 'Cache-Control': 'no-cache' }).send(text)
+})
+
+constant.post('/', signedInFor('draft'), may('research'), validate(creation), async (req: Validated<typeof creation>, res) => {
+  const read = readDefinition(req.input.definition)
+  const { constant: row, created } = await inTransaction((transaction) => stateConstant(transaction, req.member, read))
+  res.status(created ? 201 : 200).json(await constantDetail(req.reader, row.number))
+})
+
+constant.get('/:number', validate(one), async (req: Validated<typeof one>, res) => {
+  const detail = await constantDetail(req.reader, parseConstantNumber(req.input.number) ?? 0)
+  if (!detail) throw notFound('constant')
+  res.json(detail)
+})
