@@ -73,7 +73,7 @@ function parseFlags(args: string[]) {
     return parseArgs({ args, options: OPTIONS, strict: true, allowPositionals: false }).values
   } catch (error) {
     const [message] = (error instanceof Error ? error.message : String(error)).split('\n')
-    throw new EngineRefusal('bad_flag', 'flags', message)
+    throw new EngineRefusal('bad_flag', 'flags', message.endsWith('.') ? message : `${message}.`)
   }
 }
 
