@@ -95,7 +95,11 @@ export class PanelsComputation implements Computation {
       const found = results.filter((_, index) => this.blocks[index].piece === piece)
       const complete = found.filter((one) => one !== null)
       if (complete.length < found.length || complete.length === 0) break
-      if (!areDescending(complete.flatMap(({ first, last }) => (first.centre === last.centre ? [first] : [first, last])))) {
+      const nodes = complete.flatMap(({ first, last }) => (first.centre === last.centre ? [first] : [first, last]))
+      const { centre, reach } = nodes[nodes.length - 1]
+      const count = this.chosen.panels[piece - 1]?.nodes ?? this.chosen.edgeNodes
+      // P-6: all roots are there, and none twice, if the intervals and their mirror images are disjoint.
+      if (!areDescending(nodes) || !(count % 2 === 1 ? centre === 0n : centre > reach)) {
         throw new Error('the nodes of a rule are not in order: these results do not belong together')
       }
       pieces.push(complete)

@@ -43,7 +43,7 @@ export interface BlockSums {
 /** Bits that the nodes have beyond the precision, so that their reach costs the weights nothing (P-6). */
 export const NODE_BITS = 40
 
-/** The nodes of one run. Piece 0 is the edge, piece i the panel i - 1. */
+/** The nodes of one run (P-1). Piece 0 is the edge, piece i the panel i - 1. */
 export class PanelsSweep {
   readonly arithmetic: Arithmetic<AnyNumber>
   private readonly wide: Arithmetic<AnyNumber>
@@ -69,6 +69,7 @@ export class PanelsSweep {
     this.logPower = weight.logPower
     this.list = list
     this.context = createZetaContext(arithmetic, parameters)
+    for (const { series } of list) series.prepare?.(this.context)
     this.logEdge = arithmetic.log(arithmetic.rational(parameters.edge))
   }
 
@@ -115,7 +116,7 @@ export class PanelsSweep {
     return this.interval([centre - node.reach, centre + node.reach], bits + 1)
   }
 
-  /** The point s0 + t; `logExcess` is left to the caller where s0 = 1. */
+  /** The point s0 + t. Where s0 = 1, `logT` is what takes the place of log t: log t itself, or at the edge log eps (P-2). */
   private point(t: AnyNumber, logT: AnyNumber): SeriesPoint<AnyNumber> {
     const { arithmetic, excess } = this
     if (excess.num === 0n) return new PrimeZeta(new ZetaPoint(this.context, t, logT))
@@ -189,14 +190,13 @@ export class PanelsSweep {
   private edgeRules(): Map<string, EdgeRule> {
     if (this.rules.size > 0) return this.rules
     const { arithmetic, wide, list } = this
-    const logEdge = arithmetic.log(arithmetic.rational(this.parameters.edge))
     for (const { edge } of list) {
       const beta = this.edgeExponent(edge)
       const key = toText(beta)
       const logs = Math.max(...list.filter((one) => toText(this.edgeExponent(one.edge)) === key).map((one) => one.edge.logs))
       if (this.rules.has(key)) continue
       const moments = legendreMoments(wide, this.parameters.edgeNodes, beta, logs)
-      const scale = arithmetic.exp(arithmetic.scale(logEdge, beta))
+      const scale = arithmetic.exp(arithmetic.scale(this.logEdge, beta))
       this.rules.set(key, { rule: createProductRule(arithmetic, wide, moments), scale })
     }
     return this.rules

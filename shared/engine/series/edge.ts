@@ -11,7 +11,7 @@ import { type SymmetricKind, symmetricFunction } from './symmetric.ts'
 /**
  * D(1 + t) near t = 0, its singularity made explicit: with x = t/eps and L = log(1/x)
  *   t^pole D(1+t) = sum over i <= logs of L^i/i! parts[logs - i](t),
- * every part analytic where Re t > -1/2 (P-2).
+ * every part analytic about [0, eps] (P-2, P-3).
  */
 export interface EdgeSeries {
   readonly pole: 0 | 1
@@ -69,7 +69,7 @@ function primeEdge(kind: SymmetricKind, k: number, exclude: readonly number[], d
   }
 }
 
-/** log 8 > log(1/(1 - 7/8)) and log zeta(3/2) + log 3/2 + pi/2 are below this (P-3). */
+/** Above |log(t zeta(1+t))| in the ellipse (P-3). */
 const LOG_OF_REGULAR_ZETA = rational(33, 10)
 /** Above sum over m >= 3 of log zeta(m/2)/m (P-3). */
 const LOG_ZETA_REST = rational(7, 10)
