@@ -92,9 +92,9 @@ export class PanelsComputation implements Computation {
   private pieces(results: readonly (BlockResult | null)[]): BlockResult[][] {
     const pieces: BlockResult[][] = []
     for (let piece = 0; piece <= this.chosen.panels.length; piece++) {
-      const found = results.filter((_, index) => this.blocks[index].piece === piece)
+      const found = this.blocks.flatMap((block, index) => (block.piece === piece ? [results[index] ?? null] : []))
       const complete = found.filter((one) => one !== null)
-      if (complete.length < found.length || complete.length === 0) break
+      if (complete.length < found.length) break
       const nodes = complete.flatMap(({ first, last }) => (first.centre === last.centre ? [first] : [first, last]))
       const { centre, reach } = nodes[nodes.length - 1]
       const count = this.chosen.panels[piece - 1]?.nodes ?? this.chosen.edgeNodes
