@@ -1,6 +1,6 @@
 import { useState } from 'react'
 import { Convergence } from '../src/components/charts/convergence.tsx'
-import { BudgetTable, ErrorBudget } from '../src/components/charts/error-budget.tsx'
+import { ErrorBudget } from '../src/components/charts/error-budget.tsx'
 import { Narrowing } from '../src/components/charts/narrowing.tsx'
 import { Nest } from '../src/components/charts/nest.tsx'
 import { DigitLine } from '../src/components/digit-line/digit-line.tsx'
@@ -76,7 +76,7 @@ export function ComponentsPage() {
         <p className="flex flex-wrap gap-x-6 gap-y-2">{(Object.keys(STATE_WORDS) as MarkedState[]).map((state) => <StateMark key={state} state={state} />)}</p>
         <p className="mt-3 flex flex-wrap gap-x-6 gap-y-2">{(Object.keys(STATE_WORDS) as MarkedState[]).map((state) => <StateMark key={state} state={state} size="large" />)}</p>
       </Section>
-      <Section title="Error budget"><ErrorBudget items={budget} radius="9.9e-46" /><BudgetTable items={budget} radius="9.9e-46" /></Section>
+      <Section title="Error budget"><ErrorBudget items={budget} radius="9.9e-46" /></Section>
       <Section title="Convergence"><Convergence points={points} unit="nodes" /></Section>
       <Section title="Narrowing"><Narrowing steps={steps} /></Section>
       <Section title="Nest"><Nest enclosures={[...steps.map((step) => ({ label: step.claim, lo: step.lo, hi: step.hi })), { label: 'MST-0001/4', lo: '1.63661632338', hi: '1.63661632339' }]} /></Section>

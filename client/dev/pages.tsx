@@ -6,8 +6,10 @@ import '../src/styles.css'
 import { Masthead } from '../src/app/masthead.tsx'
 import { AccountExample } from './account.tsx'
 import { DigitCheckPage } from './digit-check.tsx'
+import { MAIN_PATH } from './main-path.tsx'
 
 const VIEWS: Record<string, ReactNode> = {
+  ...MAIN_PATH,
   account: <AccountExample />,
   'digit-check': <DigitCheckPage />,
 }

@@ -4,6 +4,7 @@ import { MemoryRouter } from 'react-router-dom'
 import { describe, expect, test } from 'vitest'
 import { ErrorBudget } from '../../client/src/components/charts/error-budget.tsx'
 import { funnel } from '../../client/src/components/charts/funnel.ts'
+import { Nest } from '../../client/src/components/charts/nest.tsx'
 import { nest } from '../../client/src/components/charts/nest-layout.ts'
 import { exponentTicks, log10OfText } from '../../client/src/components/charts/scale.ts'
 
@@ -60,18 +61,29 @@ describe('nest', () => {
 })
 
 describe('error budget', () => {
-  test('the table of the same numbers is one key away', async () => {
-    const user = userEvent.setup()
+  test('the bars come with the table of the same numbers and the statement of each bound', () => {
     render(
       <MemoryRouter>
         <ErrorBudget items={[{ source: 'tail', bound: 'P-1', statement: 'Beyond x the sum is at most …', magnitude: '4.0e-8' }]} radius="4.1e-8" />
       </MemoryRouter>,
     )
-    const toggle = screen.getByRole('button', { name: 'Show as table' })
-    toggle.focus()
+    const table = screen.getByRole('table', { name: 'Error budget' })
+    expect(table).toHaveTextContent('Tail4.0 · 10−8P-1Beyond x the sum is at most …')
+    expect(table).toHaveTextContent('Radius4.1 · 10−8')
+  })
+})
+
+describe('a chart', () => {
+  test('has the table of the same numbers one key away', async () => {
+    const user = userEvent.setup()
+    render(
+      <MemoryRouter>
+        <Nest enclosures={[{ label: 'MST-0001/1', lo: '1.6', hi: '1.7' }, { label: 'MST-0001/2', lo: '1.72', hi: '1.73' }]} />
+      </MemoryRouter>,
+    )
+    screen.getByRole('button', { name: 'Show as table' }).focus()
     await user.keyboard('t')
-    expect(screen.getByRole('table', { name: 'Error budget' })).toHaveTextContent('Tail')
-    expect(screen.getByRole('table')).toHaveTextContent('Beyond x the sum is at most …')
+    expect(screen.getByRole('table')).toHaveTextContent('does not meet')
     await user.click(screen.getByRole('button', { name: 'Show as chart' }))
     expect(screen.queryByRole('table')).toBeNull()
   })

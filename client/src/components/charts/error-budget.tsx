@@ -1,5 +1,4 @@
-import { lazy } from 'react'
-import { ChartFigure } from './chart-figure.tsx'
+import { lazy, Suspense } from 'react'
 import { Table } from '../ui/table.tsx'
 import { Power } from './power.tsx'
 
@@ -38,19 +37,21 @@ interface ErrorBudgetProps {
   radius: string
 }
 
-/** How much of the radius each source brings. */
+/** How much of the radius each source brings: as bars, and below them the same numbers with the statement of each bound. */
 export function ErrorBudget({ items, radius }: ErrorBudgetProps) {
   return (
-    <ChartFigure
-      caption="Each source's share of the radius on a logarithmic scale, each rounded up; the radius of the enclosure last."
-      chart={<ErrorBudgetPlot items={items} radius={radius} />}
-      table={<BudgetTable items={items} radius={radius} />}
-    />
+    <>
+      <figure className="mb-5" aria-hidden="true">
+        <Suspense fallback={<div style={{ height: 92 + 34 * items.length }} />}>
+          <ErrorBudgetPlot items={items} radius={radius} />
+        </Suspense>
+      </figure>
+      <BudgetTable items={items} radius={radius} />
+    </>
   )
 }
 
-/** The same numbers with the statement of each bound. */
-export function BudgetTable({ items, radius }: ErrorBudgetProps) {
+function BudgetTable({ items, radius }: ErrorBudgetProps) {
   const rows = [...items.map((item, index) => ({ key: String(index), ...item })), { key: 'radius', source: null, bound: '', statement: 'Half the width of the enclosure', magnitude: radius }]
   return (
     <Table

@@ -16,7 +16,7 @@ export default function NarrowingPlot({ steps }: { steps: NarrowingStep[] }) {
   const data = [...points, { time: last + pad, digits: points.at(-1)?.digits, claim: '' }]
   return (
     <ResponsiveContainer width="100%" height={260}>
-      <LineChart data={data} margin={MARGIN} accessibilityLayer={false}>
+      <LineChart data={data} margin={{ ...MARGIN, top: 28 }} accessibilityLayer={false}>
         <XAxis dataKey="time" type="number" domain={[first - pad, last + pad]} ticks={ticks.at} tickFormatter={(time: number) => ticks.format.format(time)} tick={TICK} tickLine={false} axisLine={AXIS_LINE} label={axisLabel('date of signature', 'below')} minTickGap={40} />
         <YAxis type="number" domain={[0, 'auto']} allowDecimals={false} tick={TICK} tickLine={false} axisLine={AXIS_LINE} width={54} label={axisLabel('certified digits', 'left')} />
         <Tooltip cursor={false} isAnimationActive={false} content={({ payload }) => <StepTip step={payload[0]?.payload as NarrowingStep | undefined} />} />

@@ -3,7 +3,7 @@ import type { InputHTMLAttributes, ReactNode, Ref, SelectHTMLAttributes, Textare
 import { classNames } from '../../lib/class-names.ts'
 
 const CONTROL =
-  'w-full rounded-slight border border-edge bg-leaf px-2.5 py-1.5 leading-snug text-ink placeholder:text-soft aria-invalid:border-refused aria-invalid:outline-refused disabled:bg-shade disabled:text-soft'
+  'w-full min-h-[2.45rem] rounded-slight border border-edge bg-leaf px-2.5 py-1.5 leading-snug text-ink placeholder:text-soft aria-invalid:border-refused aria-invalid:outline-refused disabled:bg-shade disabled:text-soft'
 
 /** What a control needs to belong to its label, hint and error. */
 export interface ControlProps {
@@ -64,7 +64,7 @@ export function TextArea({ className, ref, ...rest }: TextareaHTMLAttributes<HTM
 }
 
 export function Select({ className, ref, ...rest }: SelectHTMLAttributes<HTMLSelectElement> & { ref?: Ref<HTMLSelectElement> }) {
-  return <select {...rest} ref={ref} className={classNames(CONTROL, 'h-[2.45rem]', className)} />
+  return <select {...rest} ref={ref} className={classNames(CONTROL, 'h-[2.45rem] py-0', className)} />
 }
 
 interface ChoiceProps extends InputHTMLAttributes<HTMLInputElement> {

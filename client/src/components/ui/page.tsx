@@ -47,7 +47,7 @@ interface SectionProps {
 export function Section({ title, beside, children, className, id }: SectionProps) {
   return (
     <section id={id} className={classNames('mt-10 first:mt-0', className)}>
-      <div className="mb-3 flex flex-wrap items-baseline justify-between gap-x-6 border-b border-rule pb-1">
+      <div className="section-head">
         <h2>{title}</h2>
         {beside && <div className="text-[0.92rem] text-soft">{beside}</div>}
       </div>

@@ -87,7 +87,7 @@ export function Table<Row>({ caption, columns, rows, rowKey, sorting, onTurn, bu
           <tr key={rowKey(row)} role="row">
             {columns.map((column) => (
               <td key={column.key} role="cell" data-label={column.plain ? undefined : column.header} className={classNames(column.align === 'right' && 'sm:text-right', column.className)}>
-                {column.cell(row)}
+                <div className="min-w-0">{column.cell(row)}</div>
               </td>
             ))}
           </tr>

@@ -1,6 +1,6 @@
 import type { Claim } from '../../../../shared/schemas/claim.ts'
 import { paths } from '../../app/paths.ts'
-import { BudgetTable, ErrorBudget } from '../../components/charts/error-budget.tsx'
+import { ErrorBudget } from '../../components/charts/error-budget.tsx'
 import { Convergence } from '../../components/charts/convergence.tsx'
 import { Nest } from '../../components/charts/nest.tsx'
 import { StateMark } from '../../components/state-mark/state-mark.tsx'
@@ -137,11 +137,13 @@ function ClaimMatter({ claim, onAct, onUpload, onRemoveEvidence }: Pick<LoadedPr
           <DigitCheck lo={enclosure.lo} hi={enclosure.hi} />
         </Section>
       )}
+      <Section title="Evidence">
+        <EvidenceList claim={claim} onUpload={onUpload} onRemove={onRemoveEvidence} />
+      </Section>
       {outcome && (
         <>
           <Section title="Error budget">
             <ErrorBudget items={outcome.budget} radius={outcome.radius} />
-            <BudgetTable items={outcome.budget} radius={outcome.radius} />
           </Section>
           <Section title="Estimates used">
             <EstimateUses uses={outcome.estimates} />
@@ -153,9 +155,6 @@ function ClaimMatter({ claim, onAct, onUpload, onRemoveEvidence }: Pick<LoadedPr
           )}
         </>
       )}
-      <Section title="Evidence">
-        <EvidenceList claim={claim} onUpload={onUpload} onRemove={onRemoveEvidence} />
-      </Section>
     </>
   )
 }

@@ -28,7 +28,7 @@ export function RegisterFiltersForm({ filters, onFilter, clearTo }: RegisterFilt
   const more = (['power', 'logPower', 'exclude', 'minDigits'] as const).some((name) => filters[name] !== undefined)
   return (
     <form ref={form} key={JSON.stringify(filters)} role="search" aria-label="Filter the register" onSubmit={submit} className="mb-5 grid gap-3 print:hidden">
-      <div className="grid gap-x-5 gap-y-3 sm:grid-cols-2 wide:grid-cols-[minmax(0,2fr)_minmax(0,2fr)_5rem_minmax(0,1.1fr)_auto]">
+      <div className="grid grid-cols-2 gap-x-5 gap-y-3 *:first:col-span-2 *:nth-2:col-span-2 sm:*:first:col-span-1 sm:*:nth-2:col-span-1 wide:grid-cols-[minmax(0,2fr)_minmax(0,2fr)_5rem_minmax(0,1.1fr)_auto]">
         <Field label="Words, a definition, or leading digits">
           {(control) => <TextInput {...control} {...at('text')} type="search" placeholder="odd, k = 3 · 1/(p log p) · 1.6366" />}
         </Field>

@@ -1,5 +1,5 @@
 import type { UseFormReturn } from 'react-hook-form'
-import { Field, Select, TextArea, TextInput } from '../../../components/ui/field.tsx'
+import { Field, FieldSet, Select, TextArea, TextInput } from '../../../components/ui/field.tsx'
 import { SET_WORDS } from '../../constants/set-words.ts'
 import { SETS_WITH_K } from '../run-form.ts'
 import type { FieldMessages, RunFormValues } from '../run-form.ts'
@@ -112,13 +112,15 @@ function SetParameters({ form, errors }: DefinitionFieldsProps) {
 
 function WeightFields({ form, errors }: DefinitionFieldsProps) {
   return (
-    <div className="grid max-w-md grid-cols-2 gap-5">
-      <Field label={<>Power of <i>n</i></>} hint="The weight is 1 / (n^s (log n)^b): s" error={errors.power}>
-        {(control) => <TextInput {...control} {...form.register('power')} autoComplete="off" />}
-      </Field>
-      <Field label={<>Power of log <i>n</i></>} hint="and b. Fractions such as 1/2 are allowed." error={errors.logPower}>
-        {(control) => <TextInput {...control} {...form.register('logPower')} autoComplete="off" />}
-      </Field>
-    </div>
+    <FieldSet legend={<>Weight 1 / (<i>n</i><sup className="text-[0.7em] leading-none"><i>s</i></sup> (log <i>n</i>)<sup className="text-[0.7em] leading-none"><i>b</i></sup>)</>}>
+      <div className="grid max-w-md grid-cols-2 gap-5">
+        <Field label={<i>s</i>} hint="1, 2, 3/2" error={errors.power}>
+          {(control) => <TextInput {...control} {...form.register('power')} autoComplete="off" />}
+        </Field>
+        <Field label={<i>b</i>} hint="1, 0, −1, 1/2" error={errors.logPower}>
+          {(control) => <TextInput {...control} {...form.register('logPower')} autoComplete="off" />}
+        </Field>
+      </div>
+    </FieldSet>
   )
 }

@@ -14,8 +14,6 @@ interface ForecastTableProps {
   busy: boolean
 }
 
-const ARITHMETIC_WORDS: Record<Choice['arithmetic'], string> = { ball: 'ball: midpoint and radius', mpfr: 'mpfr: end points by MPFR' }
-
 /** What each method and arithmetic would reach and how long it would take; one row is chosen. What can't be done says why. */
 export function ForecastTable({ forecasts, chosen, onChoose, busy }: ForecastTableProps) {
   const key = (forecast: Choice) => `${forecast.method} ${forecast.arithmetic}`
@@ -28,7 +26,7 @@ export function ForecastTable({ forecasts, chosen, onChoose, busy }: ForecastTab
       columns={[
         {
           key: 'method',
-          header: 'Method and arithmetic',
+          header: 'Method',
           plain: true,
           cell: (row) => (
             <label className={row.possible ? 'flex items-baseline gap-2.5' : 'flex items-baseline gap-2.5 text-soft'}>
@@ -41,13 +39,15 @@ export function ForecastTable({ forecasts, chosen, onChoose, busy }: ForecastTab
                 onChange={() => onChoose({ method: row.method, arithmetic: row.arithmetic })}
               />
               <span>
-                {METHOD_WORDS[row.method]}; {ARITHMETIC_WORDS[row.arithmetic]}
+                {METHOD_WORDS[row.method]}
+                <span className="sr-only">, {row.arithmetic} arithmetic</span>
               </span>
             </label>
           ),
         },
+        { key: 'arithmetic', header: 'Arithmetic', cell: (row) => <span className={row.possible ? undefined : 'text-soft'}>{row.arithmetic}</span> },
         { key: 'radius', header: 'Radius', align: 'right', cell: (row) => row.radius && <Magnitude text={row.radius} /> },
-        { key: 'seconds', header: 'CPU time', align: 'right', cell: (row) => row.seconds !== null && `about ${secondsInWords(row.seconds)}` },
+        { key: 'seconds', header: 'Time', align: 'right', cell: (row) => row.seconds !== null && <span className="whitespace-nowrap">about {secondsInWords(row.seconds)}</span> },
         { key: 'remark', header: '', plain: true, cell: (row) => (row.possible ? row.recommended && 'the quickest' : <span className="text-refused">{row.reason}</span>) },
       ]}
     />

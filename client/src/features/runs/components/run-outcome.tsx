@@ -1,6 +1,6 @@
 import type { OutcomeView, Run } from '../../../../../shared/schemas/run.ts'
 import { Convergence } from '../../../components/charts/convergence.tsx'
-import { BudgetTable, ErrorBudget, Magnitude } from '../../../components/charts/error-budget.tsx'
+import { ErrorBudget, Magnitude } from '../../../components/charts/error-budget.tsx'
 import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
 import { Section } from '../../../components/ui/page.tsx'
 import { Table } from '../../../components/ui/table.tsx'
@@ -24,7 +24,6 @@ export function RunOutcome({ run, outcome, onDraft }: RunOutcomeProps) {
       )}
       <Section title="Error budget" className="mt-10">
         <ErrorBudget items={outcome.budget} radius={outcome.radius} />
-        <BudgetTable items={outcome.budget} radius={outcome.radius} />
       </Section>
       <Section title="Estimates used">
         <EstimateUses uses={outcome.estimates} />
