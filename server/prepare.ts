@@ -19,13 +19,26 @@ interface Prepared {
   separateRoles: boolean
 }
 
-const { applied, separateRoles } = await bringUpToDate()
-const seeded = process.env.DEMO !== 'off' && (await seedIfEmpty())
-const emails = demoAccounts().map(({ email }) => email)
-const present = await select<{ email: string }>(`SELECT email FROM members WHERE state = 'active' AND email = ANY($emails)`, { emails })
-const accounts = demoAccounts().filter(({ email }) => present.some((row) => row.email === email))
-await sequelize.close()
+/** Failures that their message explains: no server there (or not that one), a wrong password, no such database, a right that is missing. */
+const EXPLAINED = new Set(['ECONNREFUSED', 'ENOTFOUND', 'ETIMEDOUT', 'EHOSTUNREACH', '28P01', '28000', '3D000', '42501'])
 
-const prepared: Prepared = { applied, seeded, accounts, password: DEMO_PASSWORD, separateRoles }
-process.send?.(prepared)
-process.disconnect?.()
+async function prepare(): Promise<Prepared> {
+  const { applied, separateRoles } = await bringUpToDate()
+  const seeded = process.env.DEMO !== 'off' && (await seedIfEmpty())
+  const emails = demoAccounts().map(({ email }) => email)
+  const present = await select<{ email: string }>(`SELECT email FROM members WHERE state = 'active' AND email = ANY($emails)`, { emails })
+  const accounts = demoAccounts().filter(({ email }) => present.some((row) => row.email === email))
+  return { applied, seeded, accounts, password: DEMO_PASSWORD, separateRoles }
+}
+
+try {
+  process.send?.(await prepare())
+} catch (error) {
+  const { code, message } = ((error as { parent?: unknown }).parent ?? error) as { code?: string; message: string }
+  if (!EXPLAINED.has(code ?? '')) throw error
+  process.stderr.write(`${message}\n`)
+  process.exitCode = 1
+} finally {
+  await sequelize.close()
+  process.disconnect?.()
+}

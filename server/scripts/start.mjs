@@ -91,39 +91,42 @@ function prepare(env) {
  * @param {Record<string, string>} env
  */
 async function run(name, args, env) {
+  if (ending) return ''
   const supervised = new Supervised({ name, args, env })
   stops.push(() => supervised.stop())
   return supervised.start()
 }
 
-/** @param {Record<string, string>} env */
-async function startCatcher(env) {
+/** @param {number} port the web process's; the catcher's reader takes the next if it is free */
+async function startCatcher(port) {
   const smtpPort = await freePort()
-  const port = Number(env.PORT) + 1
-  const reader = (await isFree(port)) ? port : await freePort()
+  const reader = (await isFree(port + 1)) ? port + 1 : await freePort()
   const address = await run('mail', [join(build, 'mail', 'catcher', 'main.js'), join(root, '.data', 'mail'), String(smtpPort), String(reader)], {})
   return { SMTP_URL: `smtp://127.0.0.1:${smtpPort}`, MAIL_READER_URL: address }
+}
+
+/** Opens the database and brings it up to date. */
+async function openPreparedDatabase() {
+  const { application, owner } = await openDatabase()
+  const demo = process.env.DEMO ?? (process.env.PUBLIC_URL ? 'off' : 'on')
+  const prepared = await prepare({ DATABASE_URL: application, DATABASE_OWNER_URL: owner, DEMO: demo })
+  if (prepared.applied.length > 0) say(`Database brought up to date (${prepared.applied.length} migrations).`)
+  if (!prepared.separateRoles) say('DATABASE_URL and DATABASE_OWNER_URL name one role: only the trigger guards the audit trail. Give the product a role of its own to have both.')
+  return { application, prepared }
 }
 
 async function main() {
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, onSignal)
   const holder = tryLock(lock)
   if (holder !== undefined) throw new SetupError(`Merestone is running from this folder already (process ${holder.split(' ')[0]}). Stop that first.`)
-  stops.push(async () => undefined)
   await setUp()
   const port = await choosePort()
-  const { application, owner } = await openDatabase()
-  if (ending) return
-  const prepared = await prepare({ DATABASE_URL: application, DATABASE_OWNER_URL: owner, DEMO: process.env.DEMO ?? (process.env.PUBLIC_URL ? 'off' : 'on') })
-  if (prepared.applied.length > 0) say(`Database brought up to date (${prepared.applied.length} migrations).`)
-  if (!prepared.separateRoles) say('DATABASE_URL and DATABASE_OWNER_URL name one role: only the trigger guards the audit trail. Give the product a role of its own to have both.')
-
-  /** @type {Record<string, string>} */
-  const env = { DATABASE_URL: application, DATABASE_OWNER_URL: '', PORT: String(port) }
-  if (!process.env.SMTP_URL) Object.assign(env, await startCatcher(env))
-  const [address] = await Promise.all([run('web', [join(build, 'index.js'), 'web'], env), run('worker', [join(build, 'index.js'), 'worker'], env)])
+  const [{ application, prepared }, mail] = await Promise.all([openPreparedDatabase(), process.env.SMTP_URL ? undefined : startCatcher(port)])
+  // The owner's rights stay here.
+  const env = { ...mail, DATABASE_URL: application, DATABASE_OWNER_URL: '', PORT: String(port) }
+  const [address] = await Promise.all(['web', 'worker'].map((name) => run(name, [join(build, 'index.js'), name], env)))
   writeFileSync(join(root, '.data', 'address'), process.env.PUBLIC_URL || address)
-  announce(process.env.PUBLIC_URL || address, env.MAIL_READER_URL, prepared)
+  announce(process.env.PUBLIC_URL || address, mail?.MAIL_READER_URL, prepared)
 }
 
 /**
