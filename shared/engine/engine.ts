@@ -2,6 +2,7 @@ import { EngineRefusal } from './errors.ts'
 import type { ArithmeticName, Computation, ComputationRequest, Goal, Method, Outcome, ShardResult } from './methods/computation.ts'
 import { derivatives } from './methods/derivatives.ts'
 import { expansion } from './methods/expansion.ts'
+import { finite } from './methods/finite.ts'
 import type { MethodModule } from './methods/method.ts'
 import type { Definition } from './sets/definition.ts'
 import { partialSum } from './methods/partial-sum.ts'
@@ -12,6 +13,7 @@ export const METHODS: Partial<Record<Method, MethodModule>> = {
   transform: trapezoid,
   expansion,
   'partial-sum': partialSum,
+  finite,
   derivatives,
 }
 

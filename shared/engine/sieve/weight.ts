@@ -20,7 +20,7 @@ export function negativePower<N>(arithmetic: Arithmetic<N>, base: N, exponent: R
 }
 
 /** The weight at an integer n >= 2 whose logarithm is known. *Claim*: inclusion. */
-export function weightAt<N>(arithmetic: Arithmetic<N>, weight: RationalWeight, n: number, logN: N): N {
+export function weightAt<N>(arithmetic: Arithmetic<N>, weight: RationalWeight, n: number | bigint, logN: N): N {
   const { power, logPower } = weight
   const inLog = negativePower(arithmetic, logN, logPower)
   if (isInteger(power)) return arithmetic.scale(inLog, { num: 1n, den: BigInt(n) ** power.num })
