@@ -1,6 +1,7 @@
 import tailwindcss from '@tailwindcss/vite'
 import react from '@vitejs/plugin-react'
 import { defineConfig } from 'vitest/config'
+import { readEngineRelease } from './server/engine-release.ts'
 
 const root = import.meta.dirname
 /** What the tests with a database share: one cluster for the run, one database a file. */
@@ -9,6 +10,8 @@ const database = { globalSetup: ['tests/support/database.ts'], setupFiles: ['tes
 export default defineConfig({
   root: 'client',
   plugins: [react(), tailwindcss()],
+  // The engine in the page is the one in the sources that the page is built from.
+  define: { __ENGINE_RELEASE__: JSON.stringify(readEngineRelease()) },
   build: { outDir: '../dist/client', emptyOutDir: true, target: 'es2022' },
   worker: { format: 'es' },
   test: {

@@ -11,5 +11,7 @@ export function navigationWords(session: Session | undefined): NavigationWord[] 
     { label: 'Register', to: paths.register() },
     ...(may('group-work.read') ? [{ label: 'Runs', to: paths.runs(), count: session?.counts.runs }] : []),
     ...(member ? [{ label: 'Desk', to: paths.desk(), count: session?.counts.desk }] : []),
+    { label: 'Estimates', to: paths.estimates() },
+    ...(member ? [{ label: 'Group', to: paths.group() }] : []),
   ]
 }

@@ -1,6 +1,6 @@
 import type { QueryClient } from '@tanstack/react-query'
 import { createBrowserRouter } from 'react-router-dom'
-import type { LoaderFunctionArgs, RouteObject } from 'react-router-dom'
+import type { RouteObject } from 'react-router-dom'
 import { claimQuery } from '../features/claims/queries.ts'
 import { constantListQuery, constantQuery } from '../features/constants/queries.ts'
 import { registerQueryOf } from '../features/constants/register-filters.ts'
@@ -8,7 +8,10 @@ import { deskQuery } from '../features/desk/queries.ts'
 import { runListQuery, runQuery } from '../features/runs/queries.ts'
 import { runListQueryOf } from '../features/runs/run-filters.ts'
 import { sessionQuery } from '../features/session/queries.ts'
+import { peopleRoutes } from './people-routes.ts'
+import type { Prefetch } from './prefetch.ts'
 import { RouteError } from './route-error.tsx'
+import { readingRoutes } from './reading-routes.ts'
 import { Shell } from './shell.tsx'
 import type { RouteHandle } from './shell.tsx'
 
@@ -19,7 +22,7 @@ const MEMBERS: RouteHandle = { membersOnly: true }
  * each view shows by itself what it is still missing.
  */
 export function createRouter(client: QueryClient) {
-  const prefetch = (start: (args: { params: LoaderFunctionArgs['params']; search: URLSearchParams }) => Promise<unknown>) => ({ params, request }: LoaderFunctionArgs) => {
+  const prefetch: Prefetch = (start) => ({ params, request }) => {
     void start({ params, search: new URL(request.url).searchParams })
     return null
   }
@@ -49,6 +52,7 @@ export function createRouter(client: QueryClient) {
       loader: prefetch(({ params }) => client.prefetchQuery(runQuery(params.id ?? ''))),
       lazy: async () => ({ Component: (await import('../pages/run/run-page.tsx')).RunPage }),
     },
+    { path: 'claims/new', handle: MEMBERS, lazy: async () => ({ Component: (await import('../pages/new-claim/new-claim-page.tsx')).NewClaimPage }) },
     {
       path: 'claims/:id',
       loader: prefetch(({ params }) => client.prefetchQuery(claimQuery(params.id ?? ''))),
@@ -61,6 +65,8 @@ export function createRouter(client: QueryClient) {
       lazy: async () => ({ Component: (await import('../pages/desk/desk-page.tsx')).DeskPage }),
     },
     { path: 'sign-in', lazy: async () => ({ Component: (await import('../pages/sign-in/sign-in-page.tsx')).SignInPage }) },
+    ...peopleRoutes(client, prefetch),
+    ...readingRoutes(client, prefetch),
     { path: '*', lazy: async () => ({ Component: (await import('../pages/not-found/not-found-page.tsx')).NotFoundPage }) },
   ]
 

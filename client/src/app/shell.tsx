@@ -2,6 +2,7 @@ import { useQuery } from '@tanstack/react-query'
 import { useEffect, useRef } from 'react'
 import { Navigate, Outlet, ScrollRestoration, useLocation, useMatches, useNavigate, useNavigation } from 'react-router-dom'
 import { sessionQuery, useSignOut } from '../features/session/queries.ts'
+import { Colophon } from './colophon.tsx'
 import { Masthead } from './masthead.tsx'
 import { navigationWords } from './navigation.ts'
 import { paths } from './paths.ts'
@@ -37,6 +38,7 @@ export function Shell() {
       <div className={turning ? 'opacity-60 transition-opacity delay-300' : undefined} aria-busy={turning || undefined}>
         {membersOnly && session?.member === null ? <Navigate to={paths.signIn(location.pathname + location.search)} replace /> : <Outlet />}
       </div>
+      <Colophon />
       <ScrollRestoration getKey={({ pathname, search }) => pathname + search} />
     </>
   )

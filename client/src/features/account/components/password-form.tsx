@@ -1,4 +1,4 @@
-import { useState } from 'react'
+import { useEffect, useState } from 'react'
 import { passwordChange } from '../../../../../shared/schemas/session.ts'
 import { Button } from '../../../components/ui/button.tsx'
 import { Field, TextInput } from '../../../components/ui/field.tsx'
@@ -13,8 +13,12 @@ export function PasswordForm({ email, onSave }: { email: string; onSave: (change
     setSaved(false)
     await onSave(values)
     setSaved(true)
-    form.reset()
   })
+  // The library's own way: only once it has counted the submission as done does emptying the fields last.
+  const { isSubmitSuccessful } = form.formState
+  useEffect(() => {
+    if (isSubmitSuccessful) form.reset()
+  }, [form, isSubmitSuccessful])
   return (
     <form onSubmit={(event) => void submit(event)} noValidate className="grid max-w-xl gap-4">
       {rootError && <Notice tone="refused" title="Not changed." live>{rootError}</Notice>}

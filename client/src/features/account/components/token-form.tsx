@@ -1,3 +1,4 @@
+import { useEffect } from 'react'
 import { accessTokenInput, tokenScope } from '../../../../../shared/schemas/session.ts'
 import type { AccessTokenInput } from '../../../../../shared/schemas/session.ts'
 import { Button } from '../../../components/ui/button.tsx'
@@ -10,8 +11,12 @@ import { LIFETIMES, SCOPES } from '../token-words.ts'
 export function TokenForm({ onCreate }: { onCreate: (input: AccessTokenInput) => Promise<unknown> }) {
   const { form, submit, errorAt, rootError, sending } = useApiForm(accessTokenInput, { name: '', scopes: ['read'], days: 90 }, async (values) => {
     await onCreate(values)
-    form.reset()
   })
+  // The library's own way: only once it has counted the submission as done does emptying the fields last.
+  const { isSubmitSuccessful } = form.formState
+  useEffect(() => {
+    if (isSubmitSuccessful) form.reset()
+  }, [form, isSubmitSuccessful])
   return (
     <form onSubmit={(event) => void submit(event)} noValidate className="grid max-w-xl gap-4">
       <h3 className="text-[1.1rem]">A new token</h3>

@@ -1,0 +1,26 @@
+import type { Estimate } from '../../../../../shared/schemas/estimate.ts'
+import { paths } from '../../../app/paths.ts'
+import { Formula } from '../../../components/formula/formula.tsx'
+import { TextLink } from '../../../components/ui/link.tsx'
+import { Table } from '../../../components/ui/table.tsx'
+import { printedRange } from '../estimate-filters.ts'
+import { EstimateState } from './estimate-state.tsx'
+
+/** Estimates with statement, range and what they are conditional on. */
+export function EstimateTable({ estimates }: { estimates: Estimate[] }) {
+  return (
+    <Table
+      caption="Estimates"
+      rows={estimates}
+      rowKey={({ id }) => id}
+      columns={[
+        { key: 'title', header: 'Estimate', plain: true, className: 'sm:w-[28%]', cell: ({ id, title }) => <TextLink to={paths.estimate(id)}>{printedRange(title)}</TextLink> },
+        { key: 'statement', header: 'Statement', plain: true, cell: ({ statementLatex, statement }) => <span className="block overflow-x-auto overflow-y-hidden"><Formula latex={statementLatex} text={statement} /></span> },
+        { key: 'range', header: 'Holds for', cell: ({ validFor }) => printedRange(validFor) },
+        { key: 'condition', header: 'Conditional', cell: ({ conditional, condition }) => (conditional ? <span className="text-undecided">on {condition ?? 'an unproved hypothesis'}</span> : 'no') },
+        { key: 'state', header: 'State', cell: (estimate) => <EstimateState estimate={estimate} /> },
+        { key: 'used', header: 'Used by', cell: ({ usedBy }) => (usedBy.length === 0 ? <span className="text-soft">none</span> : `${usedBy.length} signed`) },
+      ]}
+    />
+  )
+}
