@@ -80,6 +80,18 @@ describe('sums with log n above', () => {
     holds(found, '3.7273599746820004653')
   })
 
+  it('stays true, only wider, with few points and few terms', async () => {
+    // zeta''(2) by PARI/GP 2.15, as above.
+    const definition = { type: 'series' as const, set: integers, weight: { power: '2', logPower: '-2' } }
+    const request = { definitions: [definition], method: 'derivatives' as const, arithmetic: 'ball' as const, goal: { digits: 30 } }
+    const usual = await derivatives.prepare(request)
+    for (const change of [{ half: 1 }, { half: 2 }, { half: 4 }, { terms: 4 }, { precision: 64 }]) {
+      const [outcome] = await computeAll(await derivatives.prepare({ ...request, parameters: { ...usual.parameters, ...change } }))
+      holds([parseDecimal(outcome.enclosure.lo)!, parseDecimal(outcome.enclosure.hi)!, 0], '1.9892802342989010234208586874215163814944')
+      expect(outcome.digits.truncated).toBeLessThan(25)
+    }
+  })
+
   it('refuses a power of log n that is not whole, and a sum that diverges', async () => {
     await expect(enclose(integers, '2', '-1/2', 10)).rejects.toThrow(/whole number/)
     await expect(enclose(integers, '1', '-1', 10)).rejects.toThrow(/diverges/)

@@ -113,6 +113,26 @@ describe('sums and products over the primes', () => {
     await expect(expansion.prepare({ ...steep, parameters: { ...first.parameters, split: 10 } })).rejects.toThrow(/beyond the radius/)
   })
 
+  it('stays true, only wider, with parameters that nobody would choose', async () => {
+    // Twin prime constant (J. W. Wrench, Math. Comp. 15 (1961) 396-398); Mertens constant (Rosser and Schoenfeld 1962, (2.10)).
+    const cases: [Definition, string][] = [
+      [overPrimes('1 - 1/(p-1)^2', 'product', [2]), '0.6601618158468695739278121'],
+      [{ type: 'named', name: 'mertens' }, '0.26149721284764'],
+    ]
+    for (const [definition, truth] of cases) {
+      for (const change of [{ powers: 2 }, { powers: 5, split: 7 }, { terms: 8 }, { terms: 10, powers: 4 }, { precision: 120 }]) {
+        const request = { definitions: [definition], method: 'expansion' as const, arithmetic: 'ball' as const, goal: { digits: 30 } }
+        const usual = await expansion.prepare(request)
+        const [outcome] = await computeAll(await expansion.prepare({ ...request, parameters: { ...usual.parameters, ...change } }))
+        const [lo, hi] = ends(outcome)
+        const value = parseDecimal(truth)!
+        expect(compare(lo, add(value, rational(1n, 10n ** BigInt(truth.length - 2)))), JSON.stringify(change)).toBeLessThan(0)
+        expect(compare(hi, value), JSON.stringify(change)).toBeGreaterThan(0)
+        expect(outcome.digits.truncated).toBeLessThan(25)
+      }
+    }
+  })
+
   it('refuses at once a pole or a zero factor at a prime', async () => {
     await expect(enclose(overPrimes('1/(p-3)^2', 'sum'), 20)).rejects.toThrow(/pole at p = 3/)
     await expect(enclose(overPrimes('1 - 1/(p-1)^2', 'product'), 20)).rejects.toThrow(/factor at p = 2 is 0/)
