@@ -3,6 +3,7 @@ import type { ReactNode } from 'react'
 import * as fixtures from '../../tests/client/fixtures.ts'
 import { signInInput } from '../../shared/schemas/session.ts'
 import type { Claim } from '../../shared/schemas/claim.ts'
+import { BLANK_CLAIM, claimForm } from '../src/features/claims/claim-form.ts'
 import { BLANK_RUN } from '../src/features/runs/run-form.ts'
 import { useApiForm } from '../src/lib/use-api-form.ts'
 import { ClaimView } from '../src/pages/claim/claim-view.tsx'
@@ -13,6 +14,7 @@ import type { NewRunViewProps } from '../src/pages/new-run/new-run-view.tsx'
 import { RegisterView } from '../src/pages/register/register-view.tsx'
 import { RunView } from '../src/pages/run/run-view.tsx'
 import { RunsView } from '../src/pages/runs/runs-view.tsx'
+import { NewClaimView } from '../src/pages/new-claim/new-claim-view.tsx'
 import { SignInView } from '../src/pages/sign-in/sign-in-view.tsx'
 
 const nothing = () => undefined
@@ -38,6 +40,10 @@ function ClaimExample({ claim, done = '' }: { claim: Claim; done?: string }) {
   return <ClaimView claim={claim} done={done} mayReadRuns onAct={later} onEdit={later} onDelete={later} onUpload={later} onRemoveEvidence={later} onKeepDraft={later} />
 }
 
+function NewClaimExample() {
+  return <NewClaimView form={useApiForm(claimForm, BLANK_CLAIM, later)} />
+}
+
 export const MAIN_PATH: Record<string, ReactNode> = {
   'sign-in': <SignInExample />,
   register: <RegisterView list={{ items: fixtures.constantSummaries, next: null, total: 4 }} error={null} refetching={false} onRetry={nothing} filters={{}} filtered={false} onFilter={nothing} sorting={{ key: 'number', order: 'asc', to: () => '/register' }} pages={noPages} mayStart />,
@@ -53,5 +59,6 @@ export const MAIN_PATH: Record<string, ReactNode> = {
   'claim-returned': <ClaimExample claim={fixtures.claimReturned} />,
   'claim-lead': <ClaimExample claim={fixtures.claimForLead} />,
   'claim-signed': <ClaimExample claim={fixtures.claimSigned} />,
+  'new-claim': <NewClaimExample />,
   desk: <DeskView desk={fixtures.desk} error={null} onRetry={nothing} roles={['lead', 'referee', 'researcher']} />,
 }

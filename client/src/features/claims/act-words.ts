@@ -22,7 +22,7 @@ export const DONE_WORDS: Record<Act, string> = {
 
 /** Acts that a lead does with a reason: what the dialog says will happen, and its button. */
 export const REASONED_ACTS = {
-  return: { ability: 'return', button: 'Return', tells: 'The claim goes back to its author, who can change and resubmit it. Confirmations given so far no longer count.' },
+  return: { ability: 'return', button: 'Return', tells: 'The claim goes back to its author, who can change and resubmit it. Once what it asserts has changed, confirmations given before no longer count.' },
   suspend: { ability: 'suspend', button: 'Suspend', tells: 'It stays in the register, marked as suspended, and no longer counts towards the best enclosure. The author and everyone whose claims rest on it are told.' },
   reinstate: { ability: 'reinstate', button: 'Reinstate', tells: 'It counts as signed again.' },
   withdraw: { ability: 'withdraw', button: 'Withdraw', tells: 'It can never be signed or reinstated afterwards. It stays readable under its number, marked as withdrawn.' },

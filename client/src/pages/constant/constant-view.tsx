@@ -60,7 +60,13 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
         </Notice>
       ))}
       <div className="mt-5 flex flex-wrap gap-3 print:hidden">
-        {mayStart && <ButtonLink to={paths.newRun({ constant: constant.number })}>New run of this constant</ButtonLink>}
+        {mayStart && (
+          <>
+            <ButtonLink to={paths.newRun({ constant: constant.number })}>New run of this constant</ButtonLink>
+            <ButtonLink to={paths.newClaim({ constant: constant.number })}>Claim a value from elsewhere</ButtonLink>
+            <ButtonLink to={paths.newClaim({ constant: constant.number, kind: 'order' })}>Claim an order</ButtonLink>
+          </>
+        )}
       </div>
       <Section title="Claims" className="mt-9">
         {constant.claims.length > 0 ? (

@@ -1,6 +1,6 @@
-import { paths } from '../../app/paths.ts'
+import { files, paths } from '../../app/paths.ts'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
-import { ButtonLink } from '../../components/ui/link.tsx'
+import { ButtonLink, FileLink } from '../../components/ui/link.tsx'
 import { Page } from '../../components/ui/page.tsx'
 import { Pagination } from '../../components/ui/pagination.tsx'
 import type { Sorting } from '../../components/ui/table.tsx'
@@ -47,11 +47,23 @@ export function RegisterView({ list, error, refetching, onRetry, filters, filter
         <>
           <ConstantTable rows={list.items} sorting={sorting} onTurn={pages.turn} busy={refetching} />
           <Pagination shown={list.items.length} total={list.total} unit={list.items.length === 1 ? 'constant' : 'constants'} previous={pages.previous} next={pages.next} />
+          <p className="mt-4 text-[0.92rem] text-soft print:hidden">
+            Take these along as{' '}
+            {(['csv', 'json', 'bibtex', 'latex'] as const).map((format, index) => (
+              <span key={format}>
+                {index > 0 && ', '}
+                <FileLink href={files.constantExport({ ...(filters as Record<string, string>), format })}>{EXPORT_WORDS[format]}</FileLink>
+              </span>
+            ))}
+            . Digits are rounded outward.
+          </p>
         </>
       )}
     </Page>
   )
 }
+
+const EXPORT_WORDS = { csv: 'CSV', json: 'JSON', bibtex: 'BibTeX', latex: 'a LaTeX table' }
 
 function EmptyRegister({ filtered, mayStart }: { filtered: boolean; mayStart: boolean }) {
   if (filtered)

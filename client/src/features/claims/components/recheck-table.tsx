@@ -17,7 +17,7 @@ export function RecheckTable({ claim }: { claim: Claim }) {
       rows={rows}
       rowKey={(row) => row.key}
       columns={[
-        { key: 'who', header: 'Enclosure of', plain: true, cell: ({ recheck }) => (recheck ? <TextLink to={paths.run(recheck.runId)}>recheck by {recheck.startedBy.name}</TextLink> : <strong className="font-semibold">{claimName(claim)}</strong>) },
+        { key: 'who', header: 'Enclosure of', plain: true, cell: ({ recheck }) => (recheck ? <TextLink to={paths.run(recheck.runId)}>recheck by {recheck.startedBy?.name ?? 'a referee'}</TextLink> : <strong className="font-semibold">{claimName(claim)}</strong>) },
         { key: 'how', header: 'Method', cell: ({ recheck }) => howWords(recheck ?? claim.run) },
         { key: 'value', header: 'Digits', plain: true, cell: ({ recheck }) => <Value enclosure={recheck ? recheck.enclosure : claim.enclosure} recheck={recheck} /> },
         { key: 'verdict', header: 'Verdict', cell: ({ recheck }) => recheck && <Verdict recheck={recheck} /> },
