@@ -48,10 +48,10 @@ export const up: Migration['up'] = async (query) => {
       CHECK ((signed_at IS NULL) = (signed_by IS NULL)),
       CHECK (state <> 'superseded' OR superseded_by IS NOT NULL)
     );
-    CREATE INDEX claims_group ON claims (group_id, since DESC, id);
-    CREATE INDEX claims_group_state ON claims (group_id, state, since DESC, id);
-    CREATE INDEX claims_entered ON claims (since DESC, id) WHERE signed_at IS NOT NULL;
-    CREATE INDEX claims_author ON claims (author_id, since DESC, id);
+    CREATE INDEX claims_since ON claims (since DESC, id DESC);
+    CREATE INDEX claims_state ON claims (state, since DESC, id DESC);
+    CREATE INDEX claims_group_state ON claims (group_id, state);
+    CREATE INDEX claims_author ON claims (author_id, since DESC, id DESC);
     CREATE INDEX claims_other_constant ON claims (other_constant_id) WHERE other_constant_id IS NOT NULL;
     CREATE INDEX claims_run ON claims (run_id) WHERE run_id IS NOT NULL;
     CREATE INDEX claims_superseded_by ON claims (superseded_by) WHERE superseded_by IS NOT NULL;

@@ -1,3 +1,6 @@
+import { remindAll } from './commands/assignment-reminder.ts'
+// A run that is done may complete the review of a claim.
+import './commands/claim-consequences.ts'
 import { calibrateMachine, computeThreads } from './engine/calibration.ts'
 import { EnginePool } from './engine/pool.ts'
 import { sequelize } from './db.ts'
@@ -19,7 +22,7 @@ export async function startWorker(shutdown: AbortSignal, ready: (address: string
   ready('')
   // Forecasts are by the reference machine until this is done; it does not keep the first run waiting.
   void calibrateMachine(pool).catch((error: unknown) => log.error({ err: error }, 'calibration failed'))
-  await Promise.all([workOnRuns(source, pool, shutdown), sendMails(shutdown), periodically('tidying up', HOUR_MS, tidy, shutdown)])
+  await Promise.all([workOnRuns(source, pool, shutdown), sendMails(shutdown), periodically('tidying up', HOUR_MS, tidy, shutdown), periodically('reminding', HOUR_MS, remindAll, shutdown)])
   await source.stop()
   await pool.close()
   await sequelize.close()

@@ -6,7 +6,7 @@ import { conflict, forbidden, notFound } from '../errors.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 import { Claim } from '../models/claim.ts'
 import { Group } from '../models/group.ts'
-import { assertOpen, viewOf } from '../policies/claim.ts'
+import { notOpen, viewOf } from '../policies/claim.ts'
 import { lastEvent } from '../queries/claim-history.ts'
 import { factsOf, standingOf, type ActSubject } from '../queries/claim-review.ts'
 import { consequences } from './claim-consequences.ts'
@@ -70,7 +70,7 @@ export async function assertMayAct(member: SignedInMember, claimId: string, act:
 async function judged(member: SignedInMember, claim: Claim, act: PersonAct, { version, subject }: ActOptions, transaction?: Transaction): Promise<{ to: ClaimState; facts: Facts }> {
   const group = await Group.findByPk(claim.groupId, { transaction: transaction ?? null, rejectOnEmpty: true })
   const standing = await standingOf(member, claim, transaction)
-  assertOpen(viewOf({ signedAt: claim.signedAt, groupPublic: group.public }, standing), true)
+  if (viewOf({ signedAt: claim.signedAt, groupPublic: group.public }, standing) === 'none') throw notOpen(true)
   const facts = await factsOf(claim, member.id, subject, transaction)
   if (subject?.objectionId !== undefined && !facts.objection) throw notFound('objection')
   const judgement = judge(act, claim.state, standing, facts)

@@ -1,7 +1,7 @@
 import { judge, PERSON_ACTS, type Facts, type PersonAct, type Standing } from '../../shared/claim-life.ts'
 import { hasRight } from '../../shared/permissions.ts'
 import type { ClaimState } from '../../shared/schemas/claim.ts'
-import { notFound, unauthenticated } from '../errors.ts'
+import { notFound, unauthenticated, type Problem } from '../errors.ts'
 
 /** What decides who may read a claim. */
 export interface ReadableClaim {
@@ -22,11 +22,8 @@ export function viewOf(claim: ReadableClaim, standing: Standing | undefined): Vi
   return entered && (claim.groupPublic || standing?.sameGroup) ? 'entry' : 'none'
 }
 
-/** Refuses a reader to whom the claim is not open; who has no account is asked to sign in, whether it exists or not. */
-export function assertOpen(view: View, signedIn: boolean): void {
-  if (view !== 'none') return
-  throw signedIn ? notFound('claim') : unauthenticated('Sign in to read this claim, if it is open to you.')
-}
+/** What a reader is told to whom a claim is not open, whether it exists or not: who has no account, to sign in. */
+export const notOpen = (signedIn: boolean): Problem => (signedIn ? notFound('claim') : unauthenticated('Sign in to read this claim, if it is open to you.'))
 
 /** Digits may be checked against what is in the register by all who read it, and against a claim in review by its referees. */
 export function mayCheckDigits(claim: ReadableClaim, standing: Standing | undefined): boolean {

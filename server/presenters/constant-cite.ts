@@ -16,7 +16,7 @@ function valueText(row: ConstantRow): string {
   return text === null || interval.length <= 60 ? `in ${interval}` : best.lo === best.hi ? text : `${text}…`
 }
 
-const bibtexText = (text: string): string => text.replace(/[\\{}]/g, '').replace(/[&%$#_]/g, (mark) => `\\${mark}`).replaceAll('^', '\\^{}').replaceAll('…', '\\ldots{}').replaceAll('>=', '$\\ge$').replaceAll('<=', '$\\le$').replaceAll('!=', '$\\ne$')
+export const bibtexText = (text: string): string => text.replace(/[\\{}]/g, '').replace(/[&%$#_]/g, (mark) => `\\${mark}`).replaceAll('^', '\\^{}').replaceAll('…', '\\ldots{}').replaceAll('>=', '$\\ge$').replaceAll('<=', '$\\le$').replaceAll('!=', '$\\ne$')
 
 /** How to cite a constant as it stands. The year is that of its last change, so that the entry does not move by itself. */
 export function citeConstant(row: ConstantRow): { plain: string; bibtex: string } {

@@ -2,8 +2,10 @@ import type { Definition } from '../../shared/engine/sets/definition.ts'
 import type { Constant } from '../../shared/schemas/constant.ts'
 import { convergenceText } from '../engine/definition.ts'
 import { firstMembers } from '../engine/first-members.ts'
+import { presentClaimSummary } from '../presenters/claim.ts'
 import { presentConstant } from '../presenters/constant.ts'
 import type { Reader } from './audience.ts'
+import { claimsOfConstant } from './claim.ts'
 import { findConstant } from './constant.ts'
 import { conflictsOf, estimatesUnder, ordersOf, runsOfConstant, signedEnclosures, statementOf } from './constant-detail.ts'
 
@@ -11,8 +13,9 @@ import { conflictsOf, estimatesUnder, ordersOf, runsOfConstant, signedEnclosures
 export async function constantDetail(reader: Reader, number: number): Promise<Constant | undefined> {
   const row = await findConstant(reader, number)
   if (!row) return undefined
-  const [statement, signed, conflicts, orders, estimates, runs] = await Promise.all([
+  const [statement, claims, signed, conflicts, orders, estimates, runs] = await Promise.all([
     statementOf(reader, row.id),
+    claimsOfConstant(reader, row.id),
     signedEnclosures(reader, row.id),
     conflictsOf(reader, row.id),
     ordersOf(reader, row.id),
@@ -24,7 +27,7 @@ export async function constantDetail(reader: Reader, number: number): Promise<Co
     statement,
     convergence: convergenceText(definition),
     firstMembers: firstMembers(definition, 12),
-    claims: [],
+    claims: claims.map(presentClaimSummary),
     signed,
     conflicts,
     orders,

@@ -3,8 +3,13 @@ import { authenticate } from '../middleware/authenticate.ts'
 import { accessToken } from './access-token.ts'
 import { account } from './account.ts'
 import { audit } from './audit.ts'
+import { claimAct } from './claim-act.ts'
+import { claim } from './claim.ts'
 import { constant } from './constant.ts'
+import { desk } from './desk.ts'
+import { digitCheck } from './digit-check.ts'
 import { estimate } from './estimate.ts'
+import { evidence } from './evidence.ts'
 import { group } from './group.ts'
 import { invitation } from './invitation.ts'
 import { key } from './key.ts'
@@ -33,5 +38,10 @@ export function api(): Router {
   router.use('/estimates', estimate)
   router.use('/constants', constant)
   router.use('/look-ups', lookUp)
+  router.use('/claims', claim)
+  router.use('/claims', claimAct)
+  router.use(evidence)
+  router.use('/digit-checks', digitCheck)
+  router.use('/desk', desk)
   return router
 }

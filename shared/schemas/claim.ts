@@ -3,6 +3,9 @@ import { constantNumber, decimalText, digest, enclosure, id, instant, longText, 
 import { definitionView } from './definition.ts'
 import { arithmetic, method, outcome } from './run.ts'
 
+/** A claim in an address: its id, or its number as MST-0042-1. */
+export const claimReference = z.union([id, z.string().regex(/^MST-\d{4,9}-\d{1,6}$/, 'write the number of a claim such as MST-0042-1')])
+
 export const claimState = z.enum(['draft', 'submitted', 'in-review', 'returned', 'endorsed', 'signed', 'superseded', 'suspended', 'withdrawn'])
 export type ClaimState = z.infer<typeof claimState>
 
@@ -51,6 +54,9 @@ export const act = {
   withdraw: z.object({ reason: longText }),
 }
 export type Act = keyof typeof act
+
+/** PUT /claims/:id/verdict-draft */
+export const verdictDraft = z.object({ text: z.string().max(20_000) })
 
 export const claimSummary = z.object({
   id,
@@ -110,7 +116,8 @@ export const evidence = z.object({
 })
 export const recheckView = z.object({
   runId: id,
-  startedBy: personRef,
+  /** Null for readers outside the review. */
+  startedBy: personRef.nullable(),
   state: z.string(),
   progress: z.number(),
   method,
@@ -159,24 +166,31 @@ export const claim = claimSummary.extend({
 })
 export type Claim = z.infer<typeof claim>
 
-export const claimQuery = pageQuery.extend({ state: claimState.optional(), mine: z.coerce.boolean().optional(), constant: constantNumber.optional() })
+export const claimQuery = pageQuery.extend({ state: claimState.optional(), mine: z.stringbool().optional(), constant: constantNumber.optional() })
 export const claimPage = pageOf(claimSummary)
 
 /** POST /digit-checks: pasted digits of a manuscript against a claim, a constant or a given enclosure. */
 export const digitCheckInput = z.object({
-  against: z.union([z.object({ claim: id }), z.object({ constant: constantNumber }), z.object({ enclosure })]),
+  against: z.union([z.object({ claim: claimReference }), z.object({ constant: constantNumber }), z.object({ enclosure })]),
   text: z.string().min(1, 'paste the digits').max(100_000),
   reading: z.enum(['truncated', 'rounded']),
 })
+const verdict = z.enum(['confirmed', 'refuted', 'undecided'])
 export const digitCheck = z.object({
   /** The number as read from the text. */
   read: decimalText,
+  sign: verdict,
   /** One entry a digit after the sign: the digit and what is known of it. */
-  digits: z.array(z.object({ digit: z.string(), place: z.number().int(), verdict: z.enum(['confirmed', 'refuted', 'undecided']) })),
-  /** Place after the point of the first refuted digit; 0 and below: before the point; null: none. */
+  digits: z.array(z.object({ digit: z.string(), place: z.number().int(), verdict })),
+  /** The number as a whole. */
+  whole: verdict,
+  /** Place up to which the digits fit no number of the enclosure any more; 0 and below: before the point; null: they fit. */
   firstWrong: z.number().int().nullable(),
+  /** Places after the point that are confirmed one after the other. */
   confirmed: z.number().int(),
-  /** The whole pasted number, as read, is consistent with the enclosure. */
+  /** Whether the interval of an uncertainty in the text contains the enclosure; null where the text states none. */
+  uncertainty: verdict.nullable(),
+  /** What came out, for a person. */
   summary: z.string(),
   enclosure,
 })
@@ -184,7 +198,7 @@ export type DigitCheck = z.infer<typeof digitCheck>
 
 /** GET /desk */
 export const deskItem = z.object({
-  kind: z.enum(['answer', 'resubmit', 'finish-draft', 'accept', 'review', 'settle', 'assign', 'sign', 'conflict', 'remind']),
+  kind: z.enum(['answer', 'resubmit', 'finish-draft', 'accept', 'review', 'settle', 'assign', 'sign', 'conflict', 'remind', 'decide']),
   claim: claimSummary,
   since: instant,
   text: z.string(),
