@@ -41,7 +41,7 @@ interface ErrorBudgetProps {
 export function ErrorBudget({ items, radius }: ErrorBudgetProps) {
   return (
     <>
-      <figure className="mb-5" aria-hidden="true">
+      <figure className="mb-5 print:hidden" aria-hidden="true">
         <Suspense fallback={<div style={{ height: 92 + 34 * items.length }} />}>
           <ErrorBudgetPlot items={items} radius={radius} />
         </Suspense>

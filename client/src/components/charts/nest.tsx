@@ -40,7 +40,7 @@ function NestDrawing({ rows }: { rows: NestRow[] }) {
   const at = (share: number) => 1 + share * (width - 2)
   return (
     <div ref={frame}>
-      <svg width={width} height={height} viewBox={`0 0 ${width} ${height}`} aria-hidden="true" className="max-w-full">
+      <svg width={width} height={height} viewBox={`0 0 ${width} ${height}`} aria-hidden="true" className="h-auto max-w-full">
         {rows.map((row, index) => {
           const ground = index * ROW + 44
           const colour = row.conflict ? REFUSED : CERTAIN

@@ -23,7 +23,7 @@ export function Page({ title, head, margin, children }: PageProps) {
       {margin ? (
         <div className="grid gap-x-12 gap-y-10 wide:grid-cols-[minmax(0,1fr)_19rem] print:block">
           <div className="min-w-0">{children}</div>
-          <aside aria-label="What this rests on" className="min-w-0 text-[0.92rem] leading-snug wide:border-l wide:border-rule wide:pl-7 print:mt-6">
+          <aside aria-label="What this rests on" className="min-w-0 text-[0.92rem] leading-snug wide:border-l wide:border-rule wide:pl-7 print:mt-5 print:columns-2 print:gap-10 print:border-0 print:pl-0">
             {margin}
           </aside>
         </div>

@@ -129,7 +129,11 @@ function ClaimMatter({ claim, onAct, onUpload, onRemoveEvidence }: Pick<LoadedPr
       {claim.rechecks.length > 0 && (
         <Section title="Rechecks">
           <RecheckTable claim={claim} />
-          {enclosure && meeting.length > 0 && <Nest enclosures={[{ label: claimName(claim), ...enclosure }, ...meeting]} />}
+          {enclosure && meeting.length > 0 && (
+            <div className="print:hidden">
+              <Nest enclosures={[{ label: claimName(claim), ...enclosure }, ...meeting]} />
+            </div>
+          )}
         </Section>
       )}
       {enclosure && (

@@ -31,7 +31,7 @@ export function ClaimMargin({ claim, mayReadRuns }: { claim: Claim; mayReadRuns:
       </MarginNote>
       {claim.certificate && (
         <MarginNote title="Certificate">
-          <p>
+          <p className="print:hidden">
             <FileLink href={files.claimCertificate(claim.id)} download={`${claim.number?.replace('/', '-') ?? claim.constant}.json`}>
               Download the certificate
             </FileLink>

@@ -14,6 +14,12 @@ export function ClaimSubject({ claim }: { claim: Claim }) {
         {claim.enclosure && (
           <div className="mt-3">
             <DigitLine lo={claim.enclosure.lo} hi={claim.enclosure.hi} size="large" copy />
+            <dl className="mt-2 hidden grid-cols-[auto_1fr] gap-x-4 text-[0.92rem] print:grid">
+              <dt>Upper end</dt>
+              <dd className="break-all">{claim.enclosure.hi}</dd>
+              <dt>Lower end</dt>
+              <dd className="break-all">{claim.enclosure.lo}</dd>
+            </dl>
           </div>
         )}
         {claim.digits && (
@@ -73,7 +79,7 @@ export function Caution({ claim }: { claim: Claim }) {
   const meeting = claim.rechecks.filter((recheck) => recheck.verdict === 'meets')
   const arithmetics = [...new Set([claim.run?.arithmetic, ...meeting.map((recheck) => recheck.arithmetic)].filter(Boolean))]
   return (
-    <p className="mt-10 max-w-prose border-t border-rule pt-3 text-[0.92rem] text-soft">
+    <p className="mt-10 max-w-prose break-inside-avoid border-t border-rule pt-3 text-[0.92rem] text-soft print:mt-4 print:max-w-none">
       An enclosure is as sound as the estimates it cites and the programs that computed it. This one{' '}
       {estimates.length === 0 ? 'uses no published estimate' : `uses ${estimates.length} published estimate${estimates.length === 1 ? '' : 's'}`}
       {conditional > 0 && `, ${conditional} of them conditional`}
