@@ -1,5 +1,5 @@
 import { existsSync, readFileSync } from 'node:fs'
-import { join } from 'node:path'
+import { join, resolve } from 'node:path'
 import { pathToFileURL } from 'node:url'
 import { projectRoot } from '../project-root.ts'
 
@@ -11,7 +11,7 @@ type LocalClusterModule = typeof import('../scripts/local-cluster.mjs')
  * leaves the cluster as it was found.
  */
 export async function connectToLocalDatabase(): Promise<() => Promise<void>> {
-  const addressFile = join(projectRoot, '.data', 'address')
+  const addressFile = resolve(projectRoot, process.env.DATA_DIR || '.data', 'address')
   if (!process.env.PUBLIC_URL && existsSync(addressFile)) process.env.PUBLIC_URL = readFileSync(addressFile, 'utf8')
   process.env.LOG_LEVEL ??= 'warn'
   if (process.env.DATABASE_URL) return async () => undefined

@@ -6,10 +6,7 @@ import { join } from 'node:path'
 import { initCluster, runningPort, startCluster, stopCluster } from './cluster.mjs'
 import { addresses, createDatabase, newPasswords } from './database.mjs'
 import { serverUser } from './postgres-binaries.mjs'
-import { root, say, SetupError } from './say.mjs'
-
-const dataFolder = join(root, '.data')
-const locationFile = join(dataFolder, 'cluster-location.json')
+import { dataFolder, say, SetupError } from './say.mjs'
 
 /**
  * The private cluster of this installation: made at the first start, kept, and started and stopped with the product.
@@ -20,9 +17,12 @@ const locationFile = join(dataFolder, 'cluster-location.json')
  * @property {() => Promise<void>} stop
  */
 
-/** @returns {Promise<LocalCluster>} */
-export async function startLocalCluster() {
-  const folder = clusterFolder()
+/**
+ * @param {string} [data] folder for what the installation keeps
+ * @returns {Promise<LocalCluster>}
+ */
+export async function startLocalCluster(data = dataFolder) {
+  const folder = clusterFolder(data)
   if (!existsSync(folder)) await makeCluster(folder)
   const settingsFile = join(folder, 'settings.json')
   if (!existsSync(settingsFile)) throw new SetupError(`${folder} is there, but its settings.json with the passwords is not. Put it back, or move the folder away to begin with an empty database.`)
@@ -72,25 +72,27 @@ async function makeCluster(folder) {
 /**
  * The cluster's folder: in .data, or, where PostgreSQL's user may not pass through a folder above it (a home of root, say),
  * elsewhere on the machine, which is recorded in .data.
+ * @param {string} data
  */
-function clusterFolder() {
-  mkdirSync(dataFolder, { recursive: true })
-  const local = join(dataFolder, 'postgres')
+function clusterFolder(data) {
+  const locationFile = join(data, 'cluster-location.json')
+  mkdirSync(data, { recursive: true })
+  const local = join(data, 'postgres')
   if (existsSync(locationFile)) {
-    const { project, folder } = JSON.parse(readFileSync(locationFile, 'utf8'))
+    const { beside, folder } = JSON.parse(readFileSync(locationFile, 'utf8'))
     // A copied checkout must not share the database of the one it was copied from.
-    if (project === root) return folder
+    if (beside === data) return folder
   }
-  if (existsSync(local) || isReachable(dataFolder)) return local
-  const name = createHash('sha256').update(root).digest('hex').slice(0, 12)
+  if (existsSync(local) || isReachable(data)) return local
+  const name = createHash('sha256').update(data).digest('hex').slice(0, 12)
   const elsewhere = ['/var/lib/merestone', join(tmpdir(), 'merestone')].find((parent) => {
     mkdirSync(parent, { recursive: true, mode: 0o711 })
     return isReachable(parent)
   })
-  if (elsewhere === undefined) throw new SetupError(`PostgreSQL's user can reach neither ${dataFolder} nor /var/lib. Move the project to a folder that other users may pass through.`)
+  if (elsewhere === undefined) throw new SetupError(`PostgreSQL's user can reach neither ${data} nor /var/lib. Move the project to a folder that other users may pass through.`)
   const folder = join(elsewhere, name)
-  say(`PostgreSQL's user cannot reach ${dataFolder}; the database is kept in ${folder}.`)
-  writeFileSync(locationFile, JSON.stringify({ project: root, folder }))
+  say(`PostgreSQL's user cannot reach ${data}; the database is kept in ${folder}.`)
+  writeFileSync(locationFile, JSON.stringify({ beside: data, folder }))
   return folder
 }
 

@@ -1,7 +1,11 @@
+import { resolve } from 'node:path'
 import { fileURLToPath } from 'node:url'
 
 /** The project's folder. */
 export const root = fileURLToPath(new URL('../..', import.meta.url)).replace(/\/$/, '')
+
+/** What this installation keeps: database, keys, logs, caught mail. Never under version control. */
+export const dataFolder = resolve(root, process.env.DATA_DIR || '.data')
 
 /**
  * A line for the person at the keyboard. It goes to standard error, so that what a command answers on standard output stays clean.

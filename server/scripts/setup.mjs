@@ -1,14 +1,13 @@
 import { mkdirSync } from 'node:fs'
-import { join } from 'node:path'
 import { pathToFileURL } from 'node:url'
 import { ensureClientBuild, ensureServerBuild } from './build.mjs'
 import { ensurePackages } from './packages.mjs'
 import { ensureBinaries } from './postgres-binaries.mjs'
-import { root, runMain } from './say.mjs'
+import { dataFolder, runMain } from './say.mjs'
 
 /** Everything that the product needs before it starts, in the order in which one part needs another. */
 export async function setUp() {
-  mkdirSync(join(root, '.data'), { recursive: true })
+  mkdirSync(dataFolder, { recursive: true })
   await ensurePackages()
   if (!process.env.DATABASE_URL) await ensureBinaries()
   await ensureServerBuild()

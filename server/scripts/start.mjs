@@ -4,7 +4,7 @@ import { join } from 'node:path'
 import { freePort, isFree } from './cluster.mjs'
 import { startLocalCluster } from './local-cluster.mjs'
 import { tryLock, unlock } from './lock.mjs'
-import { root, runMain, say, SetupError } from './say.mjs'
+import { dataFolder, root, runMain, say, SetupError } from './say.mjs'
 import { setUp } from './setup.mjs'
 import { Supervised } from './supervisor.mjs'
 
@@ -16,7 +16,7 @@ const PORT = 4600
 const PORTS_TRIED = 100
 const DATABASE_WATCH_MS = 2_000
 const build = join(root, 'dist', 'node', 'server')
-const lock = join(root, '.data', 'start.lock')
+const lock = join(dataFolder, 'start.lock')
 
 /** What is to be stopped, the last first. @type {(() => Promise<unknown>)[]} */
 const stops = []
@@ -101,7 +101,7 @@ async function run(name, args, env) {
 async function startCatcher(port) {
   const smtpPort = await freePort()
   const reader = (await isFree(port + 1)) ? port + 1 : await freePort()
-  const address = await run('mail', [join(build, 'mail', 'catcher', 'main.js'), join(root, '.data', 'mail'), String(smtpPort), String(reader)], {})
+  const address = await run('mail', [join(build, 'mail', 'catcher', 'main.js'), join(dataFolder, 'mail'), String(smtpPort), String(reader)], {})
   return { SMTP_URL: `smtp://127.0.0.1:${smtpPort}`, MAIL_READER_URL: address }
 }
 
@@ -125,7 +125,7 @@ async function main() {
   // The owner's rights stay here.
   const env = { ...mail, DATABASE_URL: application, DATABASE_OWNER_URL: '', PORT: String(port) }
   const [address] = await Promise.all(['web', 'worker'].map((name) => run(name, [join(build, 'index.js'), name], env)))
-  writeFileSync(join(root, '.data', 'address'), process.env.PUBLIC_URL || address)
+  writeFileSync(join(dataFolder, 'address'), process.env.PUBLIC_URL || address)
   announce(process.env.PUBLIC_URL || address, mail?.MAIL_READER_URL, prepared)
 }
 

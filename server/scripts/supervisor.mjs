@@ -1,9 +1,9 @@
 import { spawn } from 'node:child_process'
 import { closeSync, existsSync, mkdirSync, openSync, readFileSync, renameSync, statSync } from 'node:fs'
 import { join } from 'node:path'
-import { root, say, SetupError } from './say.mjs'
+import { dataFolder, root, say, SetupError } from './say.mjs'
 
-const LOGS = join(root, '.data', 'logs')
+const LOGS = join(dataFolder, 'logs')
 const LOG_BYTES = 10_000_000
 const READY_MS = 60_000
 const STOP_MS = 15_000

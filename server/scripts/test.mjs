@@ -12,7 +12,7 @@ const needs = {
   reference: [() => ensureDebian([testTools.gp, testTools.primesieve, testTools.primecount])],
   api: [ensureBinaries],
   jobs: [ensureBinaries],
-  server: [ensureBinaries, ensureServerBuild],
+  server: [ensureBinaries, ensureServerBuild, ensureClientBuild],
   e2e: [ensureBinaries, () => ensureDebian([testTools.chromium]), ensureServerBuild, ensureClientBuild],
 }
 

@@ -32,7 +32,11 @@ async function sweep() {
     const pid = name.startsWith(PREFIX) ? Number(name.slice(PREFIX.length).split('-')[0]) : Number.NaN
     if (Number.isNaN(pid) || startOfProcess(pid) !== undefined) continue
     const folder = join(tmpdir(), name)
-    await stopCluster(folder, 'immediate').catch(() => undefined)
-    rmSync(folder, { recursive: true, force: true })
+    try {
+      await stopCluster(folder, 'immediate')
+      rmSync(folder, { recursive: true, force: true })
+    } catch {
+      // Another user's; it is not ours to clear away.
+    }
   }
 }
