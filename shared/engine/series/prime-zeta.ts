@@ -73,7 +73,7 @@ export class PrimeZeta<N> {
     const key = 'prime-zeta'
     const known = this.point.shared.get(key) ?? []
     this.point.shared.set(key, known)
-    known[j] ??= arithmetic.add(arithmetic.dot(primeSum, this.point.powers(j)), this.overRoughPrimes(j))
+    known[j] ??= arithmetic.add(arithmetic.dot(primeSum, this.point.primePowers(j)), this.overRoughPrimes(j))
     return exclude.reduce((rest, p) => arithmetic.subtract(rest, this.point.primePower(p, j)), known[j])
   }
 }

@@ -1,5 +1,5 @@
-import { type Arithmetic, type Weights, makeWeights } from '../arithmetic/arithmetic.ts'
-import { bitLength } from '../arithmetic/integers.ts'
+import { type Arithmetic, type Vector, type Weights, makeWeights } from '../arithmetic/arithmetic.ts'
+import { abs, bitLength } from '../arithmetic/integers.ts'
 import { leastPrimeDivisors, primesUpTo } from '../arithmetic/primes.ts'
 import { dyadic, rational } from '../arithmetic/rational.ts'
 import { etaWeights } from './borwein.ts'
@@ -18,12 +18,14 @@ export interface ZetaContext<N> {
   readonly split: number
   /** The primes <= split, ascending: the first entries of every power vector. */
   readonly primes: readonly number[]
-  /** The integers n whose powers n^-s a vector holds: `primes`, then whatever else the eta sum needs. */
+  /** The integers n whose powers n^-s the eta sum needs or may need: `primes`, then the others. */
   readonly members: readonly number[]
   /** position[n] is the index of n in `members`. */
   readonly position: ReadonlyMap<number, number>
   readonly leastDivisor: Uint32Array
-  readonly eta: Weights
+  /** Sizes and signs of the coefficients of the eta sum (Z-1), in the order of `members`, and the bound of its error. */
+  readonly etaSizes: Vector<N>
+  readonly etaSigns: Weights
   readonly etaError: N
   readonly primeSum: Weights
   readonly log2: N
@@ -52,7 +54,8 @@ export function createZetaContext<N>(arithmetic: Arithmetic<N>, settings: ZetaSe
     members,
     position,
     leastDivisor: leastPrimeDivisors(Math.max(terms, split, 2)),
-    eta: makeWeights(inOrder, plain.divisor),
+    etaSizes: arithmetic.vector(inOrder.map((c) => arithmetic.rational(rational(abs(c), plain.divisor)))),
+    etaSigns: makeWeights(inOrder.map((c) => (c < 0n ? -1n : c > 0n ? 1n : 0n)), 1n),
     etaError: arithmetic.rational(rational(1n, plain.divisor)),
     primeSum: makeWeights(primes.map(() => 1n), 1n),
     log2: arithmetic.log2(),

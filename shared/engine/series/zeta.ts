@@ -14,7 +14,11 @@ export class ZetaPoint<N> {
   readonly s: N
   /** Results shared by several series at this point, by a name of their own. */
   readonly shared = new Map<string, N[]>()
-  private readonly vectors: Vector<N>[] = []
+  private readonly primeVectors: Vector<N>[] = []
+  private readonly etas: N[] = []
+  /** Coefficient times n^(-rs) for each term of the eta sum, r being the number of `etas`. */
+  private etaTerms: Vector<N>
+  private powersOfMembers: Vector<N> | undefined
   private readonly otherPowers = new Map<number, N[]>()
 
   constructor(context: ZetaContext<N>, excess: N, logExcess: N) {
@@ -22,22 +26,23 @@ export class ZetaPoint<N> {
     this.excess = excess
     this.logExcess = logExcess
     this.s = context.arithmetic.add(context.one, excess)
+    this.etaTerms = context.etaSizes
   }
 
-  /** The vector of n^(-rs) over the context's members n; each r costs one product an entry more than the one before. */
-  powers(r: number): Vector<N> {
-    if (this.vectors.length === 0) this.vectors.push(this.firstPowers())
-    while (this.vectors.length < r) {
-      this.vectors.push(this.context.arithmetic.multiplyVectors(this.vectors[this.vectors.length - 1], this.vectors[0]))
-    }
-    return this.vectors[r - 1]
+  /** The vector of p^(-rs) over the context's primes; each r costs one product an entry more than the one before. */
+  primePowers(r: number): Vector<N> {
+    const { arithmetic, primes } = this.context
+    const { primeVectors } = this
+    if (primeVectors.length === 0) primeVectors.push(arithmetic.vector(primes.map((_, i) => arithmetic.item(this.powers(), i))))
+    while (primeVectors.length < r) primeVectors.push(arithmetic.multiplyVectors(primeVectors[primeVectors.length - 1], primeVectors[0]))
+    return primeVectors[r - 1]
   }
 
   /** p^(-rs) for a prime p. */
   primePower(p: number, r: number): N {
-    const { arithmetic, position } = this.context
+    const { arithmetic, position, primes } = this.context
     const index = position.get(p)
-    if (index !== undefined) return arithmetic.item(this.powers(r), index)
+    if (index !== undefined && index < primes.length) return arithmetic.item(this.primePowers(r), index)
     let known = this.otherPowers.get(p)
     if (!known) {
       known = [this.exponentialOf(p)]
@@ -49,13 +54,20 @@ export class ZetaPoint<N> {
 
   /** Product over the primes p <= split of 1 - p^(-rs). */
   eulerFactors(r: number): N {
-    return this.context.arithmetic.eulerProduct(this.powers(r), this.context.primes.length)
+    return this.context.arithmetic.eulerProduct(this.primePowers(r), this.context.primes.length)
   }
 
-  /** *Claim*: contains eta(rs) = (1 - 2^(1-rs)) zeta(rs). *Valid for*: s > 0, r >= 1. *Bound*: Z-1. */
+  /**
+   * *Claim*: contains eta(rs) = (1 - 2^(1-rs)) zeta(rs). *Valid for*: s > 0, r >= 1. *Bound*: Z-1.
+   * The terms go from r to r + 1 by one product each, the coefficients being in them from the start; so the values are made in turn.
+   */
   eta(r: number): N {
-    const { arithmetic, eta, etaError } = this.context
-    return arithmetic.addError(arithmetic.dot(eta, this.powers(r)), etaError)
+    const { arithmetic, etaSigns, etaError } = this.context
+    while (this.etas.length < r) {
+      this.etaTerms = arithmetic.multiplyVectors(this.etaTerms, this.powers())
+      this.etas.push(arithmetic.addError(arithmetic.dot(etaSigns, this.etaTerms), etaError))
+    }
+    return this.etas[r - 1]
   }
 
   /** *Claim*: contains (s-1) zeta(s), to full accuracy also where s is as near to 1 as you like. *Valid for*: s >= 1. *Bound*: Z-2. */
@@ -75,7 +87,13 @@ export class ZetaPoint<N> {
     return arithmetic.exp(arithmetic.negate(arithmetic.multiply(this.s, this.context.logPrime(p))))
   }
 
-  private firstPowers(): Vector<N> {
+  /** The vector of n^-s over the context's members. */
+  private powers(): Vector<N> {
+    this.powersOfMembers ??= this.makePowers()
+    return this.powersOfMembers
+  }
+
+  private makePowers(): Vector<N> {
     const { arithmetic, members, leastDivisor, one } = this.context
     const found = new Map<number, N>([[1, one]])
     const power = (n: number): N => {
