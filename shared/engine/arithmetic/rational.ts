@@ -1,4 +1,4 @@
-import { abs, ceilDivide, floorDivide, gcd } from './integers.ts'
+import { abs, bitLength, ceilDivide, floorDivide, gcd } from './integers.ts'
 
 /** An exact fraction in lowest terms with a positive denominator. */
 export interface Rational {
@@ -71,7 +71,10 @@ export function ceilScaled(a: Rational, bits: number): bigint {
 
 /** n 2^-bits, exactly. */
 export function dyadic(n: bigint, bits: number): Rational {
-  return bits >= 0 ? rational(n, 1n << BigInt(bits)) : rational(n << BigInt(-bits))
+  if (n === 0n || bits <= 0) return { num: n << BigInt(Math.max(0, -bits)), den: 1n }
+  // Only powers of 2 cancel, and they are seen without Euclid's algorithm: such numbers are made by the thousand.
+  const twos = Math.min(bits, bitLength(n & -n) - 1)
+  return { num: n >> BigInt(twos), den: 1n << BigInt(bits - twos) }
 }
 
 /** The canonical text: "3", "-1/2". */

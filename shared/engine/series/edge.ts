@@ -1,6 +1,6 @@
-import { isqrt } from '../arithmetic/integers.ts'
+import { ceilDivide, isqrt } from '../arithmetic/integers.ts'
 import { primesUpTo } from '../arithmetic/primes.ts'
-import { ONE, type Rational, ZERO, add, compare, divide, multiply, rational, subtract } from '../arithmetic/rational.ts'
+import { ONE, type Rational, ZERO, add, ceilScaled, compare, divide, dyadic, multiply, rational, subtract } from '../arithmetic/rational.ts'
 import type { SetOfIntegers } from '../sets/definition.ts'
 import type { SeriesPoint } from './dirichlet.ts'
 import { dirichletSeries } from './families.ts'
@@ -104,15 +104,22 @@ function primeZetaUpper(j: number): Rational {
   return multiply(multiply(power, j % 2 === 1 ? ROOT_HALF : ONE), rational(j + 2, j - 2))
 }
 
-/** The coefficients of exp(sum q_j z^j/j), by k h_k = sum q_j h_(k-j): they bound those with any p_j, |p_j| <= q_j, of any sign. */
+/** Units after the point in which the coefficients below are kept. */
+const BOUND_BITS = 64
+
+/**
+ * The coefficients of exp(sum q_j z^j/j), by k h_k = sum q_j h_(k-j): they bound those with any p_j, |p_j| <= q_j, of any sign.
+ * In integers rounded up.
+ */
 function generatingBounds(q: readonly Rational[]): Rational[] {
-  const bounds = [ONE]
+  const units = q.map((one) => ceilScaled(one, BOUND_BITS))
+  const bounds = [1n << BigInt(BOUND_BITS)]
   for (let k = 1; k < q.length; k++) {
-    let total = ZERO
-    for (let j = 1; j <= k; j++) total = add(total, multiply(q[j], bounds[k - j]))
-    bounds.push(roundUp(divide(total, rational(k))))
+    let total = 0n
+    for (let j = 1; j <= k; j++) total += units[j] * bounds[k - j]
+    bounds.push(ceilDivide(total, BigInt(k) << BigInt(BOUND_BITS)))
   }
-  return bounds
+  return bounds.map((bound) => dyadic(bound, BOUND_BITS))
 }
 
 /** Above |t zeta(1+t)| and |t| in the ellipse (P-3). */
