@@ -43,8 +43,8 @@ export type Bound =
   | { form: 'sum'; terms: Term[] }
   /** x divided by a sum of terms. */
   | { form: 'quotient'; terms: Term[] }
-  /** coefficient x (log x / r)^logPower exp(-rate sqrt(log x / r)), the decay that a zero-free region gives. */
-  | { form: 'decay'; coefficient: string; r: string; logPower: string; rate: string }
+  /** coefficient x (log x / base)^logPower exp(-rate sqrt(log x / r)), the decay that a zero-free region gives. */
+  | { form: 'decay'; coefficient: string; logPower: string; base: string; rate: string; r: string }
 
 /** coefficient x^power (log x)^logPower, divided by pi where it says so; exact decimals or fractions. */
 export interface Term {
@@ -67,6 +67,29 @@ export function negated(bound: Bound): Bound {
 
 /** |quantity| <= bound. */
 export const twoSided = (bound: Bound): { lower: Bound; upper: Bound } => ({ lower: negated(bound), upper: bound })
+
+/** How a statement came here, in the words shown to a reader. */
+export const TRANSCRIBED = "statement taken from a formal transcription of the paper; the paper's own text not seen"
+export const RECALLED = 'source text not seen'
+export const checkedTo8 = (origin: string): string => `Numerically true on both sides of every jump up to 10^8 within its range; ${origin}.`
+export const outOfReach = (origin: string): string => `Begins beyond the reach of the numerical check; ${origin}.`
+
+/** An entry that rests on no hypothesis; the rest of an `Estimate` in short. */
+export function unconditional(
+  id: string,
+  title: string,
+  [statement, statementLatex]: readonly [string, string],
+  validFor: string,
+  source: string,
+  checked: string,
+  claim: Claim,
+): Estimate {
+  return { id, title, statement, statementLatex, validFor, conditional: false, condition: null, source, checked, claim }
+}
+
+export function underRiemannHypothesis(...parts: Parameters<typeof unconditional>): Estimate {
+  return { ...unconditional(...parts), conditional: true, condition: 'the Riemann hypothesis' }
+}
 
 function turned(t: Term): Term {
   return { ...t, coefficient: turnedText(t.coefficient) }
