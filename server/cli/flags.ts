@@ -1,7 +1,7 @@
 import { parseArgs } from 'node:util'
 import { isPrime, primeDivisors } from '../../shared/engine/arithmetic/primes.ts'
 import { EngineRefusal } from '../../shared/engine/errors.ts'
-import type { ArithmeticName, Goal, Method } from '../../shared/engine/methods/computation.ts'
+import { ARITHMETIC_NAMES, type ArithmeticName, type Goal, METHOD_NAMES, type Method } from '../../shared/engine/methods/computation.ts'
 import { type DefinitionText, canonicalDefinition } from '../../shared/engine/sets/canonical.ts'
 import type { Definition, SetOfIntegers } from '../../shared/engine/sets/definition.ts'
 import { LIMITS } from '../../shared/limits.ts'
@@ -23,7 +23,8 @@ export const USAGE = `enclose: an enclosure of a sum over integers or primes, wi
   --k 3 or 1..12     --exclude 2,3     --coprime-to q     --y 7     --mod q --residue a     --file list.csv
   --power 1          --log-power 1     the weight n^-power (log n)^-log-power; fractions such as 1/2 are exact
   --constant twin-prime|artin|mertens      --over-primes '1/(p*(p-1))' --combine sum|product
-  --digits 30 or --cutoff 1000000000       --method transform|panels|partial-sum|finite     --arithmetic ball|mpfr
+  --digits 30 or --cutoff 1000000000       --method ${METHOD_NAMES.join('|')}
+  --arithmetic ball|mpfr
   --json             one JSON object (an array for a range of k), certificate included`
 
 const OPTIONS = {
@@ -47,9 +48,6 @@ const OPTIONS = {
   json: { type: 'boolean' },
   help: { type: 'boolean' },
 } as const
-
-const METHOD_NAMES: readonly Method[] = ['transform', 'panels', 'partial-sum', 'finite']
-const ARITHMETIC_NAMES: readonly ArithmeticName[] = ['ball', 'mpfr']
 
 type Flags = ReturnType<typeof parseFlags>
 type SetKind = SetOfIntegers['kind']

@@ -1,6 +1,7 @@
 import { z } from 'zod'
-import { LIMITS } from '../limits.ts'
 import type { Certificate } from '../engine/certificate/certificate.ts'
+import { ARITHMETIC_NAMES, METHOD_NAMES } from '../engine/methods/computation.ts'
+import { LIMITS } from '../limits.ts'
 
 /** The certificate's file format, version 1. Unknown members are refused: what is not understood is not certified. */
 
@@ -35,8 +36,8 @@ export const certificateSchema = z.strictObject({
   format: z.literal('merestone-certificate'),
   version: z.literal(1),
   definition: canonicalDefinitionSchema,
-  method: z.enum(['transform', 'panels', 'partial-sum', 'finite']),
-  arithmetic: z.enum(['ball', 'mpfr']),
+  method: z.enum(METHOD_NAMES),
+  arithmetic: z.enum(ARITHMETIC_NAMES),
   goal: z.union([
     z.strictObject({ digits: z.number().int().min(1).max(LIMITS.digits) }),
     z.strictObject({ cutoff: z.string().regex(/^[1-9]\d{0,17}$/) }),

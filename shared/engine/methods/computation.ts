@@ -4,8 +4,10 @@ import type { Definition } from '../sets/definition.ts'
  * `transform`: Mellin transform by the trapezoid; `panels`: the same integral by power series and Gauss-Legendre panels;
  * `expansion`: over the primes, by powers of 1/p and prime zeta values; `derivatives`: the Dirichlet series or a derivative at s0.
  */
-export type Method = 'transform' | 'panels' | 'partial-sum' | 'finite' | 'expansion' | 'derivatives'
-export type ArithmeticName = 'ball' | 'mpfr'
+export const METHOD_NAMES = ['transform', 'panels', 'partial-sum', 'finite', 'expansion', 'derivatives'] as const
+export type Method = (typeof METHOD_NAMES)[number]
+export const ARITHMETIC_NAMES = ['ball', 'mpfr'] as const
+export type ArithmeticName = (typeof ARITHMETIC_NAMES)[number]
 
 /** What is asked for: certified digits after the point, or (partial sum) the cut-off up to which terms are added. */
 export type Goal = { digits: number } | { cutoff: string }
