@@ -62,22 +62,30 @@ export interface Facts {
   assignmentWaits?: boolean
 }
 
-/** A condition beside party and state, with what to tell whoever does not meet it. */
+interface ConditionText {
+  holds: (facts: Facts) => boolean
+  code: string
+  says: string
+  /** It is about who acts and not about when: nothing to wait for. */
+  personal?: true
+}
+
+/** Conditions beside party and state, with what to tell whoever does not meet them. */
 const CONDITIONS = {
   'all-answered': { holds: (f) => f.unanswered === 0, code: 'objection_unanswered', says: 'An objection waits for an answer. Answer each one, then resubmit.' },
   'own-objection-settled': { holds: (f) => f.ownUnsettled === 0, code: 'own_objection_open', says: 'Your own objection is not settled. Settle it before you confirm.' },
   'not-confirmed-yet': { holds: (f) => !f.ownConfirmed, code: 'already_confirmed', says: 'You have confirmed this claim as it stands.' },
   'awaits-answer': { holds: (f) => f.objection === undefined || f.objection.state === 'open' || f.objection.state === 'upheld', code: 'objection_answered', says: 'This objection is answered or settled.' },
   'is-answered': { holds: (f) => f.objection === undefined || f.objection.state === 'answered', code: 'objection_not_answered', says: 'Only an objection that the author has answered can be settled or upheld.' },
-  'own-objection': { holds: (f) => f.objection === undefined || f.objection.own, code: 'objection_of_another', says: 'Whoever raised an objection settles it.' },
-  'referee-gone': { holds: (f) => f.objection === undefined || f.objection.refereeGone, code: 'objection_of_another', says: 'Whoever raised an objection settles it; a lead does so only where that referee has left the review.' },
+  'own-objection': { holds: (f) => f.objection === undefined || f.objection.own, code: 'objection_of_another', says: 'Whoever raised an objection settles it.', personal: true },
+  'referee-gone': { holds: (f) => f.objection === undefined || f.objection.refereeGone, code: 'objection_of_another', says: 'Whoever raised an objection settles it; a lead does so only where that referee has left the review.', personal: true },
   'assignment-waits': { holds: (f) => f.assignmentWaits !== false, code: 'nothing_to_remind', says: 'This referee has nothing to do at present.' },
   'not-contradicted': { holds: (f) => !f.contradicted, code: 'in_conflict', says: 'A signed enclosure of this constant does not meet this one. Suspend or withdraw one of the two first.' },
   complete: { holds: (f) => missingForEndorsement(f).length === 0, code: 'review_incomplete', says: 'The review is not complete.' },
   'nobody-left': { holds: (f) => f.activeReferees === 0, code: 'referees_left', says: 'A referee is at work.' },
   'narrower-signed': { holds: (f) => f.narrowerSigned, code: 'none_narrower', says: 'No narrower enclosure is signed.' },
   'none-narrower': { holds: (f) => !f.narrowerSigned, code: 'narrower_signed', says: 'A narrower enclosure is signed.' },
-} as const satisfies Record<string, { holds: (facts: Facts) => boolean; code: string; says: string }>
+} as const satisfies Record<string, ConditionText>
 type Condition = keyof typeof CONDITIONS
 
 /** One row of the table: an act, who may do it, and from which state it leads to which. */
@@ -208,20 +216,21 @@ export const actParticiple = (act: string): string | undefined => PAST[act as Li
 /** A state as it is written in a sentence. */
 export const stateWord = (state: ClaimState): string => (state === 'in-review' ? 'in review' : state)
 
+/** What a move says to a state and to facts. */
+function judgeMove({ act, by, moves, when = [] }: Move, state: ClaimState, facts: Facts): Judgement {
+  const unmet = when.map((condition): ConditionText => CONDITIONS[condition]).filter(({ holds }) => !holds(facts))
+  const [personal] = unmet.filter((condition) => condition.personal)
+  if (personal) return refusal('not-theirs', personal.code, personal.says)
+  const to = moves[state]
+  if (to === undefined) return wrongState(act, state)
+  const [first] = unmet
+  return first ? refusal('not-now', first.code, first.says) : { allowed: true, party: by, to }
+}
+
+/** The best that any of these parties can hear: allowed, else what is in the way now, else that it is not theirs. */
 function judgeParties(act: LifeAct, state: ClaimState, parties: readonly Party[], facts: Facts): Judgement | undefined {
-  let obstacle: Judgement | undefined
-  for (const move of LIFE) {
-    if (move.act !== act || !parties.includes(move.by)) continue
-    const target = move.moves[state]
-    if (target === undefined) {
-      obstacle ??= wrongState(act, state)
-      continue
-    }
-    const failing = move.when?.find((condition) => !CONDITIONS[condition].holds(facts))
-    if (failing === undefined) return { allowed: true, party: move.by, to: target }
-    obstacle = refusal('not-now', CONDITIONS[failing].code, CONDITIONS[failing].says)
-  }
-  return obstacle
+  const heard = LIFE.filter((move) => move.act === act && parties.includes(move.by)).map((move) => judgeMove(move, state, facts))
+  return heard.find(({ allowed }) => allowed) ?? heard.find((judgement) => !judgement.allowed && judgement.why === 'not-now') ?? heard[0]
 }
 
 /** Whether somebody who stands so to a claim in this state may do this act now, where it leads, or what is in the way. */
