@@ -37,7 +37,7 @@ const ACTS: Record<string, string> = {
   'invitation.send': 'invited',
   'key.change': 'changed the signing key to',
   'mail.resend': 'sent again the mail',
-  'member.join': 'joined',
+  'member.join': 'made a member of',
   'member.leave': 'ended the membership of',
   'member.rename': 'renamed',
   'member.roles': 'changed the roles of',
@@ -47,6 +47,17 @@ const ACTS: Record<string, string> = {
   'run.resume': 'resumed a run of',
   'run.start': 'started a run of',
   'run.stop': 'stopped a run of',
+}
+
+/** Acts that a member does to their own account. */
+const OWN_ACTS: Record<string, string> = {
+  'invitation.accept': 'accepted the invitation',
+  'member.join': 'joined the group',
+  'member.leave': 'left the group',
+  'member.rename': 'changed their name',
+  'member.roles': 'changed their own roles',
+  'password.change': 'changed their password',
+  'password.reset': 'set a new password by a mailed link',
 }
 
 /** Starts of acts that the filter offers: each finds all acts that begin with it. */
@@ -64,6 +75,8 @@ export const ACT_FAMILIES: Record<string, string> = {
   'access-token.': 'on access tokens',
 }
 
-export function actWords(act: string): string {
-  return ACTS[act] ?? act
+/** What was done, in words. `own`: to the account of whoever did it, which then needs no naming. */
+export function actWords(act: string, own: boolean): { words: string; names: boolean } {
+  const ownWords = own ? OWN_ACTS[act] : undefined
+  return ownWords === undefined ? { words: ACTS[act] ?? act, names: true } : { words: ownWords, names: false }
 }

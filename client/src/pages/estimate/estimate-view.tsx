@@ -9,6 +9,7 @@ import { Notice } from '../../components/ui/notice.tsx'
 import { Facts, MarginNote, Page, Section } from '../../components/ui/page.tsx'
 import { Table } from '../../components/ui/table.tsx'
 import { EstimateState } from '../../features/estimates/components/estimate-state.tsx'
+import { Printed } from '../../features/estimates/components/printed.tsx'
 import { printedRange } from '../../features/estimates/estimate-filters.ts'
 
 /** One published inequality: what it says, where it holds, where it stands, and who rests on it. */
@@ -16,13 +17,13 @@ export function EstimateView({ estimate }: { estimate: Fetched<Estimate> }) {
   const { data } = estimate
   return (
     <Page
-      title={data?.title ?? 'Estimate'}
+      title={data ? printedRange(data.title) : 'Estimate'}
       head={
         <>
           <p className="mb-1">
             <TextLink to={paths.estimates()}>Estimates</TextLink>
           </p>
-          <h1>{data ? printedRange(data.title) : 'Estimate'}</h1>
+          <h1>{data ? <Printed text={data.title} /> : 'Estimate'}</h1>
         </>
       }
       margin={data && <EstimateMargin estimate={data} />}
@@ -39,7 +40,7 @@ function EstimateBody({ estimate }: { estimate: Estimate }) {
         <Formula display latex={estimate.statementLatex} text={estimate.statement} />
       </div>
       <p className="mt-2">
-        for {printedRange(estimate.validFor)}
+        for <Printed text={estimate.validFor} />
         {estimate.conditional ? `, if ${estimate.condition ?? 'an unproved hypothesis holds'}` : ', unconditionally'}.
       </p>
       {estimate.conditional && (
@@ -53,10 +54,10 @@ function EstimateBody({ estimate }: { estimate: Estimate }) {
         </Notice>
       )}
       <Section title="Source">
-        <p className="max-w-prose">{estimate.source}.</p>
+        <p className="max-w-prose"><Printed text={estimate.source} />.</p>
       </Section>
       <Section title="What was checked">
-        <p className="max-w-prose">{estimate.checked}</p>
+        <p className="max-w-prose"><Printed text={estimate.checked} /></p>
         <p className="mt-2 max-w-prose text-soft">A numerical check can find a slip of the pen; it proves nothing beyond its reach. The inequality is as sound as its source.</p>
       </Section>
       <Section title="Signed claims that rest on it">
@@ -71,7 +72,7 @@ function EstimateBody({ estimate }: { estimate: Estimate }) {
             rowKey={({ claimNumber }) => claimNumber}
             columns={[
               { key: 'claim', header: 'Claim', cell: ({ claimNumber }) => <TextLink to={paths.claim(claimNumber)}>{claimNumber}</TextLink> },
-              { key: 'at', header: 'Used at', cell: ({ usedAt }) => printedRange(usedAt) },
+              { key: 'at', header: 'Used at', cell: ({ usedAt }) => <Printed text={usedAt} /> },
             ]}
           />
         )}
@@ -87,9 +88,9 @@ function EstimateMargin({ estimate }: { estimate: Estimate }) {
         <Facts
           facts={[
             ['State', <EstimateState key="state" estimate={estimate} />],
-            ['Holds for', printedRange(estimate.validFor)],
+            ['Holds for', <Printed key="range" text={estimate.validFor} />],
             ['Conditional', estimate.conditional ? 'yes' : 'no'],
-            ['In words', <span key="text" className="break-words">{estimate.statement}</span>],
+            ['Plain text', <span key="text" className="break-words">{estimate.statement}</span>],
           ]}
         />
       </MarginNote>

@@ -34,7 +34,7 @@ export function AuditFiltersForm({ filters, members, onFilter, clearTo }: AuditF
       role="search"
       aria-label="Filter the audit trail"
       onSubmit={submit}
-      className="mb-5 grid gap-x-5 gap-y-3 sm:grid-cols-3 wide:grid-cols-[1.2fr_1.1fr_1.1fr_0.9fr_0.9fr_auto] print:hidden"
+      className="mb-5 grid gap-x-5 gap-y-3 sm:grid-cols-4 print:hidden"
     >
       <Field label="Words or digest">{(control) => <TextInput {...control} {...at('text')} type="search" />}</Field>
       <Field label="Acts">
@@ -62,6 +62,18 @@ export function AuditFiltersForm({ filters, members, onFilter, clearTo }: AuditF
           </Select>
         )}
       </Field>
+      <Field label="About">
+        {(control) => (
+          <Select {...control} {...at('subjectKind')} {...choose}>
+            <option value="">anything</option>
+            {Object.entries(SUBJECT_KINDS).map(([kind, words]) => (
+              <option key={kind} value={kind}>
+                {words}
+              </option>
+            ))}
+          </Select>
+        )}
+      </Field>
       <Field label="From">{(control) => <TextInput {...control} {...at('from')} type="date" />}</Field>
       <Field label="To">{(control) => <TextInput {...control} {...at('to')} type="date" />}</Field>
       <div className="flex items-end gap-4">
@@ -74,18 +86,6 @@ export function AuditFiltersForm({ filters, members, onFilter, clearTo }: AuditF
           </TextLink>
         )}
       </div>
-      <Field label="About" className="wide:col-start-2">
-        {(control) => (
-          <Select {...control} {...at('subjectKind')} {...choose}>
-            <option value="">anything</option>
-            {Object.entries(SUBJECT_KINDS).map(([kind, words]) => (
-              <option key={kind} value={kind}>
-                {words}
-              </option>
-            ))}
-          </Select>
-        )}
-      </Field>
       {filters.subjectId && <input type="hidden" name="subjectId" defaultValue={filters.subjectId} />}
     </form>
   )

@@ -34,9 +34,10 @@ export function AuditTable({ entries, onTurn, busy }: AuditTableProps) {
 }
 
 function Deed({ entry }: { entry: AuditEntry }) {
+  const { words, names } = actWords(entry.act, entry.subject.kind === 'member' && entry.subject.id === entry.actor?.id)
   return (
     <span>
-      {actWords(entry.act)} <Subject {...entry.subject} />
+      {words} {names && <Subject {...entry.subject} />}
       {entry.reason && <span className="block max-w-prose whitespace-pre-line text-soft">“{entry.reason}”</span>}
     </span>
   )

@@ -93,9 +93,12 @@ function Outcome({ checked, reading }: { checked: Checked; reading: PrintedAs })
         <>
           <VerdictLine negative={checked.negative} result={checked.result} />
           {checked.correct && (
-            <p className="break-words">
-              {reading === 'truncated' ? 'Truncated' : 'Rounded'} to {checked.correct.places} {checked.correct.places === 1 ? 'place' : 'places'} it
-              reads <span className="break-all">{checked.correct.text}</span>. <CopyText text={checked.correct.text} label="Copy" what="Digits" />{' '}
+            <p className="flex flex-wrap items-baseline gap-x-5">
+              <span>
+                {reading === 'truncated' ? 'Truncated' : 'Rounded'} to {checked.correct.places} {checked.correct.places === 1 ? 'place' : 'places'} it
+                reads <span className="break-all">{checked.correct.text}</span>.
+              </span>
+              <CopyText text={checked.correct.text} label="Copy" what="Digits" />
               <CopyText text={latexNumber(checked.correct.text)} label="Copy as LaTeX" what="LaTeX" />
             </p>
           )}

@@ -5,9 +5,9 @@ import type { DigitRun } from '../check.ts'
 
 /** Each verdict has its word, its rule and its colour; the first two alone tell them apart. */
 const LOOKS: Record<DigitVerdict, { rule: string; word: string }> = {
-  confirmed: { rule: 'border-t-2 border-solid border-certain', word: 'text-certain' },
-  undecided: { rule: 'border-t-2 border-dotted border-undecided', word: 'text-undecided' },
-  refuted: { rule: 'border-t-4 border-double border-refused', word: 'text-refused font-semibold' },
+  confirmed: { rule: 'border-t-2 pt-px border-solid border-certain', word: 'text-certain' },
+  undecided: { rule: 'border-t-2 pt-px border-dotted border-undecided', word: 'text-undecided' },
+  refuted: { rule: 'border-t-3 border-double border-refused', word: 'text-refused font-semibold' },
 }
 
 interface VerdictLineProps {

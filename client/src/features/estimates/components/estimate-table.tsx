@@ -3,8 +3,9 @@ import { paths } from '../../../app/paths.ts'
 import { Formula } from '../../../components/formula/formula.tsx'
 import { TextLink } from '../../../components/ui/link.tsx'
 import { Table } from '../../../components/ui/table.tsx'
-import { printedRange } from '../estimate-filters.ts'
+import { shortTitle } from '../estimate-filters.ts'
 import { EstimateState } from './estimate-state.tsx'
+import { Printed } from './printed.tsx'
 
 /** Estimates with statement, range and what they are conditional on. */
 export function EstimateTable({ estimates }: { estimates: Estimate[] }) {
@@ -14,12 +15,12 @@ export function EstimateTable({ estimates }: { estimates: Estimate[] }) {
       rows={estimates}
       rowKey={({ id }) => id}
       columns={[
-        { key: 'title', header: 'Estimate', plain: true, className: 'sm:w-[28%]', cell: ({ id, title }) => <TextLink to={paths.estimate(id)}>{printedRange(title)}</TextLink> },
+        { key: 'title', header: 'Estimate', plain: true, className: 'sm:w-[28%]', cell: ({ id, title }) => <TextLink to={paths.estimate(id)}><Printed text={shortTitle(title)} /></TextLink> },
         { key: 'statement', header: 'Statement', plain: true, cell: ({ statementLatex, statement }) => <span className="block overflow-x-auto overflow-y-hidden"><Formula latex={statementLatex} text={statement} /></span> },
-        { key: 'range', header: 'Holds for', cell: ({ validFor }) => printedRange(validFor) },
+        { key: 'range', header: 'Holds for', cell: ({ validFor }) => <Printed text={validFor} /> },
         { key: 'condition', header: 'Conditional', cell: ({ conditional, condition }) => (conditional ? <span className="text-undecided">on {condition ?? 'an unproved hypothesis'}</span> : 'no') },
-        { key: 'state', header: 'State', cell: (estimate) => <EstimateState estimate={estimate} /> },
-        { key: 'used', header: 'Used by', cell: ({ usedBy }) => (usedBy.length === 0 ? <span className="text-soft">none</span> : `${usedBy.length} signed`) },
+        { key: 'state', header: 'State', className: 'sm:whitespace-nowrap', cell: (estimate) => <EstimateState estimate={estimate} /> },
+        { key: 'used', header: 'Used by', className: 'sm:whitespace-nowrap', cell: ({ usedBy }) => (usedBy.length === 0 ? <span className="text-soft">none</span> : `${usedBy.length} signed`) },
       ]}
     />
   )

@@ -11,7 +11,7 @@ export function KeyList({ keys }: { keys: PublicKey[] }) {
   return (
     <ul className="grid gap-8">
       {keys.map(({ id, algorithm, pem, createdAt, retiredAt }) => (
-        <li key={id}>
+        <li key={id} className="min-w-0">
           <h3>
             Key <code className="text-[0.9em]">{id}</code> <span className="font-normal text-soft">({retiredAt ? 'retired' : 'in use'})</span>
           </h3>
@@ -27,7 +27,7 @@ export function KeyList({ keys }: { keys: PublicKey[] }) {
           <pre className="mt-2 overflow-x-auto border border-rule bg-leaf px-3 py-2 leading-normal">{pem.trim()}</pre>
           <p className="mt-1 flex flex-wrap gap-x-6">
             <CopyText text={pem} label="Copy the key" what="Key" />
-            <FileLink href={files.key(id)} download={`${id}.pem`} className="text-[0.92rem]">
+            <FileLink href={files.key(id)} download={`${id}.pem`}>
               Take it as a PEM file
             </FileLink>
           </p>

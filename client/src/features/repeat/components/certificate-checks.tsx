@@ -6,7 +6,22 @@ import { Time } from '../../../components/ui/time.tsx'
 import { ENGINE_RELEASE } from '../engine-release.ts'
 import type { SignatureVerdict } from '../signature-check.ts'
 
-type Verdict = 'holds' | 'fails' | 'not said'
+/** A verdict in one or two words, and what it means for the certificate. */
+interface Verdict {
+  word: string
+  tone: 'good' | 'bad' | 'open'
+}
+
+const HOLDS: Verdict = { word: 'holds', tone: 'good' }
+const FAILS: Verdict = { word: 'fails', tone: 'bad' }
+const UNCHECKED: Verdict = { word: 'not checked', tone: 'open' }
+const SIGNATURES: Record<SignatureVerdict['status'], Verdict> = {
+  valid: HOLDS,
+  invalid: FAILS,
+  unsigned: { word: 'none', tone: 'open' },
+  'unknown-key': { word: 'another’s', tone: 'open' },
+  unable: UNCHECKED,
+}
 
 interface CertificateChecksProps {
   certificate: Certificate
@@ -17,23 +32,23 @@ interface CertificateChecksProps {
   keysError: unknown
 }
 
-const LOOKS: Record<Verdict, string> = { holds: 'text-certain', fails: 'text-refused font-semibold', 'not said': 'text-undecided' }
+const LOOKS: Record<Verdict['tone'], string> = { good: 'text-certain', bad: 'text-refused font-semibold', open: 'text-undecided' }
 
 /** What can be told of a certificate without repeating it: digest, signature, engine. */
 export function CertificateChecks({ certificate, intact, signature, keysError }: CertificateChecksProps) {
   return (
     <dl className="grid gap-x-5 gap-y-2 sm:grid-cols-[auto_auto_1fr]">
-      <Check name="Digest" verdict={intact === undefined ? null : intact === null ? 'not said' : intact ? 'holds' : 'fails'}>
+      <Check name="Digest" verdict={intact === undefined ? null : intact === null ? UNCHECKED : intact ? HOLDS : FAILS}>
         {intact === null
           ? 'The browser computes digests only over https or on this machine.'
           : intact === false
             ? 'The content is not what the digest was made of: the file was changed after it was made.'
             : 'The content is what it was when the certificate was made.'}
       </Check>
-      <Check name="Signature" verdict={signatureVerdict(signature, keysError)}>
+      <Check name="Signature" verdict={signature ? SIGNATURES[signature.status] : keysError ? UNCHECKED : null}>
         {signatureWords(signature, keysError)}
       </Check>
-      <Check name="Engine" verdict={certificate.engine.digest === ENGINE_RELEASE.digest ? 'holds' : 'not said'}>
+      <Check name="Engine" verdict={certificate.engine.digest === ENGINE_RELEASE.digest ? { word: 'the same', tone: 'good' } : { word: 'another', tone: 'open' }}>
         {certificate.engine.digest === ENGINE_RELEASE.digest
           ? `Made by release ${certificate.engine.version}, the same to the byte as the one in this page.`
           : `Made by release ${certificate.engine.version}; in this page runs ${ENGINE_RELEASE.version}, which is not the same to the byte. It may still repeat.`}
@@ -46,15 +61,10 @@ function Check({ name, verdict, children }: { name: string; verdict: Verdict | n
   return (
     <div className="contents">
       <dt className="font-semibold">{name}</dt>
-      <dd className={verdict ? LOOKS[verdict] : 'text-soft'}>{verdict ?? '…'}</dd>
+      <dd className={verdict ? LOOKS[verdict.tone] : 'text-soft'}>{verdict?.word ?? '…'}</dd>
       <dd className="mb-2 sm:mb-0">{verdict === null ? null : children}</dd>
     </div>
   )
-}
-
-function signatureVerdict(signature: SignatureVerdict | undefined, keysError: unknown): Verdict | null {
-  if (signature) return signature.status === 'valid' ? 'holds' : signature.status === 'invalid' ? 'fails' : 'not said'
-  return keysError ? 'not said' : null
 }
 
 function signatureWords(signature: SignatureVerdict | undefined, keysError: unknown): ReactNode {

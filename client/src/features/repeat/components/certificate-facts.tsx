@@ -1,5 +1,6 @@
 import type { Certificate } from '../../../../../shared/engine/certificate/certificate.ts'
 import { readDefinition } from '../../../../../shared/engine/sets/typeset.ts'
+import { Printed } from '../../estimates/components/printed.tsx'
 import { paths } from '../../../app/paths.ts'
 import { Magnitude, SOURCE_WORDS } from '../../../components/charts/error-budget.tsx'
 import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
@@ -10,10 +11,9 @@ import { Table } from '../../../components/ui/table.tsx'
 
 /** What a certificate asserts, read from the file alone. */
 export function CertificateSubject({ certificate }: { certificate: Certificate }) {
-  const { latex, text, aliases } = readDefinition(certificate.definition)
+  const { latex, text } = readDefinition(certificate.definition)
   return (
     <div>
-      {aliases.length > 0 && <p className="text-soft">{aliases.join(' · ')}</p>}
       <Formula display latex={latex} text={text} />
       <div className="mt-3">
         <DigitLine {...certificate.enclosure} size="large" copy />
@@ -28,11 +28,11 @@ export function CertificateFacts({ certificate: { method, arithmetic, goal, radi
     <Facts
       facts={[
         ['Method', `${method}, ${arithmetic}`],
-        ['Goal', 'digits' in goal ? `${goal.digits} digits` : `terms up to ${goal.cutoff}`],
-        ['Radius', radius],
+        ['Goal', 'digits' in goal ? `${goal.digits} digits` : <Printed key="goal" text={`terms up to ${goal.cutoff}`} />],
+        ['Radius', <Magnitude key="radius" text={radius} />],
         ['Digits', `${Math.max(0, digits.truncated)} truncated, ${Math.max(0, digits.rounded)} rounded`],
         ['Engine', `release ${engine.version}`],
-        ['Parameters', Object.entries(parameters).map(([name, value]) => `${name} = ${String(value)}`).join(', ')],
+        ['Parameters', Object.entries(parameters).map(([name, value]) => `${name} = ${String(value).replaceAll(',', ', ')}`).join('; ')],
         ['SHA-256', <code key="digest" className="break-all">{digest}</code>],
       ]}
     />
@@ -62,8 +62,8 @@ export function CertificateGrounds({ certificate: { budget, estimates } }: { cer
           rowKey={({ id, usedAt }) => `${id} ${usedAt}`}
           columns={[
             { key: 'id', header: 'Estimate', cell: ({ id }) => <TextLink to={paths.estimate(id)} className="break-all">{id}</TextLink> },
-            { key: 'used', header: 'Used at', cell: ({ usedAt }) => usedAt },
-            { key: 'valid', header: 'Holds for', cell: ({ validFor }) => validFor },
+            { key: 'used', header: 'Used at', cell: ({ usedAt }) => <Printed text={usedAt} /> },
+            { key: 'valid', header: 'Holds for', cell: ({ validFor }) => <Printed text={validFor} /> },
             { key: 'conditional', header: 'Conditional', cell: ({ conditional }) => (conditional ? <span className="text-undecided">yes</span> : 'no') },
           ]}
         />
