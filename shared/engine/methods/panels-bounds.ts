@@ -1,6 +1,6 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { isqrt } from '../arithmetic/integers.ts'
-import { ONE, type Rational, add, compare, dyadic, multiply, negate, rational, subtract } from '../arithmetic/rational.ts'
+import { ONE, type Rational, add, compare, multiply, negate, rational, subtract } from '../arithmetic/rational.ts'
 
 /** The error bounds of the panels as exact rationals, rounded up; made in an arithmetic of their own, finer than the sums'. */
 
@@ -104,9 +104,4 @@ export function tailUpper<N>(a: Arithmetic<N>, from: Rational, summand: Summand)
   // from^(b-1) itself: tails far out would lose too much by a whole power.
   const weight = a.scale(a.log(a.rational(from)), exponent)
   return a.upper(a.divide(a.timesExp(atFrom, weight), rate))
-}
-
-/** 2^-bits, exactly. */
-export function powerOfTwoRational(bits: number): Rational {
-  return dyadic(1n, bits)
 }

@@ -1,13 +1,13 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
-import { ONE, type Rational, ZERO, add, divide, dyadic, multiply, rational, subtract, toText } from '../arithmetic/rational.ts'
+import { ONE, type Rational, ZERO, add, ceilScaled, divide, dyadic, multiply, rational, subtract, toText } from '../arithmetic/rational.ts'
 import { reciprocalGamma } from '../series/gamma.ts'
 import { areDescending, spareBits } from '../series/gauss-legendre.ts'
 import type { Computation, ComputationRequest, Enclosure, Outcome, Parameters, ShardResult } from './computation.ts'
 import type { MellinTask } from './mellin-task.ts'
 import { type ExactBudgetItem, decimalEnclosure, describeEnclosure, halfWidth } from './outcome.ts'
 import { type Summand, edgeErrorUpper, panelErrorUpper, seriesUpper, tailUpper } from './panels-bounds.ts'
-import { type PanelsParameters, nodeCount, writeParameters } from './panels-parameters.ts'
+import { type PanelsParameters, writeParameters } from './panels-parameters.ts'
 import { nodeCost } from './panels-plan.ts'
 import { type BlockResult, type Block, cutIntoBlocks, readBlock, writeBlock } from './panels-shards.ts'
 import { NODE_BITS, PanelsSweep, type SweepSeries } from './panels-sweep.ts'
@@ -15,15 +15,18 @@ import { NODE_BITS, PanelsSweep, type SweepSeries } from './panels-sweep.ts'
 /** Bits that the arithmetic of the bounds has beyond that of the sums, so that they are not rounded up to its last unit. */
 const BOUND_BITS = 64
 
-/** What the pieces up to some point give for one series: lo and hi of their sums, and the bounds of their errors. */
+/**
+ * What the pieces up to some point give for one series: lo and hi of their sums, and the bounds of their errors, all in units of
+ * 2^-(precision + BOUND_BITS), the errors rounded up.
+ */
 interface Prefix {
   nodes: number
-  lo: Rational
-  hi: Rational
-  edge: Rational
-  panels: Rational
+  lo: bigint
+  hi: bigint
+  edge: bigint
+  panels: bigint
   /** Bound of the integral beyond the last piece; null where none applies yet. */
-  tail: Rational | null
+  tail: bigint | null
 }
 
 /** A run by panels with everything chosen (P-1 to P-8): the edge [0, eps], then panel after panel, then a bound of the rest. */
@@ -61,7 +64,7 @@ export class PanelsComputation implements Computation {
     const bounds = await this.boundArithmetic()
     const gamma = gammaBounds(bounds, this.task.logPower)
     const found = this.list.map((_, index) => {
-      const last = this.prefixes(bounds, pieces, index).filter((prefix) => prefix.tail).pop()
+      const last = this.prefixes(bounds, pieces, index).filter((prefix) => prefix.tail !== null).pop()
       return last && decimalEnclosure(...enclose(last, gamma))
     })
     return found.every((one) => one !== undefined) ? found : null
@@ -110,18 +113,20 @@ export class PanelsComputation implements Computation {
   private prefixes(bounds: Arithmetic<AnyNumber>, pieces: readonly BlockResult[][], index: number): Prefix[] {
     const { chosen, task, list } = this
     const summand: Summand = { power: task.power, logPower: task.logPower, least: list[index].series.leastMember }
+    const units = (error: Rational): bigint => ceilScaled(error, chosen.precision + BOUND_BITS)
     const prefixes: Prefix[] = []
     pieces.forEach((blocks, piece) => {
-      const before = prefixes[piece - 1] ?? { nodes: 0, lo: ZERO, hi: ZERO, edge: ZERO, panels: ZERO, tail: null }
+      const before = prefixes[piece - 1] ?? { nodes: 0, lo: 0n, hi: 0n, edge: 0n, panels: 0n, tail: null }
       const [lo, hi] = blocks.reduce(([a, b], { sums }) => [a + sums[index][0], b + sums[index][1]], [0n, 0n])
       const panel = chosen.panels[piece - 1]
+      const tail = tailUpper(bounds, panel?.to ?? chosen.edge, summand)
       prefixes.push({
         nodes: before.nodes + (panel?.nodes ?? chosen.edgeNodes),
-        lo: add(before.lo, dyadic(lo, chosen.precision)),
-        hi: add(before.hi, dyadic(hi, chosen.precision)),
-        edge: panel ? before.edge : this.edgeError(bounds, blocks, index, summand),
-        panels: panel ? add(before.panels, panelErrorUpper(bounds, panel, summand)) : ZERO,
-        tail: tailUpper(bounds, panel?.to ?? chosen.edge, summand),
+        lo: before.lo + (lo << BigInt(BOUND_BITS)),
+        hi: before.hi + (hi << BigInt(BOUND_BITS)),
+        edge: panel ? before.edge : units(this.edgeError(bounds, blocks, index, summand)),
+        panels: panel ? before.panels + units(panelErrorUpper(bounds, panel, summand)) : 0n,
+        tail: tail && units(tail),
       })
     })
     return prefixes
@@ -148,14 +153,15 @@ export class PanelsComputation implements Computation {
     return total
   }
 
-  private outcome(index: number, prefixes: readonly Prefix[], gamma: [Rational, Rational]): Outcome {
+  private outcome(index: number, prefixes: readonly Prefix[], gamma: GammaBounds): Outcome {
     const whole = prefixes[prefixes.length - 1]
-    if (prefixes.length <= this.chosen.panels.length || !whole.tail) throw new Error('results are missing, or the last panel ends too early')
+    if (prefixes.length <= this.chosen.panels.length || whole.tail === null) throw new Error('results are missing, or the last panel ends too early')
     const [lo, hi] = enclose(whole, gamma)
+    const share = (units: bigint): Rational => dyadic(units * gamma.high, 2 * gamma.bits)
     const items: ExactBudgetItem[] = [
-      { source: 'discretisation', bound: 'P-4', magnitude: multiply(whole.edge, gamma[1]) },
-      { source: 'discretisation', bound: 'P-7', magnitude: multiply(whole.panels, gamma[1]) },
-      { source: 'truncation-above', bound: 'P-8', magnitude: multiply(multiply(whole.tail, rational(1, 2)), gamma[1]) },
+      { source: 'discretisation', bound: 'P-4', magnitude: share(whole.edge) },
+      { source: 'discretisation', bound: 'P-7', magnitude: share(whole.panels) },
+      { source: 'truncation-above', bound: 'P-8', magnitude: multiply(share(whole.tail), rational(1, 2)) },
     ]
     const rounding = subtract(halfWidth(lo, hi), items.reduce((total, item) => add(total, item.magnitude), ZERO))
     return {
@@ -166,25 +172,30 @@ export class PanelsComputation implements Computation {
       parameters: this.parameters,
       estimates: [],
       ...describeEnclosure(lo, hi, [...items, { source: 'rounding', bound: 'A-3', magnitude: rounding.num > 0n ? rounding : ZERO }]),
-      convergence: prefixes.flatMap((prefix) => (prefix.tail ? [{ at: String(prefix.nodes), ...decimalEnclosure(...enclose(prefix, gamma)) }] : [])),
+      convergence: prefixes.flatMap((prefix) => (prefix.tail === null ? [] : [{ at: String(prefix.nodes), ...decimalEnclosure(...enclose(prefix, gamma)) }])),
     }
   }
-
-  /** Nodes in all, for whoever wants to tell the size of the run. */
-  get nodes(): number {
-    return nodeCount(this.chosen)
-  }
 }
 
-function gammaBounds(a: Arithmetic<AnyNumber>, logPower: Rational): [Rational, Rational] {
-  const gamma = reciprocalGamma(a, logPower)
-  return [a.lower(gamma), a.upper(gamma)]
+/** 1/Gamma(b) in [low, high] 2^-bits. */
+interface GammaBounds {
+  low: bigint
+  high: bigint
+  bits: number
 }
 
-/** The integral is within the sums' bounds, widened by the discretisation and, above, by the tail; the constant is it over Gamma(b). */
-function enclose(prefix: Prefix, [low, high]: [Rational, Rational]): [Rational, Rational] {
-  const error = add(prefix.edge, prefix.panels)
-  const lo = subtract(prefix.lo, error)
-  const hi = add(add(prefix.hi, error), prefix.tail ?? ZERO)
-  return [multiply(lo, lo.num < 0n ? high : low), multiply(hi, hi.num < 0n ? low : high)]
+function gammaBounds(a: Arithmetic<AnyNumber>, logPower: Rational): GammaBounds {
+  const [low, high] = a.fixedBounds(reciprocalGamma(a, logPower))
+  return { low, high, bits: a.precision }
+}
+
+/**
+ * The integral is within the sums' bounds, widened by the discretisation and, above, by the tail (P-1); the constant is it over
+ * Gamma(b). Both are in units of 2^-bits.
+ */
+function enclose(prefix: Prefix, { low, high, bits }: GammaBounds): [Rational, Rational] {
+  const error = prefix.edge + prefix.panels
+  const lo = prefix.lo - error
+  const hi = prefix.hi + error + (prefix.tail ?? 0n)
+  return [dyadic(lo * (lo < 0n ? high : low), 2 * bits), dyadic(hi * (hi < 0n ? low : high), 2 * bits)]
 }

@@ -91,13 +91,3 @@ export function writeParameters(p: PanelsParameters): Parameters {
     split: p.split,
   }
 }
-
-/** How far the last panel reaches. */
-export function lastEnd(p: PanelsParameters): Rational {
-  return p.panels[p.panels.length - 1].to
-}
-
-/** All nodes of the run. */
-export function nodeCount(p: PanelsParameters): number {
-  return p.panels.reduce((total, panel) => total + panel.nodes, p.edgeNodes)
-}
