@@ -12,7 +12,7 @@ export default defineConfig({
   plugins: [react(), tailwindcss()],
   // The engine in the page is the one in the sources that the page is built from.
   define: { __ENGINE_RELEASE__: JSON.stringify(readEngineRelease()) },
-  build: { outDir: '../dist/client', emptyOutDir: true, target: 'es2022' },
+  build: { outDir: '../dist/client', emptyOutDir: true, target: 'es2022', rolldownOptions: { checks: { bundlerTimings: false } } },
   worker: { format: 'es' },
   test: {
     root,

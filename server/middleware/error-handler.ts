@@ -13,7 +13,8 @@ function parserProblem(error: { status?: unknown; type?: unknown; limit?: unknow
   if (error.type === 'entity.parse.failed') return badRequest('malformed_json', 'The body is not JSON.')
   if (error.type === 'entity.too.large') return tooLarge(`The body is larger than ${Number(error.limit)} bytes.`)
   if (error.type === 'encoding.unsupported' || error.type === 'charset.unsupported') return unsupportedType('Send the body as UTF-8 JSON.')
-  if (error.status === 404) return notFound('file')
+  // From the file server: 403 is a path that leads out of its folder.
+  if (error.status === 404 || error.status === 403) return notFound('file')
   if (typeof error.status === 'number' && error.status >= 400 && error.status < 500) return badRequest('malformed_request', 'The request is malformed.')
   return undefined
 }

@@ -1,17 +1,28 @@
-import { existsSync, readFileSync } from 'node:fs'
-import { join } from 'node:path'
-import express, { Router } from 'express'
+import { existsSync } from 'node:fs'
+import { extname, join } from 'node:path'
+import express, { Router, type RequestHandler } from 'express'
+
+/** Answers with the gzip that the build has put beside a file, to whoever takes it. */
+const preferGzip = (folder: string): RequestHandler => (req, res, next) => {
+  const isThere = /^\/[\w.-]+$/.test(req.path) && existsSync(join(folder, `${req.path}.gz`))
+  if (!isThere) return next()
+  res.vary('Accept-Encoding')
+  if (!req.acceptsEncodings('gzip')) return next()
+  res.set('Content-Encoding', 'gzip').type(extname(req.path))
+  req.url = `${req.path}.gz`
+  next()
+}
 
 /** Serves the built client: hashed assets for good, and its page under every address that is not a file, so that history routes work. */
 export function staticClient(folder: string): Router {
   const router = Router()
+  const assets = join(folder, 'assets')
   const page = join(folder, 'index.html')
-  router.use('/assets', express.static(join(folder, 'assets'), { immutable: true, maxAge: '1y', index: false, fallthrough: false }))
+  router.use('/assets', preferGzip(assets), express.static(assets, { immutable: true, maxAge: '1y', index: false, fallthrough: false }))
   router.use(express.static(folder, { index: false, maxAge: 0 }))
   router.get(/.*/, (req, res, next) => {
-    if (!existsSync(page)) return next()
-    if (!req.accepts('html')) return next()
-    res.set('Cache-Control', 'no-cache').type('html').send(readFileSync(page))
+    if (!req.accepts('html') || !existsSync(page)) return next()
+    res.set('Cache-Control', 'no-cache').sendFile(page)
   })
   return router
 }

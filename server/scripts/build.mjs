@@ -1,7 +1,8 @@
 import { spawnSync } from 'node:child_process'
-import { existsSync, mkdirSync, readdirSync, renameSync, rmSync, writeFileSync } from 'node:fs'
+import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { join, relative } from 'node:path'
 import { pathToFileURL } from 'node:url'
+import { gzipSync } from 'node:zlib'
 import { withLock } from './lock.mjs'
 import { ensurePackages } from './packages.mjs'
 import { root, runMain, say, SetupError } from './say.mjs'
@@ -15,6 +16,7 @@ const dist = join(root, 'dist')
  * @property {string} what is told to the person who waits
  * @property {string[]} sources
  * @property {(outDir: string) => string[]} command arguments for node; it writes to outDir, given relative to the project
+ * @property {(folder: string) => void} [finish] what is left to do with the result
  */
 
 /** @type {Build} */
@@ -31,6 +33,22 @@ const client = {
   what: 'Building the client',
   sources: ['client', 'shared', 'vite.config.ts', 'node_modules/.merestone-stamp'],
   command: (outDir) => ['node_modules/vite/bin/vite.js', 'build', '--outDir', `../${outDir}`, '--logLevel', 'warn'],
+  finish: (folder) => compressFolder(join(folder, 'assets')),
+}
+
+const COMPRESSIBLE = /\.(js|css|svg|json|wasm|ttf)$/
+const WORTH_BYTES = 1_500
+
+/**
+ * Puts a gzip beside each file that gains by it, so that the server need not compress the same bytes again and again.
+ * @param {string} folder
+ */
+function compressFolder(folder) {
+  if (!existsSync(folder)) return
+  for (const name of readdirSync(folder).filter((file) => COMPRESSIBLE.test(file))) {
+    const content = readFileSync(join(folder, name))
+    if (content.length >= WORTH_BYTES) writeFileSync(join(folder, `${name}.gz`), gzipSync(content, { level: 9 }))
+  }
 }
 
 /**
@@ -38,7 +56,7 @@ const client = {
  * comes with what it tells of.
  * @param {Build} build
  */
-async function ensure({ name, what, sources, command }) {
+async function ensure({ name, what, sources, command, finish }) {
   const place = join(dist, name)
   const isFresh = () => readStamp(join(place, '.stamp')) === stampOf(sources)
   if (isFresh()) return
@@ -55,6 +73,7 @@ async function ensure({ name, what, sources, command }) {
       throw new SetupError(`${what} failed; the compiler's words are above.`)
     }
     mkdirSync(draft, { recursive: true })
+    finish?.(draft)
     writeFileSync(join(draft, '.stamp'), stamp)
     if (existsSync(place)) renameSync(place, old)
     renameSync(draft, place)

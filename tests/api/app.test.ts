@@ -1,6 +1,13 @@
+import { mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs'
+import { tmpdir } from 'node:os'
+import { join } from 'node:path'
+import { gzipSync } from 'node:zlib'
+import express from 'express'
 import request from 'supertest'
-import { describe, expect, it } from 'vitest'
+import { afterAll, describe, expect, it } from 'vitest'
 import { createApp } from '../../server/app.ts'
+import { errorHandler, unknownAddress } from '../../server/middleware/error-handler.ts'
+import { staticClient } from '../../server/middleware/static-client.ts'
 
 describe('the web application', () => {
   const app = createApp()
@@ -25,5 +32,42 @@ describe('the web application', () => {
   it('refuses a change without the header that only our own pages send', async () => {
     const response = await request(app).post('/api/v1/session').send({}).expect(403)
     expect(response.body.code).toBe('cross_site_request')
+  })
+})
+
+describe('the built client', () => {
+  const folder = mkdtempSync(join(tmpdir(), 'merestone-client-'))
+  const script = `console.log(${JSON.stringify('x'.repeat(2_000))})`
+  mkdirSync(join(folder, 'assets'))
+  writeFileSync(join(folder, 'index.html'), '<!doctype html><title>Merestone</title>')
+  writeFileSync(join(folder, 'assets', 'main-abc.js'), script)
+  writeFileSync(join(folder, 'assets', 'main-abc.js.gz'), gzipSync(script))
+  writeFileSync(join(folder, '.stamp'), 'not for readers')
+  const app = express().use(staticClient(folder), unknownAddress).use(errorHandler)
+  afterAll(() => rmSync(folder, { recursive: true }))
+
+  it('is served under every address of a page, so that a shared link opens', async () => {
+    for (const path of ['/', '/constants/MST-0042', '/runs?page=2']) {
+      const response = await request(app).get(path).set('Accept', 'text/html').expect(200)
+      expect(response.text).toContain('<title>Merestone</title>')
+      expect(response.headers['cache-control']).toBe('no-cache')
+    }
+  })
+
+  it('comes compressed to whoever takes that, and whole to whoever does not', async () => {
+    const small = await request(app).get('/assets/main-abc.js').set('Accept-Encoding', 'gzip').expect(200)
+    expect(small.headers).toMatchObject({ 'content-encoding': 'gzip', vary: 'Accept-Encoding' })
+    expect(small.headers['content-type']).toMatch(/^text\/javascript/)
+    expect(small.headers['cache-control']).toContain('immutable')
+    expect(small.text).toBe(script)
+    const whole = await request(app).get('/assets/main-abc.js').set('Accept-Encoding', 'identity').expect(200)
+    expect(whole.headers['content-encoding']).toBeUndefined()
+    expect(whole.text).toBe(script)
+  })
+
+  it('answers what is not there with 404, and gives out nothing else of the disk', async () => {
+    for (const path of ['/assets/gone.js', '/assets/..%2f..%2fpackage.json', '/assets/%2e%2e%2f.stamp']) await request(app).get(path).expect(404)
+    await request(app).get('/.stamp').set('Accept', 'application/json').expect(404)
+    await request(app).post('/constants').expect(404)
   })
 })
