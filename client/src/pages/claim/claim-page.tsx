@@ -6,6 +6,7 @@ import { paths } from '../../app/paths.ts'
 import { DONE_WORDS } from '../../features/claims/act-words.ts'
 import { claimQuery, useActs, useDeleteClaim, useEditClaim, useKeepVerdictDraft, useRemoveEvidence, useUploadEvidence } from '../../features/claims/queries.ts'
 import type { DoAct } from '../../features/claims/queries.ts'
+import { ClaimRepetition } from '../../features/repeat/components/claim-repetition.tsx'
 import { useSession } from '../../features/session/queries.ts'
 import { ClaimView } from './claim-view.tsx'
 
@@ -46,6 +47,7 @@ function Loaded({ claim }: { claim: Claim }) {
       onUpload={(file) => upload.mutateAsync(file)}
       onRemoveEvidence={(evidenceId) => removeEvidence.mutateAsync(evidenceId)}
       onKeepDraft={(text) => keepDraft.mutateAsync(text)}
+      repetition={claim.certificate && <ClaimRepetition claimId={claim.id} />}
     />
   )
 }

@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react'
 import type { Claim } from '../../../../shared/schemas/claim.ts'
 import { paths } from '../../app/paths.ts'
 import { ErrorBudget } from '../../components/charts/error-budget.tsx'
@@ -35,6 +36,8 @@ interface LoadedProps {
   onUpload: (file: File) => Promise<unknown>
   onRemoveEvidence: (evidenceId: string) => Promise<unknown>
   onKeepDraft: (text: string) => Promise<unknown>
+  /** The certificate checked and repeated on the reader's own machine, where there is one. */
+  repetition?: ReactNode
 }
 
 export type ClaimViewProps = LoadedProps | { claim: undefined; error: unknown; onRetry: () => void }
@@ -53,7 +56,7 @@ export function ClaimView(props: ClaimViewProps) {
   )
 }
 
-function Loaded({ claim, done, mayReadRuns, onAct, onEdit, onDelete, onUpload, onRemoveEvidence, onKeepDraft }: LoadedProps) {
+function Loaded({ claim, done, mayReadRuns, onAct, onEdit, onDelete, onUpload, onRemoveEvidence, onKeepDraft, repetition }: LoadedProps) {
   const may = (acts: string[]) => acts.some((act) => claim.abilities[act])
   return (
     <Page
@@ -109,14 +112,14 @@ function Loaded({ claim, done, mayReadRuns, onAct, onEdit, onDelete, onUpload, o
           <ObjectionThreads objections={claim.objections} onAct={onAct} />
         </Section>
       )}
-      <ClaimMatter claim={claim} onAct={onAct} onUpload={onUpload} onRemoveEvidence={onRemoveEvidence} />
+      <ClaimMatter claim={claim} onAct={onAct} onUpload={onUpload} onRemoveEvidence={onRemoveEvidence} repetition={repetition} />
       <Caution claim={claim} />
     </Page>
   )
 }
 
 /** What the claim rests on, part by part. */
-function ClaimMatter({ claim, onAct, onUpload, onRemoveEvidence }: Pick<LoadedProps, 'claim' | 'onAct' | 'onUpload' | 'onRemoveEvidence'>) {
+function ClaimMatter({ claim, onAct, onUpload, onRemoveEvidence, repetition }: Pick<LoadedProps, 'claim' | 'onAct' | 'onUpload' | 'onRemoveEvidence' | 'repetition'>) {
   const { outcome, enclosure } = claim
   const meeting = claim.rechecks.flatMap((recheck) => (recheck.enclosure ? [{ label: `recheck, ${recheck.method}, ${recheck.arithmetic}`, ...recheck.enclosure }] : []))
   return (
@@ -128,7 +131,7 @@ function ClaimMatter({ claim, onAct, onUpload, onRemoveEvidence }: Pick<LoadedPr
       )}
       {claim.rechecks.length > 0 && (
         <Section title="Rechecks">
-          <RecheckTable claim={claim} />
+          <RecheckTable claim={claim} mayReadRuns={mayReadRuns} />
           {enclosure && meeting.length > 0 && (
             <div className="print:hidden">
               <Nest enclosures={[{ label: claimName(claim), ...enclosure }, ...meeting]} />
@@ -139,6 +142,11 @@ function ClaimMatter({ claim, onAct, onUpload, onRemoveEvidence }: Pick<LoadedPr
       {enclosure && (
         <Section title="Check digits of a manuscript" className="mt-10 print:hidden">
           <DigitCheck lo={enclosure.lo} hi={enclosure.hi} />
+        </Section>
+      )}
+      {repetition && (
+        <Section title="Repeat it yourself" id="repeat" className="mt-10 print:hidden">
+          {repetition}
         </Section>
       )}
       <Section title="Evidence">
