@@ -3,6 +3,7 @@ import type { Json } from '../audit/canonical.ts'
 import { inTransaction } from '../db.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 import { Group } from '../models/group.ts'
+import { refreshGroup } from './constant-best.ts'
 
 type Rules = Pick<Group, 'confirmationsNeeded' | 'recheckNeeded' | 'reminderDays' | 'public'>
 type RulesPatch = { [Rule in keyof Rules]?: Rules[Rule] | undefined }
@@ -16,6 +17,7 @@ export async function changeRules(actor: SignedInMember, patch: RulesPatch): Pro
     const values = (source: RulesPatch): { [key: string]: Json } => Object.fromEntries(changed.map((rule) => [rule, source[rule] as Json]))
     const detail = { from: values(group), to: values(patch) }
     await group.update(Object.fromEntries(changed.map((rule) => [rule, patch[rule]])), { transaction })
+    if (changed.includes('public')) await refreshGroup(transaction, group.id)
     await recordAudit(transaction, { act: 'group.rules', actorId: actor.id, groupId: group.id, subject: { kind: 'group', id: group.id, label: group.name }, detail })
     return group
   })

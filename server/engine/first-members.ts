@@ -62,10 +62,22 @@ function membersUpTo(bound: bigint, primes: readonly number[], rule: Rule): bigi
 const FIRST_REACH = 1
 const LAST_REACH = 2 ** 22
 
+/** Lists that were asked for before, the newest last: pages of the same constants are read again and again. */
+const known = new Map<string, string[]>()
+const MOST_KNOWN = 500
+
 /** The least members of the set that a constant sums over, as decimal text; the primes for a product over primes. */
 export function firstMembers(definition: Definition, count: number): string[] {
   const set: SetOfIntegers = definition.type === 'series' ? definition.set : { kind: 'primes', exclude: definition.type === 'over-primes' ? definition.exclude : [] }
   if (set.kind === 'finite') return set.members.slice(0, count)
+  const key = JSON.stringify([set, count])
+  const members = known.get(key) ?? listMembers(set, count)
+  known.set(key, members)
+  if (known.size > MOST_KNOWN) known.delete(known.keys().next().value ?? '')
+  return members
+}
+
+function listMembers(set: Exclude<SetOfIntegers, { kind: 'finite' }>, count: number): string[] {
   const rule = ruleOf(set)
   const small = primesUpTo(2_000).filter(rule.allowed)
   const factors = rule.k ?? 1
