@@ -4,6 +4,7 @@ import { derivatives } from './methods/derivatives.ts'
 import { expansion } from './methods/expansion.ts'
 import { finite } from './methods/finite.ts'
 import type { MethodModule } from './methods/method.ts'
+import { panels } from './methods/panels.ts'
 import type { Definition } from './sets/definition.ts'
 import { partialSum } from './methods/partial-sum.ts'
 import { trapezoid } from './methods/trapezoid.ts'
@@ -11,6 +12,7 @@ import { trapezoid } from './methods/trapezoid.ts'
 /** Every method there is; a new one is one file and one entry here. */
 export const METHODS: Partial<Record<Method, MethodModule>> = {
   transform: trapezoid,
+  panels,
   expansion,
   'partial-sum': partialSum,
   finite,
