@@ -19,9 +19,9 @@ export type Group = z.infer<typeof group>
 
 /** PATCH /group */
 export const groupPatch = z.object({
-  confirmationsNeeded: z.number().int().min(1, 'at least one').max(9, 'at most 9').optional(),
+  confirmationsNeeded: z.number('write a whole number').int('write a whole number').min(1, 'at least one').max(9, 'at most 9').optional(),
   recheckNeeded: z.boolean().optional(),
-  reminderDays: z.number().int().min(1, 'at least one day').max(365, 'at most a year').optional(),
+  reminderDays: z.number('write a whole number').int('write a whole number').min(1, 'at least one day').max(365, 'at most a year').optional(),
   public: z.boolean().optional(),
 })
 

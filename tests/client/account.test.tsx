@@ -53,7 +53,7 @@ describe('password', () => {
     await userEvent.type(screen.getByLabelText('Password now'), 'wrong')
     await userEvent.type(screen.getByLabelText('New password'), 'seven quiet lighthouses')
     await userEvent.click(screen.getByRole('button', { name: 'Change password' }))
-    expect(screen.getByLabelText('Password now')).toHaveAccessibleDescription('is not your password')
+    expect(screen.getByLabelText('Password now')).toHaveAccessibleDescription('This is not your password.')
     expect(screen.getByLabelText('New password')).toHaveValue('seven quiet lighthouses')
   })
   test('a short one is refused before it is sent', async () => {
@@ -112,7 +112,7 @@ describe('access tokens', () => {
     await userEvent.type(screen.getByRole('textbox', { name: 'Name' }), 'nightly')
     await userEvent.click(screen.getByRole('checkbox', { name: 'read' }))
     await userEvent.click(screen.getByRole('button', { name: 'Make an access token' }))
-    expect(screen.getByRole('alert')).toHaveTextContent('choose at least one')
+    expect(screen.getByRole('alert')).toHaveTextContent('Choose at least one.')
     expect(create).not.toHaveBeenCalled()
   })
   test('revoking asks once; a refusal keeps the question open with its reason', async () => {

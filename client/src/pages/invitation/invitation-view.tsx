@@ -45,7 +45,7 @@ function UsedUp({ error }: { error: ApiError }) {
 }
 
 function Acceptance({ offer, signedInAs, onAccept }: { offer: InvitationOffer; signedInAs: string | null; onAccept: InvitationViewProps['onAccept'] }) {
-  const { form, submit, errorAt, rootError, sending } = useApiForm(invitationAcceptance, { name: offer.name, password: '' }, onAccept)
+  const { form, submit, errorAt, rootError, sending } = useApiForm(invitationAcceptance, { name: offer.name, password: '' }, (values) => onAccept(values))
   return (
     <div className="grid gap-12 wide:grid-cols-[26rem_1fr]">
       <form onSubmit={(event) => void submit(event)} noValidate className="grid content-start gap-5">

@@ -59,7 +59,7 @@ export function SetPasswordView({ offer, onSet }: SetPasswordViewProps) {
 }
 
 function NewPassword({ offer, onSet }: { offer: PasswordResetOffer; onSet: SetPasswordViewProps['onSet'] }) {
-  const { form, submit, errorAt, rootError, sending } = useApiForm(passwordResetCompletion, { password: '' }, onSet)
+  const { form, submit, errorAt, rootError, sending } = useApiForm(passwordResetCompletion, { password: '' }, (values) => onSet(values))
   return (
     <form onSubmit={(event) => void submit(event)} noValidate className="grid max-w-[26rem] gap-5">
       {rootError && (

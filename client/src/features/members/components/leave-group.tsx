@@ -28,7 +28,7 @@ export function LeaveGroup({ group, onLeave }: LeaveGroupProps) {
 }
 
 function LeaveForm({ group, onLeave, onClose }: LeaveGroupProps & { onClose: () => void }) {
-  const { form, submit, errorAt, rootError, sending } = useApiForm(departureInput, { password: '' }, onLeave)
+  const { form, submit, errorAt, rootError, sending } = useApiForm(departureInput, { password: '' }, (values) => onLeave(values))
   return (
     <form onSubmit={(event) => void submit(event)} noValidate className="grid gap-4">
       <p>You are signed out everywhere at once, your access tokens stop working, and you can come back only by a new invitation. Your drafts stay with the group.</p>

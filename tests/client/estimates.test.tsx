@@ -1,0 +1,90 @@
+import { render, screen } from '@testing-library/react'
+import { userEvent } from '@testing-library/user-event'
+import { MemoryRouter } from 'react-router-dom'
+import { describe, expect, test, vi } from 'vitest'
+import { estimateFiltersOf, filterEstimates, printedRange, shortTitle } from '../../client/src/features/estimates/estimate-filters.ts'
+import { Printed } from '../../client/src/features/estimates/components/printed.tsx'
+import { EstimateView } from '../../client/src/pages/estimate/estimate-view.tsx'
+import { EstimatesView } from '../../client/src/pages/estimates/estimates-view.tsx'
+import { ESTIMATES } from '../../shared/engine/estimates/library.ts'
+import type { Estimate } from '../../shared/schemas/estimate.ts'
+
+const estimate = (more: Partial<Estimate> = {}): Estimate => ({
+  id: 'theta-one', title: 'Somebody 2018, k = 1, x >= 908994923', statementLatex: '|\\theta(x)-x| < 0.001\\,\\frac{x}{\\log x}', statement: '|theta(x) - x| < 0.001 x / log x',
+  validFor: 'x >= 908994923', conditional: false, condition: null, source: 'A journal 45 (2018), Theorem 4.2', checked: 'Checked to 10^8.', state: 'in-force', stateSince: null, usedBy: [], ...more,
+})
+const have = <Data,>(data: Data) => ({ data, error: null, onRetry: () => undefined })
+const all = [estimate(), estimate({ id: 'theta-two', title: 'Another 1976', conditional: true, condition: 'the Riemann hypothesis' }), estimate({ id: 'theta-three', title: 'Third 2021', state: 'in-doubt', stateSince: '2026-03-01T08:00:00Z', usedBy: [{ claimNumber: 'MST-0001/1', usedAt: 'x >= 10^9' }] })]
+const idsOf = (search: string) => filterEstimates(all, estimateFiltersOf(new URLSearchParams(search))).map(({ id }) => id)
+
+describe('filters', () => {
+  test.each([
+    ['', ['theta-one', 'theta-two', 'theta-three']],
+    ['conditional=yes', ['theta-two']],
+    ['conditional=no&state=in-force', ['theta-one']],
+    ['state=in-doubt', ['theta-three']],
+    ['use=used', ['theta-three']],
+    ['text=riemann', ['theta-two']],
+    ['text=journal+2021', ['theta-three']],
+    ['conditional=perhaps&state=gone', ['theta-one', 'theta-two', 'theta-three']],
+  ])('%j finds %j', (search, ids) => {
+    expect(idsOf(search)).toEqual(ids)
+  })
+  test('every estimate of the library is found by its own id', () => {
+    const views = ESTIMATES.map((each) => estimate(each))
+    for (const { id } of ESTIMATES) expect(filterEstimates(views, estimateFiltersOf(new URLSearchParams({ text: id }))).map((found) => found.id)).toContain(id)
+  })
+})
+
+describe('print', () => {
+  test('a range has its signs and its thin spaces', () => {
+    expect(printedRange('1427 <= x <= 10^19')).toBe('1427\u00a0≤\u00a0x\u00a0≤\u00a010^19')
+    expect(printedRange('x >= 908994923')).toBe('x\u00a0≥\u00a0908\u202f994\u202f923')
+    expect(printedRange('1.101 * 10^26')).toBe('1.101\u00a0·\u00a010^26')
+  })
+  test('powers are raised', () => {
+    const { container } = render(<Printed text="x >= e^28, radius 10^-40" />)
+    expect([...container.querySelectorAll('sup')].map((sup) => sup.textContent)).toEqual(['28', '−40'])
+    expect(container).toHaveTextContent('x ≥ e28, radius 10−40')
+  })
+  test('a title leaves its range to the column beside it', () => {
+    expect(shortTitle('Dusart 2018, k = 1, x >= 908994923')).toBe('Dusart 2018, k = 1')
+    expect(shortTitle('Buthe 2018, theta below x')).toBe('Buthe 2018, theta below x')
+  })
+})
+
+describe('the library', () => {
+  const show = (filters: string, onFilter = vi.fn()) => {
+    render(<MemoryRouter><EstimatesView estimates={have(all)} filters={estimateFiltersOf(new URLSearchParams(filters))} onFilter={onFilter} /></MemoryRouter>)
+    return onFilter
+  }
+  test('says what each is conditional on and whether it is in force', () => {
+    show('')
+    expect(screen.getByText('on the Riemann hypothesis')).toBeInTheDocument()
+    expect(screen.getByText(/in doubt/, { selector: 'span' })).toHaveTextContent('in doubt since 1 March 2026')
+    expect(screen.getByText('3 estimates')).toBeInTheDocument()
+  })
+  test('choosing a filter keeps the others', async () => {
+    const filter = show('text=theta')
+    await userEvent.selectOptions(screen.getByRole('combobox', { name: 'Conditional' }), 'yes')
+    expect(filter).toHaveBeenCalledWith({ text: 'theta', conditional: 'yes', state: '', use: '' })
+  })
+  test('where nothing fits, there is a way back', () => {
+    show('text=nothing-like-it')
+    expect(screen.getByText('No estimate fits these filters.')).toBeInTheDocument()
+    expect(screen.getByRole('link', { name: 'Show all 3' })).toHaveAttribute('href', '/estimates')
+  })
+})
+
+describe('one estimate', () => {
+  test('names the claims that rest on it, and the point where it was used', () => {
+    render(<MemoryRouter><EstimateView estimate={have(all[2] as Estimate)} /></MemoryRouter>)
+    expect(screen.getByRole('link', { name: 'MST-0001/1' })).toHaveAttribute('href', '/claims/MST-0001-1')
+    expect(screen.getByText('In doubt.')).toBeInTheDocument()
+  })
+  test('a conditional one says so before anything else', () => {
+    render(<MemoryRouter><EstimateView estimate={have(all[1] as Estimate)} /></MemoryRouter>)
+    expect(screen.getByText('Conditional.')).toBeInTheDocument()
+    expect(screen.getByText('No signed claim uses it yet.')).toBeInTheDocument()
+  })
+})
