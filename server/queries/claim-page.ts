@@ -16,20 +16,43 @@ export interface ReadClaim {
   view: View
 }
 
-/** A claim by id or number; refuses whoever may not read it, in the same words as where there is none. */
-export async function readClaim(reader: Reader, reference: string): Promise<ReadClaim> {
+/** The id of a claim that a member names to act on it; whether it is open to them is judged with the act. */
+export async function claimIdFor(reference: string): Promise<string> {
   const id = await claimIdOf(reference)
-  const row = id === undefined ? undefined : await findClaim(id)
-  if (!row) throw notOpen(reader !== undefined)
-  const standing = reader && (await standingOf(reader, { id: row.id, kind: row.kind, groupId: row.group_id, authorId: row.author_id }))
-  const view = viewOf({ signedAt: row.signed_at, groupPublic: row.group_public }, standing)
-  if (view === 'none') throw notOpen(reader !== undefined)
-  return { row, standing, view }
+  if (id === undefined) throw notOpen(true)
+  return id
 }
 
-/** Everything that the page of a claim shows to this reader; of drafts and reviews only what they may read. */
+/** A claim by id or number; undefined where there is none that this reader may read. */
+async function openClaim(reader: Reader, reference: string): Promise<ReadClaim | undefined> {
+  const id = await claimIdOf(reference)
+  const row = id === undefined ? undefined : await findClaim(id)
+  if (!row) return undefined
+  const standing = reader && (await standingOf(reader, { id: row.id, kind: row.kind, groupId: row.group_id, authorId: row.author_id }))
+  const view = viewOf({ signedAt: row.signed_at, groupPublic: row.group_public }, standing)
+  return view === 'none' ? undefined : { row, standing, view }
+}
+
+/** A claim by id or number; refuses whoever may not read it, in the same words as where there is none. */
+export async function readClaim(reader: Reader, reference: string): Promise<ReadClaim> {
+  const read = await openClaim(reader, reference)
+  if (!read) throw notOpen(reader !== undefined)
+  return read
+}
+
+/** Everything that the page of a claim shows to this reader. */
 export async function claimDetail(reader: Reader, reference: string): Promise<Claim> {
-  const { row, standing, view } = await readClaim(reader, reference)
+  return detailOf(reader, await readClaim(reader, reference))
+}
+
+/** The same, or undefined where the reader has no view of the claim, as who has given a review back. */
+export async function claimDetailIfOpen(reader: Reader, reference: string): Promise<Claim | undefined> {
+  const read = await openClaim(reader, reference)
+  return read && detailOf(reader, read)
+}
+
+/** Of drafts and reviews only what this reader may read. */
+async function detailOf(reader: Reader, { row, standing, view }: ReadClaim): Promise<Claim> {
   const inside = view === 'work'
   const leads = standing !== undefined && standing.sameGroup && hasRight(standing.roles, 'claims.decide')
   const [facts, evidence, assignments, objections, rechecks, conflicts, history, possible, draftVerdict] = await Promise.all([

@@ -89,7 +89,7 @@ export async function claimRows(ids: readonly string[]): Promise<ClaimRow[]> {
   return select<ClaimRow>(`SELECT ${COLUMNS} ${FROM} WHERE cl.id = ANY ($ids::uuid[])`, { ids })
 }
 
-/** The id of a claim that is named by its id or by its number in an address (MST-0042-1); undefined where there is none. */
+/** The id of a claim that is named by its id or by its number in an address (MST-0042-1); undefined where the number is not given. */
 export async function claimIdOf(reference: string): Promise<string | undefined> {
   const numbered = parseClaimNumber(reference)
   if (!numbered) return reference

@@ -9,9 +9,7 @@ import { signedIn, signedInFor } from '../middleware/authenticate.ts'
 import { originOf } from '../middleware/origin.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 import { validate, type Validated } from '../middleware/validate.ts'
-import { viewOf } from '../policies/claim.ts'
-import { claimDetail, readClaim } from '../queries/claim-page.ts'
-import { standingOf } from '../queries/claim-review.ts'
+import { claimDetailIfOpen, claimIdFor } from '../queries/claim-page.ts'
 
 /** The acts of a claim's life, each under its own address. Who may do what and when is in shared/claim-life.ts. */
 export const claimAct = Router()
@@ -44,11 +42,10 @@ for (const name of Object.keys(HANDLERS) as Act[]) {
   const request = { params: z.object({ id: claimReference }), body: act[name] }
   const handle = HANDLERS[name] as (member: SignedInMember, id: string, input: unknown, address: string) => Promise<void>
   claimAct.post(`/:id/${name}`, OPEN_TO_TOKENS.includes(name) ? signedInFor('draft') : signedIn, validate(request), async (req: Validated<typeof request>, res) => {
-    const { row } = await readClaim(req.member, req.input.id)
-    await handle(req.member, row.id, req.input, originOf(req).address)
-    // Who gives a review back may have no view of the claim any more.
-    const standing = await standingOf(req.member, { id: row.id, kind: row.kind, groupId: row.group_id, authorId: row.author_id })
-    if (viewOf({ signedAt: row.signed_at, groupPublic: row.group_public }, standing) === 'none') res.status(204).end()
-    else res.json(await claimDetail(req.reader, row.id))
+    const id = await claimIdFor(req.input.id)
+    await handle(req.member, id, req.input, originOf(req).address)
+    const detail = await claimDetailIfOpen(req.member, id)
+    if (detail) res.json(detail)
+    else res.status(204).end()
   })
 }

@@ -9,7 +9,7 @@ import { validate, type Validated } from '../middleware/validate.ts'
 import { presentClaimSummary } from '../presenters/claim.ts'
 import { certificateOf } from '../queries/claim-certificate.ts'
 import { listClaims } from '../queries/claim.ts'
-import { claimDetail, readClaim } from '../queries/claim-page.ts'
+import { claimDetail, claimIdFor, readClaim } from '../queries/claim-page.ts'
 
 /** Claims. What is signed and published is open to everybody; the acts of a claim's life are in claim-act.ts. */
 export const claim = Router()
@@ -36,20 +36,18 @@ claim.get('/:id', validate(one), async (req: Validated<typeof one>, res) => {
 })
 
 claim.patch('/:id', signedInFor('draft'), validate(patch), async (req: Validated<typeof patch>, res) => {
-  const { row } = await readClaim(req.member, req.input.id)
-  await editClaim(req.member, row.id, req.input)
-  res.json(await claimDetail(req.reader, row.id))
+  const id = await claimIdFor(req.input.id)
+  await editClaim(req.member, id, req.input)
+  res.json(await claimDetail(req.reader, id))
 })
 
 claim.delete('/:id', signedInFor('draft'), validate(one), async (req: Validated<typeof one>, res) => {
-  const { row } = await readClaim(req.member, req.input.id)
-  await deleteClaim(req.member, row.id)
+  await deleteClaim(req.member, await claimIdFor(req.input.id))
   res.status(204).end()
 })
 
 claim.put('/:id/verdict-draft', signedIn, validate(draft), async (req: Validated<typeof draft>, res) => {
-  const { row } = await readClaim(req.member, req.input.id)
-  await keepVerdictDraft(req.member, row.id, req.input.text)
+  await keepVerdictDraft(req.member, await claimIdFor(req.input.id), req.input.text)
   res.status(204).end()
 })
 

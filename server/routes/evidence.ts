@@ -10,7 +10,7 @@ import { validate, type Validated } from '../middleware/validate.ts'
 import { Evidence } from '../models/evidence.ts'
 import { presentEvidence } from '../presenters/claim.ts'
 import { evidenceOf } from '../queries/claim-parts.ts'
-import { readClaim } from '../queries/claim-page.ts'
+import { claimIdFor, readClaim } from '../queries/claim-page.ts'
 import { uploadedFile } from './evidence-upload.ts'
 
 /** Files in support of claims: uploaded to a claim, read and removed by their own address. */
@@ -25,15 +25,14 @@ evidence.post(
   validate(upload),
   // Refused before the file is read, where it would be refused.
   async (req: Validated<typeof upload>, _res, next) => {
-    const { row } = await readClaim(req.member, req.input.id)
-    await assertMayAct(req.member, row.id, 'attach')
+    await assertMayAct(req.member, await claimIdFor(req.input.id), 'attach')
     next()
   },
   uploadedFile,
   async (req: Validated<typeof upload>, res) => {
-    const { row } = await readClaim(req.member, req.input.id)
-    const fileId = await attachEvidence(req.member, row.id, { name: req.file!.originalname, content: req.file!.buffer })
-    const file = (await evidenceOf(row.id)).find((known) => known.id === fileId)!
+    const claimId = await claimIdFor(req.input.id)
+    const fileId = await attachEvidence(req.member, claimId, { name: req.file!.originalname, content: req.file!.buffer })
+    const file = (await evidenceOf(claimId)).find((known) => known.id === fileId)!
     res.status(201).location(`/api/v1/evidence/${fileId}`).json(presentEvidence(file))
   },
 )
