@@ -55,12 +55,12 @@ export class PanelsComputation implements Computation {
   }
 
   async runShard(index: number): Promise<ShardResult> {
-    const { piece, from, to } = this.blocks[index]
-    return writeBlock((await this.ready()).sum(piece, from, to))
+    const block = this.blocks[index]
+    return writeBlock(block, (await this.ready()).sum(block.piece, block.from, block.to))
   }
 
   async interim(results: (ShardResult | undefined)[]): Promise<Enclosure[] | null> {
-    const pieces = this.pieces(results.map((result) => (result === undefined ? null : readBlock(result))))
+    const pieces = this.pieces(this.blocks.map((block, i) => (results[i] === undefined ? null : readBlock(block, results[i]))))
     const bounds = await this.boundArithmetic()
     const gamma = gammaBounds(bounds, this.task.logPower)
     const found = this.list.map((_, index) => {
@@ -71,7 +71,8 @@ export class PanelsComputation implements Computation {
   }
 
   async combine(results: ShardResult[]): Promise<Outcome[]> {
-    const pieces = this.pieces(results.map(readBlock))
+    if (results.length !== this.shardCount) throw new Error('a run by panels is combined from the results of all its shards')
+    const pieces = this.pieces(results.map((result, i) => readBlock(this.blocks[i], result)))
     const bounds = await this.boundArithmetic()
     const gamma = gammaBounds(bounds, this.task.logPower)
     return this.list.map((_, index) => this.outcome(index, this.prefixes(bounds, pieces, index), gamma))
@@ -91,11 +92,11 @@ export class PanelsComputation implements Computation {
     return this.sweep
   }
 
-  /** The blocks of the leading pieces that are complete, piece by piece, their nodes checked to be in falling order throughout. */
+  /** The blocks of the leading pieces that are complete, piece by piece (null where missing), their nodes checked throughout (P-6). */
   private pieces(results: readonly (BlockResult | null)[]): BlockResult[][] {
     const pieces: BlockResult[][] = []
     for (let piece = 0; piece <= this.chosen.panels.length; piece++) {
-      const found = this.blocks.flatMap((block, index) => (block.piece === piece ? [results[index] ?? null] : []))
+      const found = results.filter((_, index) => this.blocks[index].piece === piece)
       const complete = found.filter((one) => one !== null)
       if (complete.length < found.length) break
       const nodes = complete.flatMap(({ first, last }) => (first.centre === last.centre ? [first] : [first, last]))

@@ -39,12 +39,21 @@ function logSeries(x: number, logLeast: number): number {
   return logLeast * -(1 + x) + log2(1 + 2 ** Math.min(logLeast, 500) / x)
 }
 
-/** Microseconds for one node at s on the reference machine: powers, zeta values, Newton's identities. heuristic: affects speed only */
+/**
+ * Microseconds for one node at s on the reference machine: powers, zeta values, Newton's identities. Shards are cut by it, so it
+ * is made of operations alone that are the same on every machine. heuristic: affects speed only
+ */
 export function nodeCost(p: { precision: number; terms: number; split: number; complexity: number }, s: number): number {
   const words = p.precision / 64
-  const orders = Math.min(p.precision / log2(p.split), p.precision / log2(p.split) / s) + 1
+  const orders = p.precision / roughLog2(p.split) / Math.max(1, s) + 1
   const product = 0.12 + 0.006 * words * words
-  return 40 + orders * (1.2 * p.terms * product + 4) + 0.25 * p.terms * (2 + product * words) + p.complexity ** 2 * 0.4
+  return 40 + orders * (1.2 * p.terms * product + 4) + 0.25 * p.terms * (2 + product * words) + p.complexity * p.complexity * 0.4
+}
+
+/** log2 of a whole number, linear between powers of 2. */
+function roughLog2(n: number): number {
+  const whole = 31 - Math.clz32(n)
+  return whole + n / (1 << whole) - 1
 }
 
 export function planPanels(input: PlanInput): PanelsParameters {

@@ -13,7 +13,8 @@ export interface Block {
   cost: number
 }
 
-export type BlockResult = BlockSums
+/** A block's sums and which block they are of, so that results of another cut are told. */
+export type BlockResult = BlockSums & Pick<Block, 'piece' | 'from' | 'to'>
 
 /** About as many shards as there are, so that progress is smooth, cores are kept busy and an interruption loses little. */
 const SHARDS = 48
@@ -37,9 +38,10 @@ export function cutIntoBlocks(p: PanelsParameters, cost: (t: number) => number):
   })
 }
 
-export function writeBlock(block: BlockSums): ShardResult {
+export function writeBlock({ piece, from, to }: Block, block: BlockSums): ShardResult {
   const text = (pair: { centre: bigint; reach: bigint }): string[] => [pair.centre.toString(), pair.reach.toString()]
   return {
+    pairs: [piece, from, to],
     sums: block.sums.map(([lo, hi]) => [lo.toString(), hi.toString()]),
     weights: Object.fromEntries(Object.entries(block.weights).map(([key, sizes]) => [key, sizes.map(String)])),
     first: text(block.first),
@@ -47,10 +49,24 @@ export function writeBlock(block: BlockSums): ShardResult {
   }
 }
 
-export function readBlock(result: ShardResult): BlockResult {
-  const { sums, weights, first, last } = result as { sums: string[][]; weights: Record<string, string[]>; first: string[]; last: string[] }
+interface WrittenBlock {
+  pairs: [number, number, number]
+  sums: string[][]
+  weights: Record<string, string[]>
+  first: string[]
+  last: string[]
+}
+
+/** Reads the result of `block`; throws where it is that of another. */
+export function readBlock(block: Block, result: ShardResult): BlockResult {
+  const { pairs, sums, weights, first, last } = result as unknown as WrittenBlock
+  const [piece, from, to] = pairs
+  if (piece !== block.piece || from !== block.from || to !== block.to) throw new Error('these results belong to another cut of the run')
   const pair = ([centre, reach]: string[]) => ({ centre: BigInt(centre), reach: BigInt(reach) })
   return {
+    piece,
+    from,
+    to,
     sums: sums.map(([lo, hi]) => [BigInt(lo), BigInt(hi)]),
     weights: Object.fromEntries(Object.entries(weights).map(([key, sizes]) => [key, sizes.map(BigInt)])),
     first: pair(first),
