@@ -12,6 +12,7 @@ import { durationInWords, secondsInWords } from '../../client/src/components/ui/
 import { STATE_WORDS, StateMark } from '../../client/src/components/state-mark/state-mark.tsx'
 import type { MarkedState } from '../../client/src/components/state-mark/state-mark.tsx'
 import { ApiError } from '../../client/src/lib/errors.ts'
+import { sentence } from '../../client/src/lib/sentence.ts'
 import { claimState } from '../../shared/schemas/claim.ts'
 
 describe('state mark', () => {
@@ -36,6 +37,12 @@ describe('field', () => {
     expect(input).toBeInvalid()
     expect(input).toHaveAccessibleDescription('at most 1000 Write a whole number.')
     expect(screen.getByRole('alert')).toHaveTextContent('Write a whole number.')
+  })
+})
+
+describe('what schemas say, as sentences', () => {
+  test.each([['is needed', 'This is needed.'], ['write a whole number', 'Write a whole number.'], ['k must be at least 1', 'k must be at least 1.'], ['', '']])('%j', (words, text) => {
+    expect(sentence(words)).toBe(text)
   })
 })
 

@@ -22,8 +22,8 @@ describe('reading the form of a new run', () => {
     expect(readRunForm({ ...BLANK_RUN, k: 'three', exclude: '2, x', power: '1,5', digits: '4000' }).errors).toEqual({
       k: 'Write a whole number, 1 or more.',
       exclude: 'Write primes, separated by commas.',
-      power: 'Write a whole number, a fraction such as 1/2, or a decimal.',
-      digits: 'At most 1000 digits.',
+      power: 'write a whole number, a fraction such as 1/2, or a decimal',
+      digits: 'at most 1000 digits',
     })
   })
   test('what the server says of a path stands at its field', () => {

@@ -68,6 +68,12 @@ describe('register', () => {
     await userEvent.selectOptions(screen.getByRole('combobox', { name: 'Set' }), 'primes')
     expect(filter).toHaveBeenLastCalledWith(expect.objectContaining({ text: '1.6366', set: 'primes' }))
   })
+  test('a filter that makes no sense is told at the filter, and asking again is not offered', async () => {
+    await show(register({ filtered: true, filters: { k: 'abc' }, error: new ApiError({ status: 400, code: 'invalid_input', detail: 'Some entries need another look.', fields: [{ path: 'k', message: 'must be a number' }] }) }))
+    expect(screen.getByRole('textbox', { name: 'k' })).toHaveAccessibleDescription('This must be a number.')
+    expect(screen.getByText('These filters can’t be used')).toBeInTheDocument()
+    expect(screen.queryByRole('button', { name: 'Try again' })).toBeNull()
+  })
   test('while newer rows are read the old ones stay', async () => {
     await show(register({ list: { items: fixtures.constantSummaries, next: null }, refetching: true }))
     expect(screen.getByRole('table')).toHaveAttribute('aria-busy', 'true')

@@ -6,7 +6,7 @@ import { exponentTicks, log10OfText } from './scale.ts'
 import { AXIS_LINE, axisLabel, CERTAIN, INK, MARGIN, TICK } from './theme.ts'
 
 export default function ErrorBudgetPlot({ items, radius }: { items: BudgetLine[]; radius: string }) {
-  const bars = [...items.map((item) => ({ name: SOURCE_WORDS[item.source], log: log10OfText(item.magnitude), total: false })), { name: 'Radius', log: log10OfText(radius), total: true }]
+  const bars = [...items.map((item) => ({ name: `${SOURCE_WORDS[item.source]}, ${item.bound}`, log: log10OfText(item.magnitude), total: false })), { name: 'Radius', log: log10OfText(radius), total: true }]
   const logs = bars.flatMap((bar) => bar.log ?? [])
   if (logs.length === 0) return <p className="py-6">Every contribution is zero: the value is exact.</p>
   // Bars grow from a floor one step below the smallest source, since a logarithmic scale has no zero.

@@ -21,7 +21,8 @@ export function DigitLine({ lo, hi, size = 'small', following = 3, limit = 1_000
   const { negative, integer, decimals, upperNext, lowerNext } = splitEnclosure(lo, hi, following)
   const exact = upperNext === '' && lowerNext === ''
   const leadText = integer === null ? '' : `${negative ? '−' : ''}${integer}${decimals === '' && exact ? '' : '.'}`
-  const leftOut = Math.max(0, decimals.length - limit)
+  // Nothing is left out for the sake of a group or two.
+  const leftOut = decimals.length > limit + 10 ? decimals.length - limit : 0
   const groups = groupDigits(leftOut > 0 ? decimals.slice(0, limit) : decimals)
   const last = groups.pop() ?? ''
   // A full stop takes 0.571 of a figure's width in Source Serif.

@@ -35,12 +35,21 @@ export function ErrorView({ error, title, onRetry }: ErrorViewProps) {
     <div role="alert" className="max-w-prose border-y border-refused py-4">
       <p className="text-[1.2rem] leading-snug text-refused">{title}</p>
       <p className="mt-1">{problem.detail}</p>
+      {problem.fields.length > 0 && (
+        <ul className="mt-1">
+          {problem.fields.map(({ path, message }) => (
+            <li key={path}>
+              <i>{path}</i> {message}
+            </li>
+          ))}
+        </ul>
+      )}
       {problem.requestId && (
         <p className="mt-1 text-[0.88rem] text-soft">
           Quote <code>{problem.requestId}</code> if you report it.
         </p>
       )}
-      {onRetry && (
+      {onRetry && problem.passing && (
         <p className="mt-3">
           <Button onClick={onRetry}>Try again</Button>
         </p>

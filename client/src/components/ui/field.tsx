@@ -1,6 +1,7 @@
 import { useId } from 'react'
 import type { InputHTMLAttributes, ReactNode, Ref, SelectHTMLAttributes, TextareaHTMLAttributes } from 'react'
 import { classNames } from '../../lib/class-names.ts'
+import { sentence } from '../../lib/sentence.ts'
 
 const CONTROL =
   'w-full min-h-[2.45rem] rounded-slight border border-edge bg-leaf px-2.5 py-1.5 leading-snug text-ink placeholder:text-soft aria-invalid:border-refused aria-invalid:outline-refused disabled:bg-shade disabled:text-soft'
@@ -50,7 +51,7 @@ export function Field({ label, hint, error, required, narrow, className, childre
 export function FieldError({ id, error }: { id?: string; error: string | null | undefined }) {
   return (
     <div id={id} role={error ? 'alert' : undefined} className="text-[0.92rem] leading-snug text-refused empty:hidden">
-      {error}
+      {error ? sentence(error) : null}
     </div>
   )
 }

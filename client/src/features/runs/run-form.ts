@@ -110,6 +110,5 @@ const WHOLE: Partial<Record<RunField, string>> = {
 /** The schema's own words where they are meant for people, ours where a number could not be read at all. */
 function plainMessage(field: RunField, message: string): string {
   const technical = /^(Invalid|Expected|Too (small|big))/i.test(message)
-  const text = technical ? (WHOLE[field] ?? message) : message
-  return text.endsWith('.') ? text : `${text.charAt(0).toUpperCase()}${text.slice(1)}.`
+  return technical ? (WHOLE[field] ?? message) : message
 }

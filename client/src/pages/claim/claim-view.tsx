@@ -112,14 +112,14 @@ function Loaded({ claim, done, mayReadRuns, onAct, onEdit, onDelete, onUpload, o
           <ObjectionThreads objections={claim.objections} onAct={onAct} />
         </Section>
       )}
-      <ClaimMatter claim={claim} onAct={onAct} onUpload={onUpload} onRemoveEvidence={onRemoveEvidence} repetition={repetition} />
+      <ClaimMatter claim={claim} mayReadRuns={mayReadRuns} onAct={onAct} onUpload={onUpload} onRemoveEvidence={onRemoveEvidence} repetition={repetition} />
       <Caution claim={claim} />
     </Page>
   )
 }
 
 /** What the claim rests on, part by part. */
-function ClaimMatter({ claim, onAct, onUpload, onRemoveEvidence, repetition }: Pick<LoadedProps, 'claim' | 'onAct' | 'onUpload' | 'onRemoveEvidence' | 'repetition'>) {
+function ClaimMatter({ claim, mayReadRuns, onAct, onUpload, onRemoveEvidence, repetition }: Pick<LoadedProps, 'claim' | 'mayReadRuns' | 'onAct' | 'onUpload' | 'onRemoveEvidence' | 'repetition'>) {
   const { outcome, enclosure } = claim
   const meeting = claim.rechecks.flatMap((recheck) => (recheck.enclosure ? [{ label: `recheck, ${recheck.method}, ${recheck.arithmetic}`, ...recheck.enclosure }] : []))
   return (

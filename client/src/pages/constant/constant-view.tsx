@@ -38,7 +38,6 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
             <h1>{constant.number}</h1>
             <StateMark state={constant.state} size="large" />
           </div>
-          {constant.definition.aliases.length > 0 && <p className="text-soft">{constant.definition.aliases.join(' · ')}</p>}
         </>
       }
       margin={<ConstantMargin constant={constant} />}
@@ -59,15 +58,13 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
           <TextLink to={paths.claim(conflict.claims[1])}>{conflict.claims[1]}</TextLink> have no number in common. At least one is wrong; both are shown until one is withdrawn.
         </Notice>
       ))}
-      <div className="mt-5 flex flex-wrap gap-3 print:hidden">
-        {mayStart && (
-          <>
-            <ButtonLink to={paths.newRun({ constant: constant.number })}>New run of this constant</ButtonLink>
-            <ButtonLink to={paths.newClaim({ constant: constant.number })}>Claim a value from elsewhere</ButtonLink>
-            <ButtonLink to={paths.newClaim({ constant: constant.number, kind: 'order' })}>Claim an order</ButtonLink>
-          </>
-        )}
-      </div>
+      {mayStart && (
+        <div className="mt-5 flex flex-wrap gap-3 print:hidden">
+          <ButtonLink to={paths.newRun({ constant: constant.number })}>New run of this constant</ButtonLink>
+          <ButtonLink to={paths.newClaim({ constant: constant.number })}>Claim a value from elsewhere</ButtonLink>
+          <ButtonLink to={paths.newClaim({ constant: constant.number, kind: 'order' })}>Claim an order</ButtonLink>
+        </div>
+      )}
       <Section title="Claims" className="mt-9">
         {constant.claims.length > 0 ? (
           <ClaimTable claims={constant.claims} />

@@ -10,7 +10,7 @@ import { TextLink } from '../../components/ui/link.tsx'
 import { Notice } from '../../components/ui/notice.tsx'
 import { Page, Section } from '../../components/ui/page.tsx'
 import { DefinitionFields } from '../../features/runs/components/definition-fields.tsx'
-import { ForecastTable } from '../../features/runs/components/forecast-table.tsx'
+import { ForecastRefusals, ForecastTable } from '../../features/runs/components/forecast-table.tsx'
 import type { Choice as MethodChoice } from '../../features/runs/components/forecast-table.tsx'
 import type { FieldMessages, RunFormValues } from '../../features/runs/run-form.ts'
 import { problemOf } from '../../lib/errors.ts'
@@ -31,6 +31,7 @@ export interface NewRunViewProps {
 
 export function NewRunView({ form, errors, plan, planning, planError, chosen, onChoose, onStart, starting, startError, mayStart }: NewRunViewProps) {
   const atFields = Object.keys(errors).length > 0
+  const possible = plan?.forecasts.some((forecast) => forecast.possible) ?? false
   const start = (event: FormEvent) => {
     event.preventDefault()
     onStart()
@@ -59,12 +60,17 @@ export function NewRunView({ form, errors, plan, planning, planError, chosen, on
             )}
           </div>
           <Section title="What can be computed" className="mt-8" beside={planning && plan ? 'forecasting …' : undefined}>
-            {plan && !atFields ? (
+            {plan && !atFields && possible ? (
               <ForecastTable forecasts={plan.forecasts} chosen={chosen} onChoose={onChoose} busy={planning} />
+            ) : plan && !atFields ? (
+              <Notice tone="refused" title="No method reaches this goal." live>
+                Below stands why. Ask for less, or change the definition.
+              </Notice>
             ) : (
               <p className="text-soft">For each method: whether it reaches the goal, the radius, and the time on this server. Nothing is started yet.</p>
             )}
           </Section>
+          {plan && !atFields && <ForecastRefusals forecasts={plan.forecasts} />}
           {planError && !atFields ? (
             <Notice tone="refused" title="This can’t be computed." live className="mt-5">
               {problemOf(planError).detail}

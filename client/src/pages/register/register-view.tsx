@@ -10,6 +10,7 @@ import { RegisterFiltersForm } from '../../features/constants/components/registe
 import type { ConstantPageData } from '../../features/constants/queries.ts'
 import type { RegisterFilter } from '../../features/constants/register-filters.ts'
 import type { Query } from '../../lib/api-client.ts'
+import { fieldProblem, problemOf } from '../../lib/errors.ts'
 
 export interface RegisterViewProps {
   list: ConstantPageData | undefined
@@ -36,9 +37,9 @@ export function RegisterView({ list, error, refetching, onRetry, filters, filter
         </div>
       }
     >
-      <RegisterFiltersForm filters={filters} onFilter={onFilter} clearTo={filtered ? paths.register() : null} />
+      <RegisterFiltersForm filters={filters} onFilter={onFilter} clearTo={filtered ? paths.register() : null} errorAt={(filter) => fieldProblem(error, filter)} />
       {error && !list ? (
-        <ErrorView title="The register could not be read" error={error} onRetry={onRetry} />
+        <ErrorView title={filtered && !problemOf(error).passing ? 'These filters can’t be used' : 'The register could not be read'} error={error} onRetry={onRetry} />
       ) : !list ? (
         <Loading what="Reading the register" />
       ) : list.items.length === 0 ? (

@@ -9,7 +9,7 @@ import { claimName } from '../claim-words.ts'
 type Recheck = Claim['rechecks'][number]
 
 /** The claimed enclosure and those of the rechecks one below the other, each with the verdict whether they meet. */
-export function RecheckTable({ claim }: { claim: Claim }) {
+export function RecheckTable({ claim, mayReadRuns }: { claim: Claim; mayReadRuns: boolean }) {
   const rows = [{ key: 'claim', recheck: null }, ...claim.rechecks.map((recheck) => ({ key: recheck.runId, recheck }))]
   return (
     <Table
@@ -17,13 +17,18 @@ export function RecheckTable({ claim }: { claim: Claim }) {
       rows={rows}
       rowKey={(row) => row.key}
       columns={[
-        { key: 'who', header: 'Enclosure of', plain: true, cell: ({ recheck }) => (recheck ? <TextLink to={paths.run(recheck.runId)}>recheck by {recheck.startedBy?.name ?? 'a referee'}</TextLink> : <strong className="font-semibold">{claimName(claim)}</strong>) },
+        { key: 'who', header: 'Enclosure of', plain: true, cell: ({ recheck }) => (recheck ? <Who recheck={recheck} link={mayReadRuns || claim.abilities.recheck === true} /> : <strong className="font-semibold">{claimName(claim)}</strong>) },
         { key: 'how', header: 'Method', cell: ({ recheck }) => howWords(recheck ?? claim.run) },
         { key: 'value', header: 'Digits', plain: true, cell: ({ recheck }) => <Value enclosure={recheck ? recheck.enclosure : claim.enclosure} recheck={recheck} /> },
         { key: 'verdict', header: 'Verdict', cell: ({ recheck }) => recheck && <Verdict recheck={recheck} /> },
       ]}
     />
   )
+}
+
+function Who({ recheck, link }: { recheck: Recheck; link: boolean }) {
+  const words = `recheck by ${recheck.startedBy?.name ?? 'a referee'}`
+  return link ? <TextLink to={paths.run(recheck.runId)}>{words}</TextLink> : words
 }
 
 function howWords(run: Pick<Recheck, 'method' | 'arithmetic'> | null): string {

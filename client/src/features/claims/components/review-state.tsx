@@ -3,6 +3,7 @@ import type { Claim } from '../../../../../shared/schemas/claim.ts'
 import { Button } from '../../../components/ui/button.tsx'
 import { Table } from '../../../components/ui/table.tsx'
 import { Time } from '../../../components/ui/time.tsx'
+import { isSettled } from '../act-words.ts'
 import { problemOf } from '../../../lib/errors.ts'
 import type { DoAct } from '../queries.ts'
 
@@ -14,7 +15,7 @@ export function ReviewState({ claim, onAct }: { claim: Claim; onAct: DoAct }) {
   return (
     <>
       {claim.assignments.length === 0 ? (
-        <p className="text-soft">Nobody was asked to referee it yet.</p>
+        !isSettled(claim.state) && <p className="mb-3 text-soft">Nobody was asked to referee it yet.</p>
       ) : (
         <Table
           caption="Referees"
@@ -29,7 +30,7 @@ export function ReviewState({ claim, onAct }: { claim: Claim; onAct: DoAct }) {
           ]}
         />
       )}
-      <p className="mt-3">
+      <p className="mt-3 first:mt-0">
         {have} of {need} confirmation{need === 1 ? '' : 's'} needed.
         {recheckNeeded && (recheckDone ? ' A recheck by other arithmetic or another method meets it.' : ' A recheck by other arithmetic or another method is still needed.')}
       </p>

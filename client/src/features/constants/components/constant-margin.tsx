@@ -23,6 +23,7 @@ export function ConstantMargin({ constant }: { constant: Constant }) {
       <MarginNote title="Provenance">
         <Facts
           facts={[
+            ...(constant.definition.aliases.length > 0 ? [['Also called', constant.definition.aliases.join(', ')] as [string, string]] : []),
             ['Stated by', constant.statedBy],
             ['Group', constant.group.name],
             ['On', <Time key="stated" at={constant.statedAt} />],

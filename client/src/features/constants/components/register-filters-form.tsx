@@ -14,10 +14,12 @@ interface RegisterFiltersFormProps {
   onFilter: (filters: Partial<Record<RegisterFilter, string>>) => void
   /** Address of the register without any filter; null when none is set. */
   clearTo: string | null
+  /** What the server says against a filter. */
+  errorAt: (filter: RegisterFilter) => string | undefined
 }
 
 /** Filters of the register. Choosing from a list filters at once, typing does with Enter or the button. */
-export function RegisterFiltersForm({ filters, onFilter, clearTo }: RegisterFiltersFormProps) {
+export function RegisterFiltersForm({ filters, onFilter, clearTo, errorAt }: RegisterFiltersFormProps) {
   const form = useRef<HTMLFormElement>(null)
   const submit = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault()
@@ -29,10 +31,10 @@ export function RegisterFiltersForm({ filters, onFilter, clearTo }: RegisterFilt
   return (
     <form ref={form} key={JSON.stringify(filters)} role="search" aria-label="Filter the register" onSubmit={submit} className="mb-5 grid gap-3 print:hidden">
       <div className="grid grid-cols-2 gap-x-5 gap-y-3 *:first:col-span-2 *:nth-2:col-span-2 sm:*:first:col-span-1 sm:*:nth-2:col-span-1 wide:grid-cols-[minmax(0,2fr)_minmax(0,2fr)_5rem_minmax(0,1.1fr)_auto]">
-        <Field label="Words, a definition, or leading digits">
+        <Field label="Words, a definition, or leading digits" error={errorAt('text')}>
           {(control) => <TextInput {...control} {...at('text')} type="search" placeholder="odd, k = 3 · 1/(p log p) · 1.6366" />}
         </Field>
-        <Field label="Set">
+        <Field label="Set" error={errorAt('set')}>
           {(control) => (
             <Select {...control} {...at('set')} {...choose}>
               <option value="">any</option>
@@ -44,8 +46,8 @@ export function RegisterFiltersForm({ filters, onFilter, clearTo }: RegisterFilt
             </Select>
           )}
         </Field>
-        <Field label={<i>k</i>}>{(control) => <TextInput {...control} {...at('k')} inputMode="numeric" pattern="[0-9]*" />}</Field>
-        <Field label="State">
+        <Field label={<i>k</i>} error={errorAt('k')}>{(control) => <TextInput {...control} {...at('k')} inputMode="numeric" pattern="[0-9]*" />}</Field>
+        <Field label="State" error={errorAt('state')}>
           {(control) => (
             <Select {...control} {...at('state')} {...choose}>
               <option value="">any</option>
@@ -71,10 +73,10 @@ export function RegisterFiltersForm({ filters, onFilter, clearTo }: RegisterFilt
       <details open={more}>
         <summary className="w-fit text-certain underline decoration-rule underline-offset-[0.2em]">By weight, exclusion, or digits</summary>
         <div className="mt-3 flex flex-wrap gap-5">
-          <Field label={<>Power of <i>n</i></>} hint="1, 2, 3/2" className="w-32">{(control) => <TextInput {...control} {...at('power')} />}</Field>
-          <Field label={<>Power of log <i>n</i></>} hint="1, 0, −1/2" className="w-36">{(control) => <TextInput {...control} {...at('logPower')} />}</Field>
-          <Field label="Excluded primes" hint="2, 3 — or none" className="w-44">{(control) => <TextInput {...control} {...at('exclude')} />}</Field>
-          <Field label="Certified digits" hint="at least" className="w-36">{(control) => <TextInput {...control} {...at('minDigits')} inputMode="numeric" />}</Field>
+          <Field label={<>Power of <i>n</i></>} hint="1, 2, 3/2" error={errorAt('power')} className="w-32">{(control) => <TextInput {...control} {...at('power')} />}</Field>
+          <Field label={<>Power of log <i>n</i></>} hint="1, 0, −1/2" error={errorAt('logPower')} className="w-36">{(control) => <TextInput {...control} {...at('logPower')} />}</Field>
+          <Field label="Excluded primes" hint="2, 3 — or none" error={errorAt('exclude')} className="w-44">{(control) => <TextInput {...control} {...at('exclude')} />}</Field>
+          <Field label="Certified digits" hint="at least" error={errorAt('minDigits')} className="w-36">{(control) => <TextInput {...control} {...at('minDigits')} inputMode="numeric" />}</Field>
         </div>
       </details>
     </form>

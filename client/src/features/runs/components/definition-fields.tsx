@@ -19,7 +19,7 @@ export function DefinitionFields({ form, errors }: DefinitionFieldsProps) {
         {(control) => (
           <Select {...control} {...form.register('type')}>
             <option value="series">A sum over a set of integers</option>
-            <option value="over-primes">A sum or product over the primes of an expression in p</option>
+            <option value="over-primes">A sum or product over the primes</option>
             <option value="named">A constant with a name</option>
           </Select>
         )}
@@ -36,8 +36,8 @@ export function DefinitionFields({ form, errors }: DefinitionFieldsProps) {
         </Field>
       )}
       {type === 'over-primes' && (
-        <div className="grid gap-5 sm:grid-cols-[10rem_1fr]">
-          <Field label="Combined as">
+        <div className="grid items-start gap-5 sm:grid-cols-[9.5rem_1fr]">
+          <Field label="Combined as" hint="over all primes">
             {(control) => (
               <Select {...control} {...form.register('combine')}>
                 <option value="sum">sum of</option>
@@ -45,7 +45,7 @@ export function DefinitionFields({ form, errors }: DefinitionFieldsProps) {
               </Select>
             )}
           </Field>
-          <Field label={<>Expression in <i>p</i></>} hint="A quotient of polynomials with rational coefficients, such as 1/(p*(p-1))" error={errors.expression}>
+          <Field label={<>Expression in <i>p</i></>} hint="Such as 1/(p*(p-1))" error={errors.expression}>
             {(control) => <TextInput {...control} {...form.register('expression')} spellCheck={false} autoComplete="off" />}
           </Field>
         </div>

@@ -14,13 +14,14 @@ interface ForecastTableProps {
   busy: boolean
 }
 
-/** What each method and arithmetic would reach and how long it would take; one row is chosen. What can't be done says why. */
+const key = (forecast: Choice) => `${forecast.method} ${forecast.arithmetic}`
+
+/** What each method and arithmetic would reach and how long it would take; one row is chosen. */
 export function ForecastTable({ forecasts, chosen, onChoose, busy }: ForecastTableProps) {
-  const key = (forecast: Choice) => `${forecast.method} ${forecast.arithmetic}`
   return (
     <Table
       caption="Methods and what they would reach"
-      rows={forecasts}
+      rows={forecasts.filter((forecast) => forecast.possible)}
       rowKey={key}
       busy={busy}
       columns={[
@@ -29,12 +30,11 @@ export function ForecastTable({ forecasts, chosen, onChoose, busy }: ForecastTab
           header: 'Method',
           plain: true,
           cell: (row) => (
-            <label className={row.possible ? 'flex items-baseline gap-2.5' : 'flex items-baseline gap-2.5 text-soft'}>
+            <label className="flex items-baseline gap-2.5">
               <input
                 type="radio"
                 name="forecast"
                 className="relative top-px size-4 shrink-0 accent-certain"
-                disabled={!row.possible}
                 checked={chosen !== null && key(chosen) === key(row)}
                 onChange={() => onChoose({ method: row.method, arithmetic: row.arithmetic })}
               />
@@ -45,11 +45,33 @@ export function ForecastTable({ forecasts, chosen, onChoose, busy }: ForecastTab
             </label>
           ),
         },
-        { key: 'arithmetic', header: 'Arithmetic', cell: (row) => <span className={row.possible ? undefined : 'text-soft'}>{row.arithmetic}</span> },
+        { key: 'arithmetic', header: 'Arithmetic', cell: (row) => row.arithmetic },
         { key: 'radius', header: 'Radius', align: 'right', cell: (row) => row.radius && <Magnitude text={row.radius} /> },
         { key: 'seconds', header: 'Time', align: 'right', cell: (row) => row.seconds !== null && <span className="whitespace-nowrap">about {secondsInWords(row.seconds)}</span> },
-        { key: 'remark', header: '', plain: true, cell: (row) => (row.possible ? row.recommended && 'the quickest' : <span className="text-refused">{row.reason}</span>) },
+        { key: 'remark', header: '', plain: true, cell: (row) => row.recommended && 'the quickest' },
       ]}
     />
+  )
+}
+
+/** What can't be done, and why: one line a reason, since both arithmetics of a method mostly share it. */
+export function ForecastRefusals({ forecasts }: { forecasts: Forecast[] }) {
+  const reasons = new Map<string, Forecast[]>()
+  for (const forecast of forecasts) {
+    if (!forecast.possible) reasons.set(`${forecast.method} ${forecast.reason}`, [...(reasons.get(`${forecast.method} ${forecast.reason}`) ?? []), forecast])
+  }
+  if (reasons.size === 0) return null
+  return (
+    <div className="mt-5 text-[0.92rem]">
+      <h3 className="font-normal italic">Not for this constant and goal</h3>
+      <ul className="mt-1 grid gap-1 text-soft">
+        {[...reasons.entries()].map(([reason, [first, ...others]]) => (
+          <li key={reason}>
+            {first && METHOD_WORDS[first.method]}
+            {others.length === 0 && first && first.arithmetic === 'mpfr' && ', mpfr'}: {first?.reason}
+          </li>
+        ))}
+      </ul>
+    </div>
   )
 }
