@@ -90,7 +90,7 @@ describe('repeating', () => {
 
 describe('digest and signature', () => {
   const pair = generateKeyPairSync('ed25519')
-  const key = (id: string, pem = pair.publicKey.export({ type: 'spki', format: 'pem' })): PublicKey => ({ id, algorithm: 'Ed25519', pem, createdAt: '2026-03-01T08:00:00Z', retiredAt: null })
+  const key = (id: string, pem = pair.publicKey.export({ type: 'spki', format: 'pem' })): PublicKey => ({ id, algorithm: 'Ed25519', pem: String(pem), createdAt: '2026-03-01T08:00:00Z', retiredAt: null })
   const signed = (): Certificate => ({ ...certificate, signature: { algorithm: 'Ed25519', keyId: 'one', value: sign(null, Buffer.from(certificate.digest, 'utf8'), pair.privateKey).toString('base64') } })
 
   test('the digest holds for the content it was made of, and for nothing else', async () => {

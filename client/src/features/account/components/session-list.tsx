@@ -54,7 +54,7 @@ export function SessionList({ sessions, onEnd }: SessionListProps) {
               current ? (
                 <span className="text-soft">by signing out</span>
               ) : (
-                <Button tone="quiet" busy={ending === id && 'Ending …'} aria-label={`End the session with ${deviceInWords(userAgent)} from ${address}`} onClick={() => void end([id], `The session with ${deviceInWords(userAgent)} from ${address} is over.`)}>
+                <Button tone="quiet" className="whitespace-nowrap" busy={ending === id && 'Ending …'} aria-label={`End the session with ${deviceInWords(userAgent)} from ${address}`} onClick={() => void end([id], `The session with ${deviceInWords(userAgent)} from ${address} is over.`)}>
                   End
                 </Button>
               ),

@@ -56,7 +56,7 @@ export function TokenList({ tokens, onRevoke }: TokenListProps) {
               key: 'revoke', header: 'Revoke', plain: true,
               cell: (token) =>
                 token.state === 'active' && (
-                  <Button tone="quiet" aria-label={`Revoke ${token.name}`} onClick={() => { setError(null); setAsked(token) }}>
+                  <Button tone="quiet" className="whitespace-nowrap" aria-label={`Revoke ${token.name}`} onClick={() => { setError(null); setAsked(token) }}>
                     Revoke
                   </Button>
                 ),

@@ -34,7 +34,7 @@ export function AuditFiltersForm({ filters, members, onFilter, clearTo }: AuditF
       role="search"
       aria-label="Filter the audit trail"
       onSubmit={submit}
-      className="mb-5 grid gap-x-5 gap-y-3 sm:grid-cols-4 print:hidden"
+      className="mb-5 grid grid-cols-2 gap-x-5 gap-y-3 sm:grid-cols-4 print:hidden"
     >
       <Field label="Words or digest">{(control) => <TextInput {...control} {...at('text')} type="search" />}</Field>
       <Field label="Acts">

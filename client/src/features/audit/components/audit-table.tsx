@@ -50,8 +50,16 @@ function Subject({ kind, id, label }: AuditEntry['subject']): ReactNode {
   return <span className="break-words">{label}</span>
 }
 
+/** A detail of an entry for reading; the exported trail has it to the letter. Of mails the kind is shown and not to which row they went. */
+function detailText(key: string, value: unknown): string {
+  if (typeof value === 'string') return value
+  if (value === null) return 'none'
+  if (Array.isArray(value) && value.every((item) => typeof item === 'string')) return value.map((item) => (key === 'told' ? item.split(':')[0] : item)).join(', ')
+  return JSON.stringify(value)
+}
+
 function ChainDetail({ entry }: { entry: AuditEntry }) {
-  const detail = Object.entries(entry.detail)
+  const detail = Object.entries(entry.detail).filter(([key]) => key !== 'referee')
   return (
     <details className="min-w-0">
       <summary>
@@ -60,7 +68,7 @@ function ChainDetail({ entry }: { entry: AuditEntry }) {
       <div className="mt-2 text-[0.88rem]">
         <Facts
           facts={[
-            ...detail.map(([key, value]): [string, string] => [key, typeof value === 'string' ? value : JSON.stringify(value)]),
+            ...detail.map(([key, value]): [string, string] => [key, detailText(key, value)]),
             ...(entry.digest ? [['digest', <code key="digest" className="break-all">{entry.digest}</code>] as [string, ReactNode]] : []),
             ['hash', <code key="hash" className="break-all">{entry.hash}</code>],
             ['before it', <code key="before" className="break-all">{entry.previousHash}</code>],

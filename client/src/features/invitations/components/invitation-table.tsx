@@ -62,6 +62,7 @@ export function InvitationTable({ invitations, onResend, onRevoke }: InvitationT
                   {invitation.abilities.resend && (
                     <Button
                       tone="quiet"
+                      className="whitespace-nowrap"
                       aria-label={`Send the invitation of ${invitation.name} again`}
                       busy={working === invitation.id && asked === null && 'Sending …'}
                       onClick={() => void act(invitation.id, onResend, `A new link goes to ${invitation.email}; the link sent before works no more.`)}
@@ -70,7 +71,7 @@ export function InvitationTable({ invitations, onResend, onRevoke }: InvitationT
                     </Button>
                   )}
                   {invitation.abilities.revoke && (
-                    <Button tone="quiet" aria-label={`Take back the invitation of ${invitation.name}`} onClick={() => { setError(null); setAsked(invitation) }}>
+                    <Button tone="quiet" className="whitespace-nowrap" aria-label={`Take back the invitation of ${invitation.name}`} onClick={() => { setError(null); setAsked(invitation) }}>
                       Take back
                     </Button>
                   )}

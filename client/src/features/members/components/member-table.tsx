@@ -47,7 +47,7 @@ export function MemberTable({ members, ownId, onChangeRoles, onEnd }: MemberTabl
     {
       key: 'email', header: 'Address',
       cell: ({ email, mailBouncedAt }) => (
-        <span className="break-words">
+        <span className="wrap-anywhere">
           {email}
           {mailBouncedAt && <span className="block text-[0.92rem] text-refused">mail comes back since <Time at={mailBouncedAt} /></span>}
         </span>
@@ -61,8 +61,8 @@ export function MemberTable({ members, ownId, onChangeRoles, onEnd }: MemberTabl
       key: 'acts', header: 'Change', plain: true,
       cell: (member) => (
         <span className="flex flex-wrap gap-x-5">
-          {member.abilities.changeRoles && <Button tone="quiet" aria-label={`Change the roles of ${member.name}`} onClick={() => setChanging(member)}>Roles</Button>}
-          {member.abilities.endMembership && <Button tone="quiet" aria-label={`End the membership of ${member.name}`} onClick={() => { setError(null); setEnding(member) }}>End membership</Button>}
+          {member.abilities.changeRoles && <Button tone="quiet" className="whitespace-nowrap" aria-label={`Change the roles of ${member.name}`} onClick={() => setChanging(member)}>Roles</Button>}
+          {member.abilities.endMembership && <Button tone="quiet" className="whitespace-nowrap" aria-label={`End the membership of ${member.name}`} onClick={() => { setError(null); setEnding(member) }}>End membership</Button>}
         </span>
       ),
     })

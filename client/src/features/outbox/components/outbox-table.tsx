@@ -45,15 +45,15 @@ export function OutboxTable({ items, onResend, onTurn, busy }: OutboxTableProps)
         onTurn={onTurn}
         busy={busy}
         columns={[
-          { key: 'subject', header: 'Mail', plain: true, cell: ({ subject }) => subject },
-          { key: 'to', header: 'To', cell: ({ recipient }) => <>{recipient.name} <span className="block text-[0.92rem] break-all text-soft">{recipient.email}</span></> },
+          { key: 'subject', header: 'Mail', plain: true, className: 'sm:w-[30%]', cell: ({ subject }) => subject },
+          { key: 'to', header: 'To', cell: ({ recipient }) => <>{recipient.name} <span className="block text-[0.92rem] wrap-anywhere text-soft">{recipient.email}</span></> },
           { key: 'written', header: 'Written', cell: ({ createdAt }) => <Time at={createdAt} precise /> },
           { key: 'fate', header: 'Fate', cell: (item) => <Fate item={item} /> },
           {
             key: 'again', header: 'Again', plain: true,
             cell: (item) =>
               item.abilities.resend && (
-                <Button tone="quiet" busy={sending === item.id && 'Sending …'} aria-label={`Send “${item.subject}” to ${item.recipient.name} again`} onClick={() => void resend(item)}>
+                <Button tone="quiet" className="whitespace-nowrap" busy={sending === item.id && 'Sending …'} aria-label={`Send “${item.subject}” to ${item.recipient.name} again`} onClick={() => void resend(item)}>
                   Send again
                 </Button>
               ),
@@ -64,11 +64,14 @@ export function OutboxTable({ items, onResend, onTurn, busy }: OutboxTableProps)
   )
 }
 
-function Fate({ item: { state, attempts, sentAt, nextAttemptAt, lastError } }: { item: OutboxItem }) {
+/** A mail that goes out within this is told to have gone at once. */
+const AT_ONCE_MS = 2 * 60_000
+
+function Fate({ item: { state, attempts, createdAt, sentAt, nextAttemptAt, lastError } }: { item: OutboxItem }) {
   return (
     <span>
       <span className={COLOURS[state]}>{MAIL_STATES[state]}</span>
-      {sentAt && <> <Time at={sentAt} precise /></>}
+      {sentAt && (Date.parse(sentAt) - Date.parse(createdAt) < AT_ONCE_MS ? ' at once' : <> <Time at={sentAt} precise /></>)}
       {state === 'waiting' && attempts > 0 && nextAttemptAt && <>, tried again <Time at={nextAttemptAt} precise /></>}
       {attempts > 1 && <span className="text-soft">, {attempts} attempts</span>}
       {lastError && <span className="block text-[0.92rem] break-words text-soft">The mail server said: {lastError}</span>}
