@@ -44,7 +44,7 @@ export async function actOnClaim(member: SignedInMember, claimId: string, act: P
     const note = (await work({ ...locked, member, facts, tell })) ?? {}
     await moveTo(transaction, claim, to)
     await recordClaim(transaction, claim, constant, { act, actorId: member.id, from, to, told: tell.told, ...note })
-    if (!ALONE.includes(act)) await consequences(locked, from)
+    if (!ALONE.includes(act)) await consequences(locked, from, act)
   })
 }
 

@@ -1,5 +1,5 @@
 import type { Transaction } from 'sequelize'
-import { consequence, judgeRegister } from '../../shared/claim-life.ts'
+import { consequence, judgeRegister, type PersonAct } from '../../shared/claim-life.ts'
 import type { ClaimState } from '../../shared/schemas/claim.ts'
 import { change, select } from '../db.ts'
 import { onRunFinished } from '../jobs/run-finished.ts'
@@ -12,11 +12,11 @@ import { lockClaim, lockConstant, moveTo, recordClaim, teller, type LockedClaim 
 import { settleRegister } from './claim-superseding.ts'
 import { refreshBest } from './constant-best.ts'
 
-/** What the register does of itself after an act on a locked claim that was in the state `from`. */
-export async function consequences(locked: LockedClaim, from: ClaimState): Promise<void> {
+/** What the register does of itself after an act (null: something else that touched the review) on a locked claim that was in the state `from`. */
+export async function consequences(locked: LockedClaim, from: ClaimState, cause: PersonAct | null): Promise<void> {
   const { transaction, claim } = locked
   const reached = claim.state
-  await reviewConsequences(locked)
+  await reviewConsequences(locked, cause)
   if (claim.state !== from || reached !== from) {
     await refreshConflicts(locked)
     await settleRegister(locked)
@@ -25,7 +25,7 @@ export async function consequences(locked: LockedClaim, from: ClaimState): Promi
 }
 
 /** Endorses a claim in review when all that is needed is there, or puts it back among those that wait for a referee when none is left. */
-async function reviewConsequences({ transaction, claim, constant }: LockedClaim): Promise<void> {
+async function reviewConsequences({ transaction, claim, constant }: LockedClaim, cause: PersonAct | null): Promise<void> {
   const facts = await factsOf(claim, null, {}, transaction)
   const act = consequence(claim.state, facts)
   if (act === undefined) return
@@ -35,7 +35,8 @@ async function reviewConsequences({ transaction, claim, constant }: LockedClaim)
   const tell = teller(transaction, claim, constant)
   const author = await Member.findByPk(claim.authorId, { transaction, rejectOnEmpty: true })
   if (act === 'endorse') await tell('sign-request', await signatoriesOf(claim, transaction), { author: author.name, confirmations: facts.confirmations })
-  else await tell('claim-submitted', await leadsOf(claim.groupId, transaction), { author: author.name })
+  // Of a referee who declines the leads are told by that very mail.
+  else if (cause !== 'decline') await tell('claim-submitted', await leadsOf(claim.groupId, transaction), { author: author.name })
   await moveTo(transaction, claim, move.to)
   await recordClaim(transaction, claim, constant, { act, actorId: null, from, to: move.to, told: tell.told })
 }
@@ -43,7 +44,7 @@ async function reviewConsequences({ transaction, claim, constant }: LockedClaim)
 /** Looks again at a claim whose review may have become complete, or lost its last referee, by something that was no act on it. */
 export async function reconsiderClaim(transaction: Transaction, claimId: string): Promise<void> {
   const locked = await lockClaim(transaction, claimId)
-  await consequences(locked, locked.claim.state)
+  await consequences(locked, locked.claim.state, null)
 }
 
 /** Looks again at every claim of a group that is in review: after its rules have changed. */

@@ -29,7 +29,7 @@ describe('being asked to referee', () => {
 
     const back = await view(lead!, claim.id)
     expect(back).toMatchObject({ state: 'submitted', next: 'a lead: assign a referee', assignments: [{ state: 'declined', declineReason: 'on leave' }] })
-    expect(await lastMailTo(cast.lead.email)).toMatchObject({ template: 'claim-submitted' })
+    expect(await lastMailTo(cast.lead.email)).toMatchObject({ template: 'referee-declined', text: expect.stringContaining('on leave') })
     await act(lead!, claim.id, 'assign', { refereeId: cast.secondReferee.id }).expect(200)
     expect((await act(second!, claim.id, 'accept').expect(200)).body).toMatchObject({ state: 'in-review', next: `${cast.secondReferee.name}: give a verdict; a referee: recheck by other arithmetic or another method` })
   })

@@ -44,15 +44,12 @@ export async function makeCast(rules: Record<string, unknown> = {}): Promise<Cas
   return { group, author: author!, colleague: colleague!, lead: lead!, secondLead: secondLead!, referee: referee!, secondReferee: secondReferee! }
 }
 
-let nextModulus = 0
-const CLASSES = Array.from({ length: 97 }, (_, index) => index + 3).flatMap((modulus) => [1, modulus - 1].map((residue) => ({ modulus, residue })))
+let hundredths = 100
 
-/** A constant that no other test of this file uses: the sum over the primes of a residue class. */
+/** A constant that no other test of this file uses: the sum of n^-s (log n)^-1 over the primes for the next s. */
 export async function freshConstant(member: TestMember): Promise<Constant> {
-  const { modulus, residue } = CLASSES[nextModulus % CLASSES.length]!
-  const weight = { logPower: String(1 + Math.floor(nextModulus / CLASSES.length)) }
-  nextModulus += 1
-  return makeConstant(member, series({ kind: 'residue-class', modulus, residue }, weight))
+  hundredths += 1
+  return makeConstant(member, series({ kind: 'primes' }, { power: `${hundredths}/100` }))
 }
 
 interface RunShape {
