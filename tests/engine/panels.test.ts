@@ -213,6 +213,14 @@ describe('refusals', () => {
     expect(error.code).toBe('unsound_parameter')
   })
 
+  it('of parameters too poor to enclose anything', async () => {
+    // 32 bits do not tell s0 + t from 1.
+    const near = series({ kind: 'primes', exclude: none }, '1000000000001/1000000000000', '1')
+    const { parameters } = await panels.prepare(request([near], 5))
+    const error = await refusal(() => run([near], 5, { parameters: { ...parameters, precision: 32 } }))
+    expect(error.code).toBe('unsound_parameter')
+  })
+
   it('of what has no such integral', async () => {
     const cases: [Definition[], string][] = [
       [[series({ kind: 'residue-class', modulus: 4, residue: 1, exclude: none })], 'method_does_not_fit'],

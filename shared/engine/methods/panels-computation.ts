@@ -1,6 +1,7 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
 import { ONE, type Rational, ZERO, add, ceilScaled, divide, dyadic, multiply, rational, subtract, toText } from '../arithmetic/rational.ts'
+import { EngineRefusal } from '../errors.ts'
 import { reciprocalGamma } from '../series/gamma.ts'
 import { areDescending, spareBits } from '../series/gauss-legendre.ts'
 import type { Computation, ComputationRequest, Enclosure, Outcome, Parameters, ShardResult } from './computation.ts'
@@ -56,7 +57,13 @@ export class PanelsComputation implements Computation {
 
   async runShard(index: number): Promise<ShardResult> {
     const block = this.blocks[index]
-    return writeBlock(block, (await this.ready()).sum(block.piece, block.from, block.to))
+    try {
+      return writeBlock(block, (await this.ready()).sum(block.piece, block.from, block.to))
+    } catch (error) {
+      // Only parameters from outside can be so poor that an interval holds what a logarithm or a quotient must not meet.
+      if (!(error instanceof RangeError)) throw error
+      throw new EngineRefusal('unsound_parameter', 'precision', `These parameters enclose too little to go on: ${error.message}.`)
+    }
   }
 
   async interim(results: (ShardResult | undefined)[]): Promise<Enclosure[] | null> {

@@ -19,9 +19,11 @@ export interface PanelsParameters {
   split: number
 }
 
+const MOST_NODES = 5_000
+
 const WHOLE: Record<'precision' | 'edgeNodes' | 'terms' | 'split', [number, number]> = {
   precision: [32, 12_000],
-  edgeNodes: [2, 20_000],
+  edgeNodes: [2, MOST_NODES],
   terms: [1, 5_000],
   split: [3, 5_000],
 }
@@ -69,7 +71,7 @@ export function readParameters(given: Parameters, power: Rational): PanelsParame
   const panels = ends.map((to, i): Panel => {
     const from = i === 0 ? edge : ends[i - 1]
     if (compare(from, to) >= 0) throw unsound('panelEnds', 'ascending')
-    if (nodes[i].den !== 1n || nodes[i].num < 2n || nodes[i].num > 20_000n) throw unsound('panelNodes', 'whole numbers from 2 to 20000')
+    if (nodes[i].den !== 1n || nodes[i].num < 2n || nodes[i].num > BigInt(MOST_NODES)) throw unsound('panelNodes', `whole numbers from 2 to ${MOST_NODES}`)
     const panel: Panel = { from, to, nodes: Number(nodes[i].num), axis: axes[i] }
     if (compare(panel.axis, ONE) <= 0 || leftEnd(panel).num <= 0n) throw unsound('panelAxes', 'above 1 and small enough to stay right of 0')
     return panel
