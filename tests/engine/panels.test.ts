@@ -215,7 +215,7 @@ describe('refusals', () => {
 
   it('of parameters too poor to enclose anything', async () => {
     // 32 bits do not tell s0 + t from 1.
-    const near = series({ kind: 'primes', exclude: none }, '1000000000001/1000000000000', '1')
+    const near: Definition = { type: 'series', set: { kind: 'primes', exclude: none }, weight: { power: '1000000000001/1000000000000', logPower: '1' } }
     const { parameters } = await panels.prepare(request([near], 5))
     const error = await refusal(() => run([near], 5, { parameters: { ...parameters, precision: 32 } }))
     expect(error.code).toBe('unsound_parameter')
