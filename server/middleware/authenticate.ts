@@ -29,28 +29,36 @@ export const authenticate: RequestHandler = async (req, _res, next) => {
   next()
 }
 
+/** Who may send a request, as the description of the API tells it. */
+export interface AccessMark {
+  access: 'session' | 'reading' | TokenScope
+}
+
+const marked = (access: AccessMark['access'], check: RequestHandler): RequestHandler & AccessMark => Object.assign(check, { access })
+
 /** The request must come from a member: by session, or for reading by an access token with the scope "read". */
-export const signedIn: RequestHandler = (req, _res, next) => {
+export const signedIn = marked('reading', (req, _res, next) => {
   const { via } = req.member
   if (via.kind === 'token') {
     if (!SAFE.has(req.method)) throw forbidden('session_needed', 'This cannot be done with an access token. Sign in.')
     requireScope(via.scopes, 'read')
   }
   next()
-}
+})
 
 /** As `signedIn`, and open to access tokens with this scope. */
-export const signedInFor = (scope: TokenScope): RequestHandler => (req, _res, next) => {
-  const { via } = req.member
-  if (via.kind === 'token') requireScope(via.scopes, scope)
-  next()
-}
+export const signedInFor = (scope: TokenScope) =>
+  marked(scope, (req, _res, next) => {
+    const { via } = req.member
+    if (via.kind === 'token') requireScope(via.scopes, scope)
+    next()
+  })
 
 /** The request must come from a member who is signed in by password: what concerns the account itself. */
-export const signedInByPassword: RequestHandler = (req, _res, next) => {
+export const signedInByPassword = marked('session', (req, _res, next) => {
   if (req.member.via.kind !== 'session') throw forbidden('session_needed', 'This cannot be done with an access token. Sign in.')
   next()
-}
+})
 
 /** One of the member's roles must carry the right. Whether it covers the thing at hand is for the policies, on the loaded row. */
 export const may = (right: Right): RequestHandler => (req, _res, next) => {

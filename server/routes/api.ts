@@ -1,5 +1,6 @@
-import { Router } from 'express'
+import { type RequestHandler, Router } from 'express'
 import { authenticate } from '../middleware/authenticate.ts'
+import { describeApi } from '../openapi/document.ts'
 import { accessToken } from './access-token.ts'
 import { account } from './account.ts'
 import { audit } from './audit.ts'
@@ -20,28 +21,41 @@ import { plan } from './plan.ts'
 import { run } from './run.ts'
 import { session } from './session.ts'
 
+/** Every resource under /api/v1 and where it is mounted; the description of the API is made from this list, too. */
+export const RESOURCES: readonly (readonly [string, Router])[] = [
+  ['', session],
+  ['/password-resets', passwordReset],
+  ['/invitations', invitation],
+  ['/group', group],
+  ['/account', account],
+  ['/access-tokens', accessToken],
+  ['/audit', audit],
+  ['/outbox', outbox],
+  ['/keys', key],
+  ['/plans', plan],
+  ['/runs', run],
+  ['/estimates', estimate],
+  ['/constants', constant],
+  ['/look-ups', lookUp],
+  ['/claims', claim],
+  ['/claims', claimAct],
+  ['', evidence],
+  ['/digit-checks', digitCheck],
+  ['/desk', desk],
+]
+
 /** Everything under /api/v1, one router a resource. */
 export function api(): Router {
   const router = Router()
+  router.get('/openapi.json', openApi)
   router.use(authenticate)
-  router.use(session)
-  router.use('/password-resets', passwordReset)
-  router.use('/invitations', invitation)
-  router.use('/group', group)
-  router.use('/account', account)
-  router.use('/access-tokens', accessToken)
-  router.use('/audit', audit)
-  router.use('/outbox', outbox)
-  router.use('/keys', key)
-  router.use('/plans', plan)
-  router.use('/runs', run)
-  router.use('/estimates', estimate)
-  router.use('/constants', constant)
-  router.use('/look-ups', lookUp)
-  router.use('/claims', claim)
-  router.use('/claims', claimAct)
-  router.use(evidence)
-  router.use('/digit-checks', digitCheck)
-  router.use('/desk', desk)
+  for (const [path, resource] of RESOURCES) router.use(path || '/', resource)
   return router
 }
+
+/** The description of all of it, made once when it is first asked for. */
+const openApi: RequestHandler = (_req, res) => {
+  description ??= JSON.stringify(describeApi(RESOURCES))
+  res.set('Cache-Control', 'no-cache').type('application/json').send(description)
+}
+let description: string | undefined
