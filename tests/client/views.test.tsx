@@ -205,6 +205,14 @@ describe('claim', () => {
     await userEvent.click(screen.getByRole('button', { name: 'Answer the objection' }))
     expect(act).toHaveBeenCalledWith('answer', { objectionId: fixtures.claimReturned.objections[0]?.id, text: 'It is truncated now.' })
   })
+  test('a draft is submitted in the version on the page, also after its remark was saved', async () => {
+    const act = vi.fn(done)
+    const { rerender } = await show(claim(fixtures.claimForAuthor, { onAct: act }))
+    rerender(<MemoryRouter>{claim({ ...fixtures.claimForAuthor, version: 4, remark: 'Better.' }, { onAct: act })}</MemoryRouter>)
+    expect(screen.getByRole('textbox', { name: 'Remark' })).toHaveValue('Better.')
+    await userEvent.click(screen.getByRole('button', { name: 'Submit for review' }))
+    expect(act).toHaveBeenCalledWith('submit', { version: 4 })
+  })
   test('evidence that the server refuses is told at the field', async () => {
     const upload = vi.fn(() => Promise.reject(new ApiError({ status: 415, code: 'media_type', detail: 'A program can’t be evidence by itself; put it into an archive.' })))
     await show(claim(fixtures.claimForAuthor, { onUpload: upload }))

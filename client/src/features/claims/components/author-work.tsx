@@ -49,7 +49,8 @@ function RemarkForm({ claim, onEdit }: Pick<AuthorWorkProps, 'claim' | 'onEdit'>
 }
 
 function SubmitButton({ claim, onAct }: Pick<AuthorWorkProps, 'claim' | 'onAct'>) {
-  const { submit, rootError, sending } = useApiForm(act.submit, { version: claim.version }, (input) => onAct('submit', input))
+  // The version is the one on the page when the button is pressed: editing the remark has raised it since the form was made.
+  const { submit, rootError, sending } = useApiForm(z.object({}), {}, () => onAct('submit', { version: claim.version }))
   return (
     <form onSubmit={(event) => void submit(event)}>
       <Button type="submit" tone="act" busy={sending && 'Submitting …'}>
@@ -88,8 +89,10 @@ function DeleteButton({ claim, onDelete }: Pick<AuthorWorkProps, 'claim' | 'onDe
   )
 }
 
+const resubmitForm = act.resubmit.pick({ remark: true })
+
 function ResubmitForm({ claim, onAct }: Pick<AuthorWorkProps, 'claim' | 'onAct'>) {
-  const { form, submit, errorAt, rootError, sending } = useApiForm(act.resubmit, { version: claim.version, remark: '' }, (input) => onAct('resubmit', input))
+  const { form, submit, errorAt, rootError, sending } = useApiForm(resubmitForm, { remark: '' }, ({ remark }) => onAct('resubmit', { version: claim.version, remark }))
   return (
     <form onSubmit={(event) => void submit(event)} noValidate className="grid max-w-prose justify-items-start gap-3">
       <Field label="What has changed" hint="For the referees, who look at the claim again." error={errorAt('remark')} className="w-full">
