@@ -21,6 +21,7 @@ export const up: Migration['up'] = async (query) => {
       aliases text[] NOT NULL DEFAULT '{}',
       -- Words by which it is found, folded as the search folds what is typed.
       words text NOT NULL,
+      search tsvector GENERATED ALWAYS AS (to_tsvector('simple', words)) STORED,
       group_id uuid NOT NULL REFERENCES groups,
       stated_by uuid NOT NULL REFERENCES members,
       stated_at timestamptz NOT NULL DEFAULT now(),
@@ -30,16 +31,18 @@ export const up: Migration['up'] = async (query) => {
       best_digits integer,
       CHECK (best_lo <= best_hi)
     );
-    CREATE INDEX constants_set ON constants (set_kind, k, number);
-    CREATE INDEX constants_k ON constants (coalesce(k, 0), number);
-    CREATE INDEX constants_weight ON constants (power, log_power, number);
-    CREATE INDEX constants_exclude ON constants (exclude, number);
-    CREATE INDEX constants_words ON constants USING gin (to_tsvector('simple', words));
+    CREATE INDEX constants_search ON constants USING gin (search);
 
     CREATE TABLE register_entries (
       constant_id uuid NOT NULL REFERENCES constants,
       audience uuid NOT NULL,
+      -- What the register filters by, copied from the constant, where it never changes: one index serves a filter and a sorting.
       number integer NOT NULL,
+      set_kind text NOT NULL,
+      k integer,
+      exclude text NOT NULL,
+      power text,
+      log_power text,
       -- Group that is named with it: the one whose signed claim is newest to this audience, else the one that stated it.
       group_id uuid NOT NULL REFERENCES groups,
       -- Of the claims that this audience may see the one that is furthest on its way; entered_state: of those that were signed.
@@ -55,6 +58,10 @@ export const up: Migration['up'] = async (query) => {
       CHECK (best_lo <= best_hi)
     );
     CREATE UNIQUE INDEX register_entries_number ON register_entries (audience, number);
+    CREATE INDEX register_entries_set ON register_entries (audience, set_kind, k, number);
+    CREATE INDEX register_entries_k ON register_entries (audience, coalesce(k, 0), number);
+    CREATE INDEX register_entries_weight ON register_entries (audience, power, log_power, number);
+    CREATE INDEX register_entries_exclude ON register_entries (audience, exclude, number);
     CREATE INDEX register_entries_state ON register_entries (audience, state, number);
     CREATE INDEX register_entries_entered ON register_entries (audience, entered_state, number);
     CREATE INDEX register_entries_group ON register_entries (audience, group_id, number);
@@ -68,8 +75,9 @@ export const up: Migration['up'] = async (query) => {
     -- A new group sees at once what is public, and every constant that is stated.
     CREATE FUNCTION open_register() RETURNS trigger LANGUAGE plpgsql AS $$
     BEGIN
-      INSERT INTO register_entries (constant_id, audience, number, group_id, state, entered_state, in_conflict, best_lo, best_hi, digits_truncated, digits_rounded, changed_at)
-      SELECT c.id, NEW.id, c.number, coalesce(p.group_id, c.group_id), coalesce(p.state, 'stated'), coalesce(p.entered_state, 'stated'), coalesce(p.in_conflict, false),
+      INSERT INTO register_entries (constant_id, audience, number, set_kind, k, exclude, power, log_power, group_id, state, entered_state, in_conflict,
+                                    best_lo, best_hi, digits_truncated, digits_rounded, changed_at)
+      SELECT c.id, NEW.id, c.number, c.set_kind, c.k, c.exclude, c.power, c.log_power, coalesce(p.group_id, c.group_id), coalesce(p.state, 'stated'), coalesce(p.entered_state, 'stated'), coalesce(p.in_conflict, false),
              p.best_lo, p.best_hi, p.digits_truncated, p.digits_rounded, coalesce(p.changed_at, c.stated_at)
       FROM constants c LEFT JOIN register_entries p ON p.constant_id = c.id AND p.audience = '00000000-0000-0000-0000-000000000000';
       RETURN NEW;

@@ -79,8 +79,8 @@ export async function refreshBest(transaction: Transaction, constantId: string):
 async function writeEntry(transaction: Transaction, constantId: string, audiences: string[], entry: ReturnType<typeof entryOf>): Promise<void> {
   if (audiences.length === 0) return
   await change(
-    `INSERT INTO register_entries AS e (constant_id, audience, number, group_id, state, entered_state, in_conflict, best_lo, best_hi, digits_truncated, digits_rounded)
-     SELECT c.id, a.id, c.number, coalesce($groupId::uuid, c.group_id), $state, $enteredState, $inConflict, $lo::numeric, $hi::numeric, $truncated::int, $rounded::int
+    `INSERT INTO register_entries AS e (constant_id, audience, number, set_kind, k, exclude, power, log_power, group_id, state, entered_state, in_conflict, best_lo, best_hi, digits_truncated, digits_rounded)
+     SELECT c.id, a.id, c.number, c.set_kind, c.k, c.exclude, c.power, c.log_power, coalesce($groupId::uuid, c.group_id), $state, $enteredState, $inConflict, $lo::numeric, $hi::numeric, $truncated::int, $rounded::int
      FROM constants c, unnest($audiences::uuid[]) AS a(id) WHERE c.id = $constantId
      ON CONFLICT (constant_id, audience) DO UPDATE
      SET group_id = excluded.group_id, state = excluded.state, entered_state = excluded.entered_state, in_conflict = excluded.in_conflict, best_lo = excluded.best_lo,

@@ -30,10 +30,17 @@ export interface ConstantRow {
   sort_key: string | null
 }
 
-const columns = (reader: Reader, sortKey: string): string => `c.id, c.number, CASE WHEN octet_length(c.definition::text) < 4000 THEN c.definition END AS definition,
+const columns = (reader: Reader): string => `c.id, c.number, CASE WHEN octet_length(c.definition::text) < 4000 THEN c.definition END AS definition,
   c.latex, c.text, c.aliases, e.${stateColumn(reader)} AS state, e.in_conflict, e.best_lo, e.best_hi, e.digits_truncated, e.digits_rounded,
-  g.id AS group_id, g.name AS group_name, e.changed_at, (${sortKey})::text AS sort_key`
-const FROM = 'FROM register_entries e JOIN constants c ON c.id = e.constant_id JOIN groups g ON g.id = e.group_id'
+  g.id AS group_id, g.name AS group_name, e.changed_at, e.key::text AS sort_key`
+
+/** Entries that fit, in order, with what is shown of them: filters and order need the entries alone, so only what is shown is joined. */
+function rowsSql(reader: Reader, { key, order, conditions, limit }: { key: string; order: 'asc' | 'desc'; conditions: readonly string[]; limit: string }): string {
+  return `SELECT ${columns(reader)}
+    FROM (SELECT e.*, ${key} AS key FROM register_entries e WHERE ${conditions.join(' AND ')} ORDER BY ${key} ${order}, e.number ${order} LIMIT ${limit}) e
+    JOIN constants c ON c.id = e.constant_id JOIN groups g ON g.id = e.group_id
+    ORDER BY e.key ${order}, e.number ${order}`
+}
 
 /** Set kinds that have no k, or one only: a filter by k beside them makes no sense. */
 const WITHOUT_K = new Set(['integers', 'squarefree', 'smooth', 'residue-class', 'finite', 'over-primes', 'named'])
@@ -44,7 +51,7 @@ interface Filter {
   bind: Bind
 }
 
-/** The conditions of a query of the register, over `e` (what this reader sees) and `c` (the definition). Refuses what makes no sense. */
+/** The conditions of a query of the register, over the entries `e` that this reader sees. Refuses what makes no sense. */
 export function registerFilter(reader: Reader, query: ConstantQuery): Filter {
   const where = ['e.audience = $audience']
   const bind: Bind = { audience: audienceOf(reader) }
@@ -56,20 +63,20 @@ export function registerFilter(reader: Reader, query: ConstantQuery): Filter {
   if (query.set !== undefined) {
     if (!WITH_K.has(query.set) && !WITHOUT_K.has(query.set)) faults.push({ path: 'set', message: 'there is no such set' })
     else if (query.k !== undefined && WITHOUT_K.has(query.set)) faults.push({ path: 'k', message: 'this set has no k' })
-    add('c.set_kind = $set', { set: query.set })
+    add('e.set_kind = $set', { set: query.set })
   }
-  if (query.k !== undefined) add('c.k = $k', { k: query.k })
+  if (query.k !== undefined) add('e.k = $k', { k: query.k })
   for (const [field, column] of [['power', 'power'], ['logPower', 'log_power']] as const) {
     const text = query[field]
     if (text === undefined) continue
     const value = parseRational(text)
     if (value === null) faults.push({ path: field, message: 'write a whole number, a fraction such as 1/2, or a decimal' })
-    else add(`c.${column} = $${field}`, { [field]: toText(value) })
+    else add(`e.${column} = $${field}`, { [field]: toText(value) })
   }
   if (query.exclude !== undefined) {
     const primes = query.exclude === 'none' ? [] : [...new Set(query.exclude.split(',').map((text) => (/^\s*\d{1,9}\s*$/.test(text) ? Number(text) : 0)))].sort((a, b) => a - b)
     if (!primes.every(isPrime)) faults.push({ path: 'exclude', message: 'write primes with commas between them, or "none"' })
-    add('c.exclude = $exclude', { exclude: primes.join(',') })
+    add('e.exclude = $exclude', { exclude: primes.join(',') })
   }
   if (query.state !== undefined) add(`e.${stateColumn(reader)} = $state`, { state: query.state })
   if (query.minDigits !== undefined && query.minDigits > 0) add('coalesce(e.digits_truncated, -1) >= $minDigits', { minDigits: query.minDigits })
@@ -82,17 +89,20 @@ export function registerFilter(reader: Reader, query: ConstantQuery): Filter {
 function textFilter(text: string, add: (condition: string, values: Bind) => void): void {
   const asked = readTextQuery(text)
   if (Object.keys(asked).length === 1 && asked.words.length === 0) throw invalidField('text', 'says nothing to search for: write words, a definition such as "odd, k = 3", or leading digits such as 1.6366')
-  if (asked.number !== undefined) add('c.number = $textNumber', { textNumber: asked.number })
-  if (asked.power !== undefined) add('c.power = $textPower AND c.log_power = $textLogPower', { textPower: asked.power, textLogPower: asked.logPower })
-  if (asked.overPrimes && asked.k === undefined) add(`c.set_kind IN ('primes', 'residue-class')`, {})
-  if (asked.k !== undefined) add('c.k = $textK', { textK: asked.k })
-  if (asked.odd) add(`(c.exclude = '2' OR c.exclude LIKE '2,%')`, {})
-  if (asked.exclude) add('c.exclude = $textExclude', { textExclude: asked.exclude.join(',') })
+  if (asked.number !== undefined) add('e.number = $textNumber', { textNumber: asked.number })
+  if (asked.power !== undefined) add('e.power = $textPower AND e.log_power = $textLogPower', { textPower: asked.power, textLogPower: asked.logPower })
+  if (asked.overPrimes && asked.k === undefined) add(`e.set_kind IN ('primes', 'residue-class')`, {})
+  if (asked.k !== undefined) add('e.k = $textK', { textK: asked.k })
+  if (asked.odd) add(`(e.exclude = '2' OR e.exclude LIKE '2,%')`, {})
+  if (asked.exclude) add('e.exclude = $textExclude', { textExclude: asked.exclude.join(',') })
   if (asked.digits !== undefined) {
     const [lo, hi] = leadingDigits(asked.digits)
-    add(`e.best_lo IS NOT NULL AND numrange(e.best_lo, e.best_hi, '[]') && numrange($digitsLo::numeric, $digitsHi::numeric, '[]')`, { digitsLo: lo, digitsHi: hi })
+    const meets = `best_lo IS NOT NULL AND numrange(best_lo, best_hi, '[]') && numrange($digitsLo::numeric, $digitsHi::numeric, '[]')`
+    // Many digits mean few constants, which the index on ranges finds first; of few digits a walk in order soon has a page.
+    const few = (asked.digits.split('.')[1]?.length ?? 0) >= 3
+    add(few ? `e.constant_id = ANY (ARRAY(SELECT constant_id FROM register_entries WHERE audience = $audience AND ${meets}))` : meets, { digitsLo: lo, digitsHi: hi })
   }
-  if (asked.words.length > 0) add(`to_tsvector('simple', c.words) @@ to_tsquery('simple', $words)`, { words: asked.words.map((word) => `${word}:*`).join(' & ') })
+  if (asked.words.length > 0) add(`e.constant_id IN (SELECT id FROM constants WHERE search @@ to_tsquery('simple', $words))`, { words: asked.words.map((word) => `${word}:*`).join(' & ') })
 }
 
 /** By what each sorting goes, and the type of that; every one has an index. */
@@ -108,7 +118,7 @@ function sorting({ sort, order }: ConstantQuery): [key: string, type: string] {
     case 'changed':
       return ['e.changed_at', 'timestamptz']
     case 'k':
-      return ['coalesce(c.k, 0)', 'int']
+      return ['coalesce(e.k, 0)', 'int']
   }
 }
 
@@ -127,7 +137,7 @@ export async function listConstants(
     Object.assign(bind, { after, afterNumber: number })
   }
   const rows = await select<ConstantRow>(
-    `SELECT ${columns(reader, key)} ${FROM} WHERE ${conditions.join(' AND ')} ORDER BY ${key} ${query.order}, e.number ${query.order} LIMIT $limit`,
+    rowsSql(reader, { key, order: query.order, conditions, limit: '$limit' }),
     { ...bind, limit: limit + 1 },
   )
   const page = rows.slice(0, limit)
@@ -138,13 +148,13 @@ export async function listConstants(
 }
 
 /** Most that is counted of a filtered list, so that counting never costs more than listing. */
-const MOST_COUNTED = 5_000
+const MOST_COUNTED = 2_000
 
 async function countConstants(where: string[], bind: Bind): Promise<number | undefined> {
   const plain = where.length === 1
   const sql = plain
     ? 'SELECT count(*)::int AS total FROM register_entries e WHERE e.audience = $audience'
-    : `SELECT count(*)::int AS total FROM (SELECT 1 FROM register_entries e JOIN constants c ON c.id = e.constant_id WHERE ${where.join(' AND ')} LIMIT ${MOST_COUNTED + 1}) AS counted`
+    : `SELECT count(*)::int AS total FROM (SELECT 1 FROM register_entries e WHERE ${where.join(' AND ')} LIMIT ${MOST_COUNTED + 1}) AS counted`
   const row = await selectOne<{ total: number }>(sql, bind)
   return row && (plain || row.total <= MOST_COUNTED) ? row.total : undefined
 }
@@ -153,18 +163,17 @@ async function countConstants(where: string[], bind: Bind): Promise<number | und
 export async function allConstants(reader: Reader, query: ConstantQuery, most: number): Promise<ConstantRow[]> {
   const { where, bind } = registerFilter(reader, query)
   const [key] = sorting(query)
-  return select<ConstantRow>(
-    `SELECT ${columns(reader, key)} ${FROM} WHERE ${where.join(' AND ')} ORDER BY ${key} ${query.order}, e.number ${query.order} LIMIT $most`,
-    { ...bind, most },
-  )
+  return select<ConstantRow>(rowsSql(reader, { key, order: query.order, conditions: where, limit: '$most' }), { ...bind, most })
 }
 
 /** One constant as this reader sees it. */
 export async function findConstant(reader: Reader, number: number): Promise<ConstantRow | undefined> {
-  return selectOne<ConstantRow>(`SELECT ${columns(reader, 'e.number')} ${FROM} WHERE e.audience = $audience AND e.number = $number`, { audience: audienceOf(reader), number })
+  const conditions = ['e.audience = $audience', 'e.number = $number']
+  return selectOne<ConstantRow>(rowsSql(reader, { key: 'e.number', order: 'asc', conditions, limit: '1' }), { audience: audienceOf(reader), number })
 }
 
-/** Several constants by id, in no particular order. */
+/** Several constants by id. */
 export async function constantsById(reader: Reader, ids: string[]): Promise<ConstantRow[]> {
-  return select<ConstantRow>(`SELECT ${columns(reader, 'e.number')} ${FROM} WHERE e.audience = $audience AND e.constant_id = ANY($ids::uuid[])`, { audience: audienceOf(reader), ids })
+  const conditions = ['e.audience = $audience', 'e.constant_id = ANY($ids::uuid[])']
+  return select<ConstantRow>(rowsSql(reader, { key: 'e.number', order: 'asc', conditions, limit: 'ALL' }), { audience: audienceOf(reader), ids })
 }

@@ -12,12 +12,12 @@ export const estimate = Router()
 const one = { params: z.object({ id: z.string().max(200) }) }
 
 estimate.get('/', async (req, res) => {
-  const uses = await usesOfEstimates(req.reader, ESTIMATES.map(({ id }) => id))
+  const uses = await usesOfEstimates(req.reader, ESTIMATES.map(({ id }) => id), 20)
   res.json({ items: ESTIMATES.map((entry) => presentEstimate(entry, uses)) })
 })
 
 estimate.get('/:id', validate(one), async (req: Validated<typeof one>, res) => {
   const entry = estimateById(req.input.id)
   if (!entry) throw notFound('estimate')
-  res.json(presentEstimate(entry, await usesOfEstimates(req.reader, [entry.id])))
+  res.json(presentEstimate(entry, await usesOfEstimates(req.reader, [entry.id], 500)))
 })

@@ -16,7 +16,9 @@ export const estimate = z.object({
   checked: z.string(),
   state: z.enum(['in-force', 'in-doubt']),
   stateSince: instant.nullable(),
-  /** Signed claims whose certificates use it. */
+  /** How many signed claims rest on it. */
+  uses: z.number().int(),
+  /** The newest of them: a few in the list, up to 500 with the estimate itself. */
   usedBy: z.array(z.object({ claimNumber: z.string(), usedAt: z.string() })),
 })
 export type Estimate = z.infer<typeof estimate>

@@ -17,6 +17,7 @@ describe('the library of estimates', () => {
     for (const item of body.items) expect(schema.safeParse(item).error).toBeUndefined()
     const one = await request(app).get(`/api/v1/estimates/${encodeURIComponent(body.items[0].id)}`).expect(200)
     expect(one.body).toEqual(body.items[0])
+    expect(one.body).toMatchObject({ uses: 0, usedBy: [] })
     await request(app).get('/api/v1/estimates/none').expect(404)
   })
 
@@ -38,7 +39,7 @@ describe('the library of estimates', () => {
     }
     const path = `/api/v1/estimates/${encodeURIComponent(estimate!.id)}`
     expect((await request(app).get(path)).body.usedBy).toEqual([{ claimNumber: signed[0], usedAt: 'x >= 1000000' }])
-    expect((await (await signedInAs(closed, app)).get(path)).body.usedBy.map(({ claimNumber }: { claimNumber: string }) => claimNumber)).toEqual(signed)
+    expect((await (await signedInAs(closed, app)).get(path)).body.usedBy.map(({ claimNumber }: { claimNumber: string }) => claimNumber)).toEqual([...signed].reverse())
     const page = await request(app).get(`/api/v1/constants/${signed[0]!.split('/')[0]}`).expect(200)
     expect(page.body.restsOn).toEqual([{ estimate: estimate!.id, title: estimate!.title, conditional: estimate!.conditional }])
   })
