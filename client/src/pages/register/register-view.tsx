@@ -70,7 +70,9 @@ function EmptyRegister({ filtered, mayStart }: { filtered: boolean; mayStart: bo
   if (filtered)
     return (
       <Empty title="No constant fits these filters.">
-        <p>Digits are looked up as leading digits, so 1.6366 finds what begins with 1.6366. Try fewer filters.</p>
+        <p>
+          Digits are looked up as leading digits, so 1.6366 finds what begins with 1.6366. Try fewer filters, or <TextLink to={paths.lookUp()}>look up the digits</TextLink> to see what is near them.
+        </p>
       </Empty>
     )
   return (

@@ -1,5 +1,6 @@
 import { useRef } from 'react'
 import type { FormEvent } from 'react'
+import { paths } from '../../../app/paths.ts'
 import { Button } from '../../../components/ui/button.tsx'
 import { Field, Select, TextInput } from '../../../components/ui/field.tsx'
 import { TextLink } from '../../../components/ui/link.tsx'
@@ -79,6 +80,11 @@ export function RegisterFiltersForm({ filters, onFilter, clearTo, errorAt }: Reg
           <Field label="Certified digits" hint="at least" error={errorAt('minDigits')} className="w-36">{(control) => <TextInput {...control} {...at('minDigits')} inputMode="numeric" />}</Field>
         </div>
       </details>
+      {/^\d+[.,]\d/.test(String(filters.text ?? '')) && (
+        <p>
+          Only what begins with these digits is listed. <TextLink to={paths.lookUp({ digits: String(filters.text) })}>Look up the digits</TextLink> to see what they are near to.
+        </p>
+      )}
     </form>
   )
 }
