@@ -33,8 +33,7 @@ export async function assignReferee(member: SignedInMember, claimId: string, { r
 /** Reminds a referee who still owes an answer or a verdict. */
 export async function remindReferee(member: SignedInMember, claimId: string, { assignmentId }: Input<'remind'>): Promise<void> {
   await actOnClaim(member, claimId, 'remind', { subject: { assignmentId } }, async ({ transaction, claim, constant, tell }) => {
-    const assignment = await Assignment.findOne({ where: { id: assignmentId, claimId: claim.id }, transaction, lock: true })
-    if (!assignment) throw notFound('assignment')
+    const assignment = await Assignment.findByPk(assignmentId, { transaction, lock: true, rejectOnEmpty: true })
     const referee = await Member.findByPk(assignment.refereeId, { transaction, rejectOnEmpty: true })
     const days = Math.floor((Date.now() - (assignment.remindedAt ?? assignment.answeredAt ?? assignment.askedAt).getTime()) / 86_400_000)
     const what = assignment.state === 'asked' ? 'to accept or decline the review' : 'your verdict'

@@ -73,6 +73,7 @@ async function judged(member: SignedInMember, claim: Claim, act: PersonAct, { ve
   if (viewOf({ signedAt: claim.signedAt, groupPublic: group.public }, standing) === 'none') throw notOpen(true)
   const facts = await factsOf(claim, member.id, subject, transaction)
   if (subject?.objectionId !== undefined && !facts.objection) throw notFound('objection')
+  if (subject?.assignmentId !== undefined && facts.assignmentWaits === undefined) throw notFound('assignment')
   const judgement = judge(act, claim.state, standing, facts)
   if (!judgement.allowed && judgement.why === 'not-theirs') throw forbidden(judgement.code, judgement.says)
   if (version !== undefined && version !== claim.version) {

@@ -82,7 +82,7 @@ export async function factsOf(claim: ClaimRef, memberId: string | null, subject:
   const row = await selectOne<FactsRow>(FACTS, { claimId: claim.id, memberId }, transaction)
   if (!row) throw new Error('the claim is gone while it is looked at')
   const objection = subject.objectionId === undefined ? undefined : await objectionFacts(claim.id, subject.objectionId, memberId, transaction)
-  const waits = subject.assignmentId === undefined ? undefined : await assignmentWaits(subject.assignmentId, transaction)
+  const waits = subject.assignmentId === undefined ? undefined : await assignmentWaits(claim.id, subject.assignmentId, transaction)
   return {
     unanswered: row.unanswered,
     unsettled: row.unsettled,
@@ -111,13 +111,13 @@ async function objectionFacts(claimId: string, objectionId: string, memberId: st
   return row && { state: row.state, own: row.own, refereeGone: row.gone }
 }
 
-/** Whether a referee still owes something: an answer to being asked, or a verdict on the claim as it stands. */
-async function assignmentWaits(assignmentId: string, transaction?: Transaction): Promise<boolean> {
+/** Whether a referee still owes something: an answer to being asked, or a verdict on the claim as it stands; undefined where the claim has no such assignment. */
+async function assignmentWaits(claimId: string, assignmentId: string, transaction?: Transaction): Promise<boolean | undefined> {
   const row = await selectOne<{ waits: boolean }>(
     `SELECT s.state <> 'declined' AND (s.verdict IS NULL OR s.verdict_digest <> c.digest OR EXISTS (SELECT 1 FROM objections o WHERE o.assignment_id = s.id AND o.state = 'answered')) AS waits
-     FROM assignments s JOIN claims c ON c.id = s.claim_id WHERE s.id = $assignmentId`,
-    { assignmentId },
+     FROM assignments s JOIN claims c ON c.id = s.claim_id WHERE s.id = $assignmentId AND s.claim_id = $claimId`,
+    { claimId, assignmentId },
     transaction,
   )
-  return row?.waits ?? false
+  return row?.waits
 }

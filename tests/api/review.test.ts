@@ -66,8 +66,8 @@ describe('being asked to referee', () => {
     const { assignments } = await view(lead, claim.id)
     await act(lead, claim.id, 'remind', { assignmentId: assignments[0]!.id }).expect(200)
     expect(await lastMailTo(cast.referee.email)).toMatchObject({ template: 'reminder', text: expect.stringContaining('/claims/MST-') })
-    await takeTo('endorsed', await draft(cast.author), cast)
-    await act(lead, claim.id, 'remind', { assignmentId: claim.id }).expect(409)
+    const done = await view(lead, (await claimIn('endorsed', cast)).id)
+    expect((await act(lead, done.id, 'remind', { assignmentId: done.assignments[0]!.id }).expect(409)).body.code).toBe('nothing_to_remind')
   })
 })
 
