@@ -1,6 +1,6 @@
 import { files, paths } from '../../app/paths.ts'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
-import { ButtonLink, FileLink } from '../../components/ui/link.tsx'
+import { ButtonLink, FileLink, TextLink } from '../../components/ui/link.tsx'
 import { Page } from '../../components/ui/page.tsx'
 import { Pagination } from '../../components/ui/pagination.tsx'
 import type { Sorting } from '../../components/ui/table.tsx'
