@@ -4,6 +4,7 @@ import { act, claim, claimPage, desk, digitCheck, evidence, type Act } from '../
 import { constant, constantPage, lookUpResult } from '../../shared/schemas/constant.ts'
 import { estimate } from '../../shared/schemas/estimate.ts'
 import { auditCheck, auditPage, group, outboxItem, outboxPage, publicKeyList } from '../../shared/schemas/group.ts'
+import { importPreview, importResult } from '../../shared/schemas/import.ts'
 import { account, invitation, invitationList, invitationOffer, member, memberList } from '../../shared/schemas/member.ts'
 import { plan, run, runPage } from '../../shared/schemas/run.ts'
 import { accessTokenCreated, accessTokenList, ownSessionList, passwordResetOffer, session } from '../../shared/schemas/session.ts'
@@ -106,6 +107,8 @@ export const ANSWERS: Record<string, Answer> = {
   'POST /claims/:id/evidence': answer('attachEvidence', 'Upload a file in support of a draft', evidence, 201, 'file'),
   'GET /evidence/:id': answer('readEvidence', 'A file of evidence', 'application/octet-stream'),
   'DELETE /evidence/:id': answer('removeEvidence', 'Remove a file from a draft', null),
+  'POST /imports/preview': answer('previewImport', 'What a CSV table of digits would bring, line by line', importPreview, 200, 'file'),
+  'POST /imports': answer('importDigits', 'Draft a claim for every readable line of a CSV table of digits', importResult, 201, 'file'),
   'POST /digit-checks': answer('checkDigits', 'Hold pasted digits against a claim, a constant or an enclosure', digitCheck),
   'GET /desk': answer('readDesk', 'What waits for me, by role', desk),
 }

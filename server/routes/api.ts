@@ -12,6 +12,7 @@ import { digitCheck } from './digit-check.ts'
 import { estimate } from './estimate.ts'
 import { evidence } from './evidence.ts'
 import { group } from './group.ts'
+import { imports } from './import.ts'
 import { invitation } from './invitation.ts'
 import { key } from './key.ts'
 import { outbox } from './outbox.ts'
@@ -40,6 +41,7 @@ export const RESOURCES: readonly (readonly [string, Router])[] = [
   ['/claims', claim],
   ['/claims', claimAct],
   ['', evidence],
+  ['/imports', imports],
   ['/digit-checks', digitCheck],
   ['/desk', desk],
 ]
