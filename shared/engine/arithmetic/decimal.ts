@@ -51,9 +51,9 @@ export function certifiedDigits(lo: Rational, hi: Rational, limit: number): { tr
     for (let places = limit; places >= 0; places--) if (agree(places)) return places
     return -1
   }
-  // Truncation is towards zero, so an interval around 0 shares its integer part 0 or nothing.
+  // Truncation is towards zero, so an interval with 0 inside shares its integer part 0 or nothing.
   const truncate = (a: Rational, places: number): bigint => (a.num * 10n ** BigInt(places)) / a.den
-  const sameSign = lo.num > 0n || hi.num < 0n
+  const sameSign = lo.num >= 0n || hi.num <= 0n
   const width = subtract(hi, lo)
   const start = width.num === 0n ? limit : Math.min(limit, width.den.toString().length - width.num.toString().length + 1)
   if (start < 0) return { truncated: -1, rounded: -1 }

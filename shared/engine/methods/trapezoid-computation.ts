@@ -1,6 +1,6 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
-import { ONE, type Rational, add, compare, dyadic, multiply, rational, subtract } from '../arithmetic/rational.ts'
+import { ONE, type Rational, ZERO, add, compare, dyadic, multiply, rational, subtract } from '../arithmetic/rational.ts'
 import type { DirichletSeries } from '../series/dirichlet.ts'
 import { reciprocalGamma } from '../series/gamma.ts'
 import type { Computation, ComputationRequest, Outcome, ShardResult } from './computation.ts'
@@ -116,7 +116,9 @@ export class TrapezoidComputation implements Computation {
       const [sumLo, sumHi] = part.map((n) => multiply(dyadic(n, precision), width))
       // What is left out with the step 2^level h is at most 2^level times the bound for h, term by term.
       const most = add(sumHi, multiply(leftOut, rational(2 ** level)))
-      const lo = multiply(multiply(sumLo, subtract(ONE, kappa)), gamma[0])
+      const low = multiply(multiply(sumLo, subtract(ONE, kappa)), gamma[0])
+      // All terms of the constant are positive.
+      const lo = low.num < 0n ? ZERO : low
       const hi = multiply(multiply(most, add(ONE, multiply(kappa, rational(2)))), gamma[1])
       return { lo, hi, sumHi }
     }

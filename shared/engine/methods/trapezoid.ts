@@ -3,9 +3,10 @@ import { EngineRefusal } from '../errors.ts'
 import { type DirichletSeries } from '../series/dirichlet.ts'
 import { dirichletSeries } from '../series/families.ts'
 import type { Definition, SeriesDefinition } from '../sets/definition.ts'
-import type { ComputationRequest, Goal } from './computation.ts'
+import type { Goal } from './computation.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { TrapezoidComputation } from './trapezoid-computation.ts'
+import { predictSeconds } from './trapezoid-cost.ts'
 import { type TrapezoidParameters, chooseParameters, readParameters } from './trapezoid-parameters.ts'
 
 /** Beyond this many digits the trapezoid spends too many nodes; `panels` is the method then. */
@@ -58,13 +59,6 @@ function parametersFor(task: Task, goal: Goal): TrapezoidParameters {
   return chooseParameters(goal.digits, task.series, task.power, task.logPower, task.complexity, task.distinct)
 }
 
-/** CPU seconds for one sweep on the reference machine. heuristic: affects choice only */
-function predictSeconds(p: TrapezoidParameters, task: Task, arithmetic: ComputationRequest['arithmetic']): number {
-  const words = p.precision / 64
-  const perNode = (120 + 55 * words * words + 12 * task.series.length + 0.4 * task.complexity ** 2) * 1e-6
-  return (p.last - p.first + 1) * perNode * (arithmetic === 'mpfr' ? 5 : 1)
-}
-
 /** The Mellin transform by the trapezoid rule. */
 export const trapezoid: MethodModule = {
   name: 'transform',
@@ -74,7 +68,7 @@ export const trapezoid: MethodModule = {
       const task = taskOf([definition])
       const parameters = parametersFor(task, goal)
       const digits = 'digits' in goal ? goal.digits : 0
-      return { possible: true, radius: `1.0e-${digits + 1}`, seconds: predictSeconds(parameters, task, arithmetic) / speed }
+      return { possible: true, radius: `1.0e-${digits + 1}`, seconds: predictSeconds(definition, parameters, arithmetic) / speed }
     } catch (refusal) {
       if (refusal instanceof EngineRefusal) return { possible: false, reason: refusal.message }
       throw refusal
