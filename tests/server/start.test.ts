@@ -25,13 +25,14 @@ const post = (url: string, body: object) => fetch(url, { method: 'POST', headers
 /* First start, the processes killed one after the other, a second start on the same data, and the end. */
 describe('npm start', { timeout: LONG }, () => {
   let port = ''
+  const account = () => started[0]!.demoAccount()
   const first = () => started[0]!.ready()
 
   it('makes everything ready from nothing, and says where and for whom', async () => {
     port = String(await freePort())
-    const { address, account } = await start({ PORT: port }).ready()
+    const { address } = await start({ PORT: port }).ready()
     expect(address).toBe(`http://127.0.0.1:${port}`)
-    expect((await post(`${address}/api/v1/session`, account)).status).toBe(200)
+    expect((await post(`${address}/api/v1/session`, account())).status).toBe(200)
     const page = await fetch(`${address}/constants/MST-0001`, { headers: { Accept: 'text/html' } })
     expect(page.status).toBe(200)
     expect(page.headers.get('content-security-policy')).toContain("script-src 'self'")
@@ -39,10 +40,10 @@ describe('npm start', { timeout: LONG }, () => {
   })
 
   it('catches the mails that the worker sends', async () => {
-    const { address, mail, account } = await first()
-    expect((await post(`${address}/api/v1/password-resets`, { email: account.email })).status).toBe(202)
+    const { address, mail } = await first()
+    expect((await post(`${address}/api/v1/password-resets`, { email: account().email })).status).toBe(202)
     const caught = async () => ((await (await fetch(`${mail}/messages.json`)).json()) as { to: string; text: string }[])[0]
-    await expect.poll(caught, { timeout: 30_000 }).toMatchObject({ to: expect.stringContaining(account.email), text: expect.stringContaining(`${address}/password-reset/`) })
+    await expect.poll(caught, { timeout: 30_000 }).toMatchObject({ to: expect.stringContaining(account().email), text: expect.stringContaining(`${address}/password-reset/`) })
   })
 
   it('refuses to run twice on the same data', async () => {
@@ -52,17 +53,17 @@ describe('npm start', { timeout: LONG }, () => {
   })
 
   it.each(['index.js web', 'index.js worker', 'bin/postgres -D'])('starts %s again when it is killed', async (part) => {
-    const { address, account } = await first()
+    const { address } = await first()
     await started[0]!.killAndAwaitNext(part)
     await expect.poll(() => isReady(address), { timeout: 30_000 }).toBe(true)
-    expect((await post(`${address}/api/v1/session`, account)).status).toBe(200)
+    expect((await post(`${address}/api/v1/session`, account())).status).toBe(200)
   })
 
   it('leaves no process of its own when it is killed, and goes on from its data at the next start', async () => {
     await started[0]!.end('SIGKILL')
     await expect.poll(() => started[0]!.processes().filter(({ command }) => !command.includes('postgres')), { timeout: 30_000 }).toEqual([])
-    const { address, account } = await start({ PORT: port }).ready()
-    expect((await post(`${address}/api/v1/session`, account)).status).toBe(200)
+    const { address } = await start({ PORT: port }).ready()
+    expect((await post(`${address}/api/v1/session`, account())).status).toBe(200)
   })
 
   it('stops everything when it is told to', async () => {

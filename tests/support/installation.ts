@@ -2,12 +2,19 @@ import { spawn, type ChildProcess } from 'node:child_process'
 import { chmodSync, mkdtempSync, readdirSync, readFileSync, rmSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { expect } from 'vitest'
+import { setTimeout as pause } from 'node:timers/promises'
 import { root } from '../../server/scripts/say.mjs'
 
 const READY_MS = 120_000
 /** Settings of the test run that the installation must not take over. */
 const FOREIGN = ['DATABASE_URL', 'DATABASE_OWNER_URL', 'PUBLIC_URL', 'SESSION_SECRET', 'SMTP_URL', 'PORT']
+
+/** Waits for a condition, also outside a test. */
+export async function until(holds: () => boolean | Promise<boolean>, milliseconds: number, what: string): Promise<void> {
+  for (const deadline = Date.now() + milliseconds; !(await holds()); await pause(100)) {
+    if (Date.now() > deadline) throw new Error(`Waited ${milliseconds} ms in vain for ${what}`)
+  }
+}
 
 /** `npm start` as a person runs it, on a data folder of its own: real processes, real database, real mail. */
 export class Installation {
@@ -29,15 +36,21 @@ export class Installation {
     this.exit = new Promise((resolve) => this.child.once('exit', resolve))
   }
 
-  /** Addresses of the product and of the caught mail, once it is ready, and the first demo account. */
-  async ready(): Promise<{ address: string; mail: string; account: { email: string; password: string } }> {
-    await Promise.race([expect.poll(() => this.output, { timeout: READY_MS, interval: 100 }).toContain('Ctrl-C stops it.'), this.exit])
-    const find = (pattern: RegExp): string => {
-      const found = pattern.exec(this.output)?.[1]
-      if (found === undefined) throw new Error(`It did not start:\n${this.output}`)
-      return found
-    }
-    return { address: find(/is ready: (\S+)/), mail: find(/caught here: (\S+)/), account: { email: find(/^ +(\S+@\S+)/m), password: find(/password "([^"]+)"/) } }
+  /** Addresses of the product and of the caught mail, once it is ready. */
+  async ready(): Promise<{ address: string; mail: string }> {
+    await Promise.race([until(() => this.output.includes('Ctrl-C stops it.'), READY_MS, 'npm start to get ready'), this.exit])
+    return { address: this.printed(/is ready: (\S+)/), mail: this.printed(/caught here: (\S+)/) }
+  }
+
+  /** The first of the demo accounts that it has printed. */
+  demoAccount(): { email: string; password: string } {
+    return { email: this.printed(/^ +(\S+@\S+)/m), password: this.printed(/password "([^"]+)"/) }
+  }
+
+  private printed(pattern: RegExp): string {
+    const found = pattern.exec(this.output)?.[1]
+    if (found === undefined) throw new Error(`It did not start:\n${this.output}`)
+    return found
   }
 
   ended(): Promise<number | null> {
@@ -70,7 +83,7 @@ export class Installation {
     const old = this.processes().find(({ command }) => command.includes(part))
     if (!old) throw new Error(`There is no process ${part}`)
     process.kill(old.pid, 'SIGKILL')
-    await expect.poll(() => this.processes().some(({ pid, command }) => command.includes(part) && pid !== old.pid), { timeout: 30_000 }).toBe(true)
+    await until(() => this.processes().some(({ pid, command }) => command.includes(part) && pid !== old.pid), 60_000, `another process ${part}`)
   }
 }
 

@@ -6,12 +6,11 @@ export default class SummaryReporter implements Reporter {
     let passed = 0
     let failed = errors.length
     for (const module of modules) {
-      if (module.state() === 'failed' && [...module.children.allTests()].length === 0) failed += 1
-      for (const test of module.children.allTests()) {
-        const state = test.result().state
-        if (state === 'passed') passed += 1
-        else if (state === 'failed') failed += 1
-      }
+      const states = [...module.children.allTests()].map((test) => test.result().state)
+      const failures = states.filter((state) => state === 'failed').length
+      passed += states.filter((state) => state === 'passed').length
+      // A file can fail before any of its tests does: at its import, or in what is done before all of them.
+      failed += failures === 0 && module.state() === 'failed' ? 1 : failures
     }
     // Vitest takes a filter that matches nothing for a success.
     if (passed + failed === 0) process.exitCode = 1
