@@ -6,6 +6,7 @@ export function Colophon() {
   const links: [label: string, to: string][] = [
     ['How it is certified', paths.about()],
     ['Verify a certificate', paths.verify()],
+    ['For programs', paths.programs()],
     ['Digit check', paths.digitCheck()],
     ['Look up digits', paths.lookUp()],
     ['Public keys', paths.keys()],

@@ -34,6 +34,8 @@ export const paths = {
   keys: () => '/keys',
   verify: () => '/verify',
   about: () => '/about',
+  programs: () => '/programs',
+  importDigits: () => '/claims/import',
   account: () => '/account',
   signIn: (returnTo?: string) => withSearch('/sign-in', { to: returnTo }),
   forgotPassword: () => '/password-reset',
@@ -43,6 +45,7 @@ export const paths = {
 
 /** Files and streams of the server. */
 export const files = {
+  apiDocument: () => '/api/v1/openapi.json',
   claimCertificate: (id: string) => `/api/v1/claims/${id}/certificate`,
   runCertificate: (id: string) => `/api/v1/runs/${id}/certificate`,
   runEvents: (id: string) => `/api/v1/runs/${id}/events`,

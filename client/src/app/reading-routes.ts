@@ -25,6 +25,7 @@ export function readingRoutes(client: QueryClient, prefetch: Prefetch): RouteObj
       lazy: async () => ({ Component: (await import('../pages/keys/keys-page.tsx')).KeysPage }),
     },
     { path: 'verify', lazy: async () => ({ Component: (await import('../pages/verify/verify-page.tsx')).VerifyPage }) },
+    { path: 'programs', lazy: async () => ({ Component: (await import('../pages/programs/programs-page.tsx')).ProgramsPage }) },
     { path: 'about', lazy: async () => ({ Component: (await import('../pages/about/about-page.tsx')).AboutPage }) },
   ]
 }

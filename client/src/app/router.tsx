@@ -53,6 +53,7 @@ export function createRouter(client: QueryClient) {
       lazy: async () => ({ Component: (await import('../pages/run/run-page.tsx')).RunPage }),
     },
     { path: 'claims/new', handle: MEMBERS, lazy: async () => ({ Component: (await import('../pages/new-claim/new-claim-page.tsx')).NewClaimPage }) },
+    { path: 'claims/import', handle: MEMBERS, lazy: async () => ({ Component: (await import('../pages/import/import-page.tsx')).ImportPage }) },
     {
       path: 'claims/:id',
       loader: prefetch(({ params }) => client.prefetchQuery(claimQuery(params.id ?? ''))),

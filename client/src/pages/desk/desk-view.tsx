@@ -29,7 +29,15 @@ export function DeskView({ desk, error, onRetry, roles }: DeskViewProps) {
   const parts = PARTS.filter((part) => roles.includes(part.role) || (desk && desk[part.role].length > 0))
   const nothing = desk && parts.every((part) => desk[part.role].length === 0)
   return (
-    <Page title="Desk" head={<h1>Desk</h1>}>
+    <Page
+      title="Desk"
+      head={
+        <div className="flex flex-wrap items-baseline justify-between gap-x-8 gap-y-1">
+          <h1>Desk</h1>
+          {roles.includes('researcher') && <TextLink to={paths.importDigits()}>Import a table of digits</TextLink>}
+        </div>
+      }
+    >
       {error && !desk ? (
         <ErrorView title="The desk could not be read" error={error} onRetry={onRetry} />
       ) : !desk ? (
