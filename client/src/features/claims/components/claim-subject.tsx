@@ -24,7 +24,8 @@ export function ClaimSubject({ claim }: { claim: Claim }) {
         )}
         {claim.digits && (
           <p className="mt-2 text-[0.92rem] text-soft">
-            {claim.digits.truncated} digits after the point certified when truncated, {claim.digits.rounded} when rounded.
+            {claim.digits.truncated} digits after the point {claim.kind === 'stated' && !claim.repeatedHere ? 'follow from what the source states' : 'certified'} when truncated, {claim.digits.rounded} when
+            rounded.
           </p>
         )}
       </div>
