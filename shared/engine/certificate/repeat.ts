@@ -50,8 +50,9 @@ async function recompute(certificate: Certificate, findings: string[], onProgres
     const [outcome] = await computeAll(computation, onProgress)
     return outcome
   } catch (error) {
-    if (!(error instanceof EngineRefusal)) throw error
-    findings.push(`The engine will not run it: ${error.message}`)
+    // A RangeError comes from intervals too wide to go on with, which only parameters nobody would choose bring about.
+    if (!(error instanceof EngineRefusal || error instanceof RangeError)) throw error
+    findings.push(`The engine cannot run it: ${error.message}`)
     return null
   }
 }

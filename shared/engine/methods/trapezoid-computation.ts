@@ -1,11 +1,11 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
-import { ONE, type Rational, ZERO, add, compare, dyadic, multiply, rational, subtract } from '../arithmetic/rational.ts'
+import { ONE, type Rational, compare, dyadic, multiply, rational, subtract } from '../arithmetic/rational.ts'
 import type { DirichletSeries } from '../series/dirichlet.ts'
 import { reciprocalGamma } from '../series/gamma.ts'
 import type { Computation, ComputationRequest, Outcome, ShardResult } from './computation.ts'
-import { type ExactBudgetItem, decimalEnclosure, describeEnclosure, halfWidth } from './outcome.ts'
 import { discretisationUpper, truncationAboveUpper, truncationBelowUpper } from './trapezoid-bounds.ts'
+import { encloseConstant } from './trapezoid-outcome.ts'
 import { type TrapezoidParameters, writeParameters } from './trapezoid-parameters.ts'
 import { LEVELS, type LevelSums, TrapezoidSweep } from './trapezoid-sweep.ts'
 
@@ -64,9 +64,24 @@ export class TrapezoidComputation implements Computation {
     const gammaBounds: [Rational, Rational] = [bounds.lower(gamma), bounds.upper(gamma)]
     const kappas = Array.from({ length: LEVELS }, (_, level) => this.kappa(bounds, level))
     const atLast = sweep.atNode(this.chosen.last, this.series)
-    return this.series.map((one, index) =>
-      this.outcome(index, addShards(results, index), this.truncation(bounds, one, atLast[index][1]), kappas, gammaBounds),
-    )
+    return this.series.map((one, index) => ({
+      definition: this.request.definitions[index],
+      method: 'transform',
+      arithmetic: this.request.arithmetic,
+      goal: this.request.goal,
+      parameters: this.parameters,
+      estimates: [],
+      ...encloseConstant({
+        sums: addShards(results, index),
+        nodes: this.nodes,
+        step: this.chosen.step,
+        precision: this.chosen.precision,
+        roundingBound: this.request.arithmetic === 'ball' ? 'A-3' : 'A-8',
+        kappas,
+        ...this.truncation(bounds, one, atLast[index][1]),
+        gamma: gammaBounds,
+      }),
+    }))
   }
 
   private range(index: number): [number, number] {
@@ -95,57 +110,6 @@ export class TrapezoidComputation implements Computation {
     return {
       below: truncationBelowUpper(bounds, series, step, first, subtract(this.logPower, rational(series.pole))),
       above: truncationAboveUpper(bounds, series, step, value, t, this.logPower),
-    }
-  }
-
-  /** T-2: I in [h sum (1 - kappa), (h sum + what was left out) / (1 - kappa)], and the constant is I / Gamma(b). */
-  private outcome(
-    index: number,
-    sums: LevelSums,
-    { below, above }: { below: Rational; above: Rational },
-    kappas: Rational[],
-    gamma: [Rational, Rational],
-  ): Outcome {
-    const { step, precision } = this.chosen
-    const leftOut = add(below, above)
-    const enclose = (level: number): { lo: Rational; hi: Rational; sumHi: Rational } | null => {
-      const kappa = kappas[level]
-      if (compare(kappa, rational(1, 2)) >= 0) return null
-      const part = sums.slice(level).reduce(([lo, hi], [a, b]) => [lo + a, hi + b], [0n, 0n])
-      const width = multiply(step, rational(2 ** level))
-      const [sumLo, sumHi] = part.map((n) => multiply(dyadic(n, precision), width))
-      // What is left out with the step 2^level h is at most 2^level times the bound for h, term by term.
-      const most = add(sumHi, multiply(leftOut, rational(2 ** level)))
-      const low = multiply(multiply(sumLo, subtract(ONE, kappa)), gamma[0])
-      // All terms of the constant are positive.
-      const lo = low.num < 0n ? ZERO : low
-      const hi = multiply(multiply(most, add(ONE, multiply(kappa, rational(2)))), gamma[1])
-      return { lo, hi, sumHi }
-    }
-    const finest = enclose(0)
-    if (!finest) throw new Error('the step is too wide for its bound')
-    const { lo, hi, sumHi } = finest
-    const half = rational(1, 2)
-    const items: ExactBudgetItem[] = [
-      { source: 'discretisation', bound: 'T-2', magnitude: multiply(multiply(multiply(kappas[0], rational(3, 2)), sumHi), gamma[1]) },
-      { source: 'truncation-below', bound: 'T-3', magnitude: multiply(multiply(below, half), gamma[1]) },
-      { source: 'truncation-above', bound: 'T-4', magnitude: multiply(multiply(above, half), gamma[1]) },
-    ]
-    const counted = items.reduce((total, item) => add(total, item.magnitude), rational(0))
-    const rounding = subtract(halfWidth(lo, hi), counted)
-    return {
-      definition: this.request.definitions[index],
-      method: 'transform',
-      arithmetic: this.request.arithmetic,
-      goal: this.request.goal,
-      parameters: this.parameters,
-      estimates: [],
-      ...describeEnclosure(lo, hi, [...items, { source: 'rounding', bound: this.request.arithmetic === 'ball' ? 'A-3' : 'A-8', magnitude: rounding.num > 0n ? rounding : rational(0) }]),
-      convergence: [3, 2, 1, 0].flatMap((level) => {
-        const enclosed = enclose(level)
-        if (!enclosed) return []
-        return [{ at: String(Math.floor(this.nodes / 2 ** level)), ...decimalEnclosure(enclosed.lo, enclosed.hi) }]
-      }),
     }
   }
 }

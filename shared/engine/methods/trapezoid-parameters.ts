@@ -1,4 +1,4 @@
-import { ONE, type Rational, compare, parseRational, rational, toText } from '../arithmetic/rational.ts'
+import { ONE, type Rational, compare, multiply, parseRational, rational, toText } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
 import type { DirichletSeries } from '../series/dirichlet.ts'
 import type { Parameters } from './computation.ts'
@@ -27,6 +27,9 @@ const WHOLE: Record<'precision' | 'first' | 'last' | 'terms' | 'split', [number,
   split: [3, 5_000],
 }
 
+/** u = log t of the last node: e^20 is beyond every t that a run within the limits needs. */
+const LARGEST_U = 20
+
 /** Reads parameters out of a certificate; what is not in range is refused, nothing is trusted beyond that. */
 export function readParameters(given: Parameters): TrapezoidParameters {
   const whole = (name: keyof typeof WHOLE): number => {
@@ -44,11 +47,15 @@ export function readParameters(given: Parameters): TrapezoidParameters {
     }
     return value
   }
+  const [step, last] = [fraction('step'), whole('last')]
+  if (compare(multiply(step, rational(last)), rational(LARGEST_U)) > 0) {
+    throw new EngineRefusal('unsound_parameter', 'last', `The last node must lie at or below ${LARGEST_U}.`)
+  }
   return {
     precision: whole('precision'),
-    step: fraction('step'),
+    step,
     first: whole('first'),
-    last: whole('last'),
+    last,
     gap: fraction('gap'),
     terms: whole('terms'),
     split: whole('split'),

@@ -1,7 +1,7 @@
 import { combine as linear } from '../arithmetic/polynomial.ts'
-import { type Rational, ONE, parseRational } from '../arithmetic/rational.ts'
 import type { Definition, OverPrimesDefinition, SeriesDefinition, SetOfIntegers } from './definition.ts'
 import { polynomialText } from './polynomial-text.ts'
+import { type Plain, weightText } from './weight-text.ts'
 
 /** How a definition reads: LaTeX for print and screen, one line of plain text, and other usual names of the same number. */
 export interface Reading {
@@ -15,8 +15,6 @@ export function readDefinition(definition: Definition): Reading {
   const { latex, text } = definition.type === 'series' ? series(definition) : definition.type === 'over-primes' ? overPrimes(definition) : mertens()
   return { latex, text, aliases: aliasesOf(definition) }
 }
-
-type Plain = Pick<Reading, 'latex' | 'text'>
 
 function series({ set, weight }: SeriesDefinition): Plain {
   const [name, latexConditions, textConditions] = conditions(set)
@@ -71,41 +69,6 @@ function kindConditions(set: Exclude<SetOfIntegers, { kind: 'finite' }>): [strin
     case 'residue-class':
       return [[`p \\equiv ${set.residue} \\pmod{${set.modulus}}`], `primes p = ${set.residue} mod ${set.modulus}`]
   }
-}
-
-function weightText(weight: SeriesDefinition['weight'], name: string): Plain {
-  const [s0, b] = [exact(weight.power), exact(weight.logPower)]
-  const latexLog = logarithm(b.num < 0n ? { num: -b.num, den: b.den } : b, name, true)
-  const textLog = logarithm(b.num < 0n ? { num: -b.num, den: b.den } : b, name, false)
-  const latexPower = raised(name, s0, true)
-  const textPower = raised(name, s0, false)
-  if (b.num === 0n) return { latex: `\\frac{1}{${latexPower}}`, text: `1/${textPower}` }
-  if (b.num < 0n) return { latex: `\\frac{${latexLog}}{${latexPower}}`, text: `${textLog}/${textPower}` }
-  return { latex: `\\frac{1}{${latexPower} ${latexLog}}`, text: `1/(${textPower} ${textLog})` }
-}
-
-function exact(text: string): Rational {
-  const value = parseRational(text)
-  if (!value) throw new RangeError(`not an exact number: ${text}`)
-  return value
-}
-
-function isOne(a: Rational): boolean {
-  return a.num === ONE.num && a.den === ONE.den
-}
-
-function exponentText(a: Rational, latex: boolean): string {
-  const plain = a.den === 1n ? a.num.toString() : `${a.num}/${a.den}`
-  return latex ? `{${plain}}` : a.den === 1n ? plain : `(${plain})`
-}
-
-function raised(name: string, a: Rational, latex: boolean): string {
-  return isOne(a) ? name : `${name}^${exponentText(a, latex)}`
-}
-
-function logarithm(b: Rational, name: string, latex: boolean): string {
-  const log = latex ? '\\log' : 'log'
-  return isOne(b) ? `${log} ${name}` : `${log}^${exponentText(b, latex)} ${name}`
 }
 
 function overPrimes({ numerator, denominator, combine, exclude }: OverPrimesDefinition): Plain {
