@@ -32,7 +32,7 @@ export function Field({ label, hint, error, required, narrow, className, childre
   const id = useId()
   const describedBy = [hint ? `${id}-hint` : '', error ? `${id}-error` : ''].filter(Boolean).join(' ')
   return (
-    <div className={classNames('grid content-start gap-1', narrow && '[&>input]:max-w-44 [&>select]:max-w-44', className)}>
+    <div className={classNames('grid grid-cols-[minmax(0,1fr)] content-start gap-1', narrow && '[&>input]:max-w-44 [&>select]:max-w-44', className)}>
       <label htmlFor={id} className="font-semibold leading-tight">
         {label}
       </label>

@@ -22,7 +22,7 @@ export function EvidenceList({ claim, onUpload, onRemove }: EvidenceListProps) {
   const [failure, setFailure] = useState<string | null>(null)
   const act = (promise: Promise<unknown>) => promise.then(() => setFailure(null), (error: unknown) => setFailure(reasonOf(error)))
   return (
-    <div className="grid gap-5">
+    <div className="grid grid-cols-[minmax(0,1fr)] gap-5">
       {claim.evidence.length === 0 ? (
         <p className="max-w-prose text-soft">No evidence{claim.abilities.attach ? ' yet. A manuscript page, a program, its log, a table of digits: whatever a referee should see.' : ' was given beside the certificate.'}</p>
       ) : (
