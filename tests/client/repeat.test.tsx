@@ -9,6 +9,7 @@ import { ENGINE_RELEASE } from '../../client/src/features/repeat/engine-release.
 import type { RepeatAnswer, RepeatRequest } from '../../client/src/features/repeat/messages.ts'
 import { checkDigest, checkSignature } from '../../client/src/features/repeat/signature-check.ts'
 import { VerifyView } from '../../client/src/pages/verify/verify-view.tsx'
+import { readEngineRelease } from '../../server/engine-release.ts'
 import { makeCertificate } from '../../shared/engine/certificate/certificate.ts'
 import type { Certificate } from '../../shared/engine/certificate/certificate.ts'
 import { repeatCertificate } from '../../shared/engine/certificate/repeat.ts'
@@ -86,6 +87,10 @@ describe('repeating', () => {
     worker.say({ kind: 'failed', message: 'Out of memory.' })
     expect(screen.getByRole('alert')).toHaveTextContent('The repetition broke off. Out of memory. That says nothing about the certificate.')
   })
+})
+
+test('the page knows which engine runs in it: the one in the sources', () => {
+  expect(ENGINE_RELEASE).toEqual(readEngineRelease())
 })
 
 describe('digest and signature', () => {
