@@ -1,6 +1,7 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
-import { ONE, type Rational, ZERO, add, ceilScaled, divide, dyadic, multiply, rational, subtract, toText } from '../arithmetic/rational.ts'
+import { bitLength, factorial, max } from '../arithmetic/integers.ts'
+import { ONE, type Rational, ZERO, add, ceil, ceilScaled, divide, dyadic, multiply, rational, subtract, toText } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
 import { reciprocalGamma } from '../series/gamma.ts'
 import { areDescending, spareBits } from '../series/gauss-legendre.ts'
@@ -9,7 +10,6 @@ import type { MellinTask } from './mellin-task.ts'
 import { type ExactBudgetItem, decimalEnclosure, describeEnclosure, halfWidth } from './outcome.ts'
 import { type Summand, edgeErrorUpper, panelErrorUpper, seriesUpper, tailUpper } from './panels-bounds.ts'
 import { type PanelsParameters, writeParameters } from './panels-parameters.ts'
-import { nodeCost } from './panels-plan.ts'
 import { type BlockResult, type Block, cutIntoBlocks, readBlock, writeBlock } from './panels-shards.ts'
 import { NODE_BITS, PanelsSweep, type SweepSeries } from './panels-sweep.ts'
 
@@ -17,10 +17,11 @@ import { NODE_BITS, PanelsSweep, type SweepSeries } from './panels-sweep.ts'
 const BOUND_BITS = 64
 
 /**
- * What the pieces up to some point give for one series: lo and hi of their sums, and the bounds of their errors, all in units of
- * 2^-(precision + BOUND_BITS), the errors rounded up.
+ * What the pieces up to some point give for one series: lo and hi of their sums, and the bounds of their errors rounded up, all in
+ * units of 2^-bits.
  */
 interface Prefix {
+  bits: number
   nodes: number
   lo: bigint
   hi: bigint
@@ -47,7 +48,7 @@ export class PanelsComputation implements Computation {
     this.parameters = writeParameters(chosen)
     this.task = task
     this.list = list
-    this.blocks = cutIntoBlocks(chosen, (t) => nodeCost({ ...chosen, complexity: task.complexity }, Number(task.power.num) / Number(task.power.den) + t))
+    this.blocks = cutIntoBlocks(chosen, task.power, task.complexity)
     this.shardCount = this.blocks.length
   }
 
@@ -69,7 +70,7 @@ export class PanelsComputation implements Computation {
   async interim(results: (ShardResult | undefined)[]): Promise<Enclosure[] | null> {
     const pieces = this.pieces(this.blocks.map((block, i) => (results[i] === undefined ? null : readBlock(block, results[i]))))
     const bounds = await this.boundArithmetic()
-    const gamma = gammaBounds(bounds, this.task.logPower)
+    const gamma = await this.gammaBounds()
     const found = this.list.map((_, index) => {
       const last = this.prefixes(bounds, pieces, index).filter((prefix) => prefix.tail !== null).pop()
       return last && decimalEnclosure(...enclose(last, gamma))
@@ -81,12 +82,20 @@ export class PanelsComputation implements Computation {
     if (results.length !== this.shardCount) throw new Error('a run by panels is combined from the results of all its shards')
     const pieces = this.pieces(results.map((result, i) => readBlock(this.blocks[i], result)))
     const bounds = await this.boundArithmetic()
-    const gamma = gammaBounds(bounds, this.task.logPower)
+    const gamma = await this.gammaBounds()
     return this.list.map((_, index) => this.outcome(index, this.prefixes(bounds, pieces, index), gamma))
   }
 
   private boundArithmetic(): Promise<Arithmetic<AnyNumber>> {
     return createArithmetic(this.request.arithmetic, this.chosen.precision + BOUND_BITS)
+  }
+
+  /** 1/Gamma(b) may be tiny: the size of Gamma(b) is added to the bits. */
+  private async gammaBounds(): Promise<GammaBounds> {
+    const { logPower } = this.task
+    const a = await createArithmetic(this.request.arithmetic, this.chosen.precision + BOUND_BITS + bitLength(factorial(Number(ceil(logPower)))))
+    const [low, high] = a.fixedBounds(reciprocalGamma(a, logPower))
+    return { low, high, bits: a.precision }
   }
 
   private ready(): Promise<PanelsSweep> {
@@ -121,14 +130,16 @@ export class PanelsComputation implements Computation {
   private prefixes(bounds: Arithmetic<AnyNumber>, pieces: readonly BlockResult[][], index: number): Prefix[] {
     const { chosen, task, list } = this
     const summand: Summand = { power: task.power, logPower: task.logPower, least: list[index].series.leastMember }
-    const units = (error: Rational): bigint => ceilScaled(error, chosen.precision + BOUND_BITS)
+    const bits = chosen.precision + BOUND_BITS
+    const units = (error: Rational): bigint => ceilScaled(error, bits)
     const prefixes: Prefix[] = []
     pieces.forEach((blocks, piece) => {
-      const before = prefixes[piece - 1] ?? { nodes: 0, lo: 0n, hi: 0n, edge: 0n, panels: 0n, tail: null }
+      const before = prefixes[piece - 1] ?? { bits, nodes: 0, lo: 0n, hi: 0n, edge: 0n, panels: 0n, tail: null }
       const [lo, hi] = blocks.reduce(([a, b], { sums }) => [a + sums[index][0], b + sums[index][1]], [0n, 0n])
       const panel = chosen.panels[piece - 1]
       const tail = tailUpper(bounds, panel?.to ?? chosen.edge, summand)
       prefixes.push({
+        bits,
         nodes: before.nodes + (panel?.nodes ?? chosen.edgeNodes),
         lo: before.lo + (lo << BigInt(BOUND_BITS)),
         hi: before.hi + (hi << BigInt(BOUND_BITS)),
@@ -165,7 +176,7 @@ export class PanelsComputation implements Computation {
     const whole = prefixes[prefixes.length - 1]
     if (prefixes.length <= this.chosen.panels.length || whole.tail === null) throw new Error('results are missing, or the last panel ends too early')
     const [lo, hi] = enclose(whole, gamma)
-    const share = (units: bigint): Rational => dyadic(units * gamma.high, 2 * gamma.bits)
+    const share = (units: bigint): Rational => dyadic(units * gamma.high, whole.bits + gamma.bits)
     const items: ExactBudgetItem[] = [
       { source: 'discretisation', bound: 'P-4', magnitude: share(whole.edge) },
       { source: 'discretisation', bound: 'P-7', magnitude: share(whole.panels) },
@@ -192,18 +203,14 @@ interface GammaBounds {
   bits: number
 }
 
-function gammaBounds(a: Arithmetic<AnyNumber>, logPower: Rational): GammaBounds {
-  const [low, high] = a.fixedBounds(reciprocalGamma(a, logPower))
-  return { low, high, bits: a.precision }
-}
-
 /**
- * The integral is within the sums' bounds, widened by the discretisation and, above, by the tail (P-1); the constant is it over
- * Gamma(b). Both are in units of 2^-bits.
+ * The integral is within the sums' bounds, widened by the discretisation and, above, by the tail, and it is not negative (P-1); the
+ * constant is it over Gamma(b).
  */
-function enclose(prefix: Prefix, { low, high, bits }: GammaBounds): [Rational, Rational] {
+function enclose(prefix: Prefix, gamma: GammaBounds): [Rational, Rational] {
   const error = prefix.edge + prefix.panels
-  const lo = prefix.lo - error
-  const hi = prefix.hi + error + (prefix.tail ?? 0n)
-  return [dyadic(lo * (lo < 0n ? high : low), 2 * bits), dyadic(hi * (hi < 0n ? low : high), 2 * bits)]
+  const lo = max(0n, prefix.lo - error)
+  const hi = max(0n, prefix.hi + error + (prefix.tail ?? 0n))
+  const bits = prefix.bits + gamma.bits
+  return [dyadic(lo * gamma.low, bits), dyadic(hi * gamma.high, bits)]
 }

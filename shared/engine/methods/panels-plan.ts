@@ -26,10 +26,11 @@ export interface PlanInput {
 /** Digits computed beyond those asked for, so that the digits asked for are certified but for rare strings of 0 or 9. */
 const SPARE_DIGITS = 5
 /** Panel ends are the edge times these and their multiples by powers of 4. */
-const GRID = [1, 1.25, 1.5, 2, 2.5, 3]
+const GRID = [1, 1.25, 1.5, 1.75, 2, 2.5, 3, 3.5]
 /** Semi-axes tried, as parts of the way from 1 to where the ellipse touches 0. */
 const PARTS = [0.2, 0.3, 0.4, 0.5, 0.6, 0.7, 0.8, 0.85, 0.9, 0.93, 0.96, 0.98]
 const AXIS_DENOMINATOR = 1_024
+const LEAST_PRECISION = 64
 
 const log2 = (x: number): number => Math.log2(x) // heuristic: affects speed only
 const ellipse = (axis: number): number => log2(axis + Math.sqrt(axis * axis - 1)) // heuristic: affects speed only
@@ -50,6 +51,16 @@ export function nodeCost(p: { precision: number; terms: number; split: number; c
   return 40 + orders * (1.2 * p.terms * product + 4) + 0.25 * p.terms * (2 + product * words) + p.complexity * p.complexity * 0.4
 }
 
+/** The s whose cost is about the mean over the nodes of a panel: 1/s has the mean 1/sqrt(from to) over them. */
+function meanOf(from: number, to: number): number {
+  return Math.sqrt(from * to) // heuristic: affects speed only
+}
+
+/** The same for the part [from, to] of t, s = power + t. */
+export function meanPoint(power: Rational, from: Rational, to: Rational): number {
+  return meanOf(approx(power) + approx(from), approx(power) + approx(to))
+}
+
 /** log2 of a whole number, linear between powers of 2. */
 function roughLog2(n: number): number {
   const whole = 31 - Math.clz32(n)
@@ -62,11 +73,7 @@ export function planPanels(input: PlanInput): PanelsParameters {
   // The integral is Gamma(b) times the constant, and may be wrong by as much more.
   const bits = (digits + SPARE_DIGITS) * log2(10) - logGamma(b)
   const end = truncationPoint(bits, 1 + excess, b, logLeast)
-  const size = input.complexity * Math.max(0, -log2(Math.min(1, input.edgeExponent)))
-  const loss = 30 + Math.max(0, b - 1) * log2(end) + size + log2(1 + 1 / Math.max(excess, 1e-300)) * (excess > 0 ? 1 : 0)
-  const precision = Math.ceil(bits + loss + (input.distinct ? 2 * input.complexity + 10 : 0))
-  const settings = { precision, terms: Math.ceil(precision / 2.54) + 1, split: Math.max(50, Math.ceil(precision / 2.54)) }
-  const cost = (t: number): number => nodeCost({ ...settings, complexity: input.complexity }, 1 + excess + t)
+  const cost = (s: number): number => nodeCost({ ...settingsFor(input, bits, end), complexity: input.complexity }, s)
 
   const unit = excess > 0 ? 2 ** Math.round(log2(excess)) : 1
   const sizes = excess > 0 ? [4, 2, 1, 0.5] : [1, 0.5, 0.25]
@@ -76,13 +83,22 @@ export function planPanels(input: PlanInput): PanelsParameters {
     const reach = excess > 0 ? scaled(excess, 15 / 16) : rational(31, 64)
     const edgeBits = bits + input.edgeGrowth(eps, reach) + input.edgeExponent * log2(edge)
     const edgeNodes = Math.max(2, Math.ceil(edgeBits / ellipse(1 + (2 * approx(reach)) / edge)) + 1)
-    const { panels, total } = bestPanels(edge, Math.max(end, 2 * edge), bits, b, excess, logLeast, cost)
+    const { panels, total } = bestPanels(edge, Math.max(end, Math.ceil(2 * edge)), bits, b, excess, logLeast, cost)
     // The product rule costs a row of Legendre polynomials a node and as many products a power of the logarithm.
-    const rule = edgeNodes * edgeNodes * (0.4 + 0.12 * input.complexity) * (1 + (precision / 512) ** 2) * 0.5
-    return { edge: eps, edgeReach: reach, edgeNodes, panels, total: total + edgeNodes * cost(0) + rule }
+    const rule = edgeNodes * edgeNodes * (0.4 + 0.12 * input.complexity) * (1 + (bits / 512) ** 2) * 0.5
+    return { edge: eps, edgeReach: reach, edgeNodes, panels, total: total + edgeNodes * cost(1 + excess) + rule }
   })
   const { edge, edgeReach, edgeNodes, panels } = plans.reduce((best, plan) => (plan.total < best.total ? plan : best))
-  return { ...settings, edge, edgeReach, edgeNodes, panels }
+  return { ...settingsFor(input, bits, approx(panels[panels.length - 1].to)), edge, edgeReach, edgeNodes, panels }
+}
+
+/** Bits for sums of many terms, for t^(b-1) up to t = last, for weights near 0, for 1/(s0 - 1), for powers of 1/(p^s - 1). */
+function settingsFor(input: PlanInput, bits: number, last: number): Pick<PanelsParameters, 'precision' | 'terms' | 'split'> {
+  const { excess, complexity, distinct, edgeExponent } = input
+  const weights = Math.max(0, input.logPower - 1) * log2(last) + complexity * Math.max(0, -log2(Math.min(1, edgeExponent)))
+  const values = (excess > 0 ? log2(1 + 1 / excess) : 0) + (distinct ? 2 * complexity + 10 : 0)
+  const precision = Math.max(LEAST_PRECISION, Math.ceil(bits + 30 + weights + values))
+  return { precision, terms: Math.ceil(precision / 2.54) + 1, split: Math.max(50, Math.ceil(precision / 2.54)) }
 }
 
 /** log2 of Gamma(b), by Stirling's formula and Gamma(b) = Gamma(b + 1)/b. heuristic: affects speed only */
@@ -103,20 +119,17 @@ interface Chain {
   total: number
 }
 
-/** The cheapest chain of panels from edge to at least `end`, over the ends of the grid. */
-function bestPanels(edge: number, end: number, bits: number, b: number, excess: number, logLeast: number, cost: (t: number) => number): Chain {
-  const ends: number[] = []
-  for (let scale = 1; ends.length === 0 || ends[ends.length - 1] < end; scale *= 4) {
-    for (const part of [...GRID, ...GRID.map((x) => 2 * x).filter((x) => x >= 4)]) ends.push(edge * scale * part)
-    ends.sort((x, y) => x - y)
-  }
-  const points = [...new Set(ends)].filter((_, i, all) => i === 0 || all[i - 1] < end)
+/** The cheapest chain of panels from edge to `end`, between them over the ends of the grid. */
+function bestPanels(edge: number, end: number, bits: number, b: number, excess: number, logLeast: number, cost: (s: number) => number): Chain {
+  const points: number[] = []
+  for (let scale = edge; scale < end; scale *= 4) points.push(...GRID.map((part) => scale * part).filter((point) => point < end))
+  points.push(end)
   if (points.length > 2_000) throw new EngineRefusal('too_slow', 'logPower', 'The sum converges too slowly for this method: ask for fewer digits.')
   const best: Chain[] = [{ panels: [], total: 0 }]
   for (let i = 1; i < points.length; i++) {
     for (let j = i - 1; j >= 0 && points[i] <= 16 * points[j]; j--) {
       const { nodes, axis } = fewestNodes(points[j], points[i], bits, b, excess, logLeast)
-      const total = best[j].total + nodes * cost((points[i] + 2 * points[j]) / 3) + nodes * nodes * 1.5
+      const total = best[j].total + nodes * cost(meanOf(1 + excess + points[j], 1 + excess + points[i])) + nodes * nodes * 1.5
       if (best[i] && best[i].total <= total) continue
       best[i] = { total, panels: [...best[j].panels, { from: exact(points[j]), to: exact(points[i]), nodes, axis: rational(axis, AXIS_DENOMINATOR) }] }
     }

@@ -1,5 +1,7 @@
+import { type Rational, ZERO } from '../arithmetic/rational.ts'
 import type { ShardResult } from './computation.ts'
 import type { PanelsParameters } from './panels-parameters.ts'
+import { meanPoint, nodeCost } from './panels-plan.ts'
 import type { BlockSums } from './panels-sweep.ts'
 
 /** Cutting a run by panels into blocks of nodes, and their results as exact JSON. */
@@ -19,13 +21,15 @@ export type BlockResult = BlockSums & Pick<Block, 'piece' | 'from' | 'to'>
 /** About as many shards as there are, so that progress is smooth, cores are kept busy and an interruption loses little. */
 const SHARDS = 48
 const LEAST_PAIRS = 2
+/** What the product rule adds to a node at the edge. */
+const EDGE_COST = 1.3
 
-/** Blocks of about equal cost; `cost` is that of a node at t. */
-export function cutIntoBlocks(p: PanelsParameters, cost: (t: number) => number): Block[] {
-  const approx = ({ num, den }: { num: bigint; den: bigint }): number => Number(num) / Number(den)
+/** Blocks of about equal cost. */
+export function cutIntoBlocks(p: PanelsParameters, power: Rational, complexity: number): Block[] {
+  const cost = (from: Rational, to: Rational): number => nodeCost({ ...p, complexity }, meanPoint(power, from, to))
   const pieces = [
-    { nodes: p.edgeNodes, each: cost(0) * 1.3 },
-    ...p.panels.map(({ nodes, from, to }) => ({ nodes, each: cost((2 * approx(from) + approx(to)) / 3) })),
+    { nodes: p.edgeNodes, each: EDGE_COST * cost(ZERO, p.edge) },
+    ...p.panels.map(({ nodes, from, to }) => ({ nodes, each: cost(from, to) })),
   ]
   const whole = pieces.reduce((total, { nodes, each }) => total + nodes * each, 0)
   return pieces.flatMap(({ nodes, each }, piece) => {

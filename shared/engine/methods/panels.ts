@@ -1,4 +1,4 @@
-import { ONE, compare } from '../arithmetic/rational.ts'
+import { ONE, type Rational, compare } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
 import type { DirichletSeries } from '../series/dirichlet.ts'
 import { type EdgeSeries, edgeSeries } from '../series/edge.ts'
@@ -7,7 +7,8 @@ import { type MellinTask, mellinTask } from './mellin-task.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { PanelsComputation } from './panels-computation.ts'
 import { type PanelsParameters, readParameters } from './panels-parameters.ts'
-import { nodeCost, planPanels } from './panels-plan.ts'
+import { planPanels } from './panels-plan.ts'
+import { cutIntoBlocks } from './panels-shards.ts'
 import type { SweepSeries } from './panels-sweep.ts'
 
 const MOST_DIGITS = 1_000
@@ -45,7 +46,6 @@ function parametersFor(task: Task, goal: Goal): PanelsParameters {
   if (goal.digits > MOST_DIGITS) {
     throw new EngineRefusal('too_many_digits', 'digits', `Panels go up to ${MOST_DIGITS} digits.`)
   }
-  const approx = ({ num, den }: { num: bigint; den: bigint }): number => Number(num) / Number(den)
   const [power, logPower] = [approx(task.power), approx(task.logPower)]
   const exponents = task.list.map(({ edge }) => logPower - edge.pole)
   return planPanels({
@@ -63,6 +63,10 @@ function parametersFor(task: Task, goal: Goal): PanelsParameters {
   })
 }
 
+function approx({ num, den }: Rational): number {
+  return Number(num) / Number(den)
+}
+
 /** log2 of the factor of rho^-nodes in P-4, the weights taken for about twice their integral. heuristic: affects speed only */
 function partsGrowth(bounds: readonly number[], exponent: number): number {
   const total = bounds.reduce((sum, _, i) => sum + bounds[bounds.length - 1 - i] * exponent ** -(i + 1), 0)
@@ -71,13 +75,9 @@ function partsGrowth(bounds: readonly number[], exponent: number): number {
 
 /** CPU seconds for one sweep on the reference machine. heuristic: affects choice only */
 function predictSeconds(p: PanelsParameters, task: Task, arithmetic: ComputationRequest['arithmetic']): number {
-  const power = Number(task.power.num) / Number(task.power.den)
-  const cost = (t: number): number => nodeCost({ ...p, complexity: task.complexity }, power + t)
-  const nodes = p.panels.reduce((total, panel) => {
-    const third = (2 * Number(panel.from.num)) / Number(panel.from.den) + Number(panel.to.num) / Number(panel.to.den)
-    return total + panel.nodes * cost(third / 3)
-  }, p.edgeNodes * cost(0))
-  return 0.05 + nodes * 1e-6 * (arithmetic === 'mpfr' ? 5 : 1)
+  const blocks = cutIntoBlocks(p, task.power, task.complexity)
+  const microseconds = blocks.reduce((total, { cost }) => total + cost, 0)
+  return 0.05 + microseconds * 1e-6 * (arithmetic === 'mpfr' ? 5 : 1)
 }
 
 /** The Mellin transform by a product rule at its singularity and Gauss-Legendre panels after. */
