@@ -110,7 +110,6 @@ function aliasesOf(definition: Definition): string[] {
   if ('exclude' in set && set.exclude.join() === '2') aliases.push(set.kind === 'primes' ? 'odd primes' : `odd ${KIND_NAMES[set.kind] ?? ''}`.trim())
   if (set.kind === 'almost-primes' && set.k === 2) aliases.push('semiprimes')
   if (set.kind === 'distinct-prime-factors' && set.k === 1) aliases.push('prime powers')
-  if (weight.power === '1' && weight.logPower === '1' && set.kind !== 'integers') aliases.push('Erdős sum')
   return aliases
 }
 
