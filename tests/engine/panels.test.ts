@@ -180,9 +180,19 @@ describe('a run', () => {
 
   it('stays true with poor parameters, only wider', async () => {
     const [good] = await run([definition], 15)
-    const [poor] = await run([definition], 15, { parameters: { ...good.parameters, edgeNodes: 9, terms: 12, split: 7 } })
-    expect(compare(parseRational(good.radius)!, parseRational(poor.radius)!)).toBe(-1)
-    expect(meet(good.enclosure, poor.enclosure)).toBe(true)
+    const half = String(good.parameters.panelNodes).split(',').map((n) => String(Math.ceil(Number(n) / 2)))
+    const ends = String(good.parameters.panelEnds).split(',')
+    const poor: Record<string, string | number>[] = [
+      { edgeNodes: 9 },
+      { terms: 12, split: 7 },
+      { panelNodes: half.join() },
+      { panelEnds: [...ends.slice(0, -1), '12'].join() },
+    ]
+    for (const change of poor) {
+      const [outcome] = await run([definition], 15, { parameters: { ...good.parameters, ...change } })
+      expect(compare(parseRational(good.radius)!, parseRational(outcome.radius)!)).toBe(-1)
+      expect(contains(outcome.enclosure, '1.14481657340591799152445017389'), JSON.stringify(change)).toBe(true)
+    }
   })
 })
 
