@@ -68,11 +68,18 @@ const SET_FLAGS = ['k', 'y', 'mod', 'residue', 'file'] as const
 
 function parseFlags(args: string[]) {
   try {
-    return parseArgs({ args, options: OPTIONS, strict: true, allowPositionals: false }).values
+    return parseArgs({ args: args.flatMap(joinNegative), options: OPTIONS, strict: true, allowPositionals: false }).values
   } catch (error) {
     const [message] = (error instanceof Error ? error.message : String(error)).split('\n')
     throw new EngineRefusal('bad_flag', 'flags', message.endsWith('.') ? message : `${message}.`)
   }
+}
+
+/** "--log-power -1" as "--log-power=-1": a negative number after a flag is its value and no flag. */
+function joinNegative(arg: string, index: number, all: string[]): string[] {
+  const isNegative = (text: string | undefined): boolean => /^-\d/.test(text ?? '')
+  if (isNegative(arg) && all[index - 1]?.startsWith('--')) return []
+  return arg.startsWith('--') && isNegative(all[index + 1]) ? [`${arg}=${all[index + 1]}`] : [arg]
 }
 
 /** Reads the flags; throws EngineRefusal with one line that says what does not fit. `readFile` gives the text of --file. */

@@ -1,4 +1,4 @@
-import { computeAll, methodNamed } from '../../shared/engine/engine.ts'
+import { computeAll, METHODS } from '../../shared/engine/engine.ts'
 import type { ComputationRequest } from '../../shared/engine/methods/computation.ts'
 
 /** What is computed to measure a machine: small, but long enough for the clock and the compiler. */
@@ -14,7 +14,7 @@ const SAMPLE: ComputationRequest = {
  * by what was used here. The first round warms the compiler up. heuristic: affects forecasts only
  */
 export async function measureSpeed(cpuMs: () => number): Promise<number> {
-  const method = methodNamed(SAMPLE.method)
+  const method = METHODS[SAMPLE.method]
   const forecast = method.forecast(SAMPLE.definitions[0], SAMPLE.goal, SAMPLE.arithmetic, 1)
   if (!forecast.possible) throw new Error(forecast.reason)
   let used = Infinity

@@ -5,24 +5,18 @@ import { expansion } from './methods/expansion.ts'
 import { finite } from './methods/finite.ts'
 import type { MethodModule } from './methods/method.ts'
 import { panels } from './methods/panels.ts'
-import type { Definition } from './sets/definition.ts'
 import { partialSum } from './methods/partial-sum.ts'
 import { trapezoid } from './methods/trapezoid.ts'
+import type { Definition } from './sets/definition.ts'
 
 /** Every method there is; a new one is one file and one entry here. */
-export const METHODS: Partial<Record<Method, MethodModule>> = {
+export const METHODS: Record<Method, MethodModule> = {
   transform: trapezoid,
   panels,
   expansion,
   'partial-sum': partialSum,
   finite,
   derivatives,
-}
-
-export function methodNamed(name: Method): MethodModule {
-  const method = METHODS[name]
-  if (!method) throw new EngineRefusal('unknown_method', 'method', `There is no method named ${name}.`)
-  return method
 }
 
 /** The quickest method that reaches the goal, by its own forecast; throws EngineRefusal with the methods' reasons where none does. */
@@ -40,7 +34,7 @@ export function quickestMethod(definition: Definition, goal: Goal, arithmetic: A
 /** Chooses parameters, checks everything and cuts the work into shards; throws EngineRefusal. Definitions must be canonical. */
 export async function prepare(request: ComputationRequest): Promise<Computation> {
   if (request.definitions.length === 0) throw new EngineRefusal('nothing_to_do', 'definitions', 'Name at least one constant.')
-  return methodNamed(request.method).prepare(request)
+  return METHODS[request.method].prepare(request)
 }
 
 /** Runs every shard in turn in this thread. `onProgress` hears the share done, from 0 to 1. */

@@ -55,6 +55,11 @@ describe('enclose', () => {
     expect(person.out).toContain('p != 2')
   })
 
+  it('takes a negative power of the logarithm after its flag', () => {
+    const order = readOrder(['--set', 'primes', '--power', '2', '--log-power', '-1', '--json'], () => '')
+    expect(order).toMatchObject({ json: true, definitions: [{ weight: { power: '2', logPower: '-1' } }] })
+  })
+
   it.each<[string, string[]]>([
     ['nothing to sum', []],
     ['an unknown set', ['--set', 'evens']],
