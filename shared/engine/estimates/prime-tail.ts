@@ -3,7 +3,7 @@ import { ONE, type Rational, ZERO, add, compare, negate, parseRational, rational
 import { EngineRefusal } from '../errors.ts'
 import type { EstimateUse } from '../methods/computation.ts'
 import { type RationalWeight, negativePower, weightAt } from '../sieve/weight.ts'
-import { type Piece, thetaEnvelope } from './envelope.ts'
+import { type Envelope, type Piece, thetaEnvelope } from './envelope.ts'
 import type { Estimate, Term } from './estimate.ts'
 import { logPowerIntegral } from './log-power-integral.ts'
 
@@ -48,7 +48,7 @@ export function primeTail<N>(
     }
     const envelope = thetaEnvelope(arithmetic, x, estimates, weight)
     if (!envelope) throw new EngineRefusal('cutoff_too_small', 'cutoff', 'No estimate of theta covers all that lies beyond this cut-off.')
-    uses = [...envelope.lower, ...envelope.upper.filter((one) => !envelope.lower.some((other) => sameUse(one, other)))].map(useOf)
+    uses = usesOf(envelope)
 
     const main = logPowerIntegral(arithmetic, s, slope, logX, null)
     const excess = theta
@@ -58,7 +58,7 @@ export function primeTail<N>(
     const known = arithmetic.subtract(main, atX)
 
     const total = (pieces: readonly Piece<N>[]): N =>
-      pieces.map((piece) => integralOfBound(arithmetic, s, slope, piece)).reduce((sum, one) => plus(sum, one))
+      pieces.map((piece) => integralOfBound(arithmetic, weight, piece)).reduce((sum, one) => plus(sum, one))
     const [low, high] = [total(envelope.lower), total(envelope.upper)]
     return {
       lo: arithmetic.lower(plus(known, low)),
@@ -70,7 +70,8 @@ export function primeTail<N>(
 }
 
 /** The integral of bound(t) (-h'(t)), -h' = s t^(-s-1) L^(-b-1) + (b+1) t^(-s-1) L^(-b-2), L = log t, over one piece. */
-function integralOfBound<N>(arithmetic: Arithmetic<N>, s: Rational, slope: Rational, { from, to, terms }: Piece<N>): N {
+export function integralOfBound<N>(arithmetic: Arithmetic<N>, { power: s, logPower }: RationalWeight, { from, to, terms }: Piece<N>): N {
+  const slope = add(logPower, ONE)
   const ofTerm = ({ coefficient, power, logPower, overPi }: Term): N => {
     const [c, a, k] = [coefficient, power, logPower].map((text) => parseRational(text)!)
     const sigma = subtract(add(s, ONE), a)
@@ -95,6 +96,11 @@ function boundAt<N>(arithmetic: Arithmetic<N>, terms: readonly Term[], logX: N):
 
 function hull<N>(arithmetic: Arithmetic<N>, low: N, high: N): N {
   return arithmetic.between(arithmetic.lower(low), arithmetic.upper(high))
+}
+
+/** Where each estimate is used, one that bounds both sides once. */
+export function usesOf<N>({ lower, upper }: Envelope<N>): EstimateUse[] {
+  return [...lower, ...upper.filter((one) => !lower.some((other) => sameUse(one, other)))].map(useOf)
 }
 
 function useOf<N>({ estimate: { id, validFor, conditional }, from, to }: Piece<N>): EstimateUse {

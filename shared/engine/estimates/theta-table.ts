@@ -34,7 +34,7 @@ const BKLNW_ROWS: [from: Point, label: string, ...m: string[]][] = [
 const larger = (entry: string) => toText(multiply(parseRational(entry)!, rational(1003, 1000)))
 
 function bklnwEntry(from: Point, label: string, m: string, k: number): Estimate {
-  const withinReach = label === '10^6' || label === '10^8'
+  const withinReach = label === '10^6'
   return {
     id: `theta-bklnw-2021-${'log' in from ? `e${from.log}` : from.x}-k${k}`,
     title: `Broadbent et al. 2021, Table 15, k = ${k}, x >= ${label}`,

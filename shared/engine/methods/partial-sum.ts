@@ -1,13 +1,15 @@
 import { createBallArithmetic } from '../arithmetic/ball.ts'
-import { parseRational } from '../arithmetic/rational.ts'
+import { ONE, ZERO, parseRational } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
 import { estimatesUsed } from '../estimates/envelope.ts'
-import type { Definition, SeriesDefinition } from '../sets/definition.ts'
+import type { Definition, SeriesDefinition, SetOfIntegers } from '../sets/definition.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
 import type { Goal } from './computation.ts'
+import { mellinTask } from './mellin-task.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { type PartialSumParameters, approximate, choosePartialSumParameters, primeTailRadius, readPartialSumParameters } from './partial-sum-parameters.ts'
 import { PrimePartialSum } from './partial-sum-primes.ts'
+import { ProductPartialSum, chooseProductParameters, readProductParameters } from './partial-sum-products.ts'
 import { cutIntoRanges } from './partial-sum-ranges.ts'
 
 /** What the method can do for one definition, and how well. */
@@ -27,6 +29,11 @@ function seriesOf(definition: Definition): SeriesDefinition {
   return definition.type === 'series' ? definition : misfit('A partial sum needs a series over a set of integers.')
 }
 
+/** Sets that one run can serve together. */
+function familyOf({ kind }: SetOfIntegers): string {
+  return kind === 'almost-primes' || kind === 'squarefree-almost-primes' || kind === 'distinct-prime-factors' ? 'products of primes' : kind
+}
+
 function planFor(definition: Definition): Plan {
   const { set, weight: text } = seriesOf(definition)
   const [power, logPower] = [parseRational(text.power), parseRational(text.logPower)]
@@ -36,6 +43,11 @@ function planFor(definition: Definition): Plan {
   switch (set.kind) {
     case 'primes':
       return { weight, radiusAt: (cutoff) => primeTailRadius(weight, cutoff), secondsAt: primeSeconds }
+    case 'almost-primes':
+    case 'squarefree-almost-primes':
+    case 'distinct-prime-factors':
+      if (logPower.num <= 0n) return misfit('Over products of primes the method needs a positive power of the logarithm.')
+      return { weight, radiusAt: (cutoff) => productRadius(weight, set.k, cutoff), secondsAt: (cutoff) => 2.5 + 1.7e-9 * cutoff }
     case 'residue-class':
       return { weight, radiusAt: (cutoff) => wholeTail(weight, cutoff) / 2, secondsAt: primeSeconds }
     default:
@@ -48,6 +60,16 @@ function wholeTail({ power, logPower }: RationalWeight, cutoff: number): number 
   const [s, b] = [approximate(power), approximate(logPower)]
   const l = Math.log(cutoff) // heuristic: affects speed only
   return s === 1 ? l ** -b / b : (cutoff ** (1 - s) * l ** (-b - 1)) / (s - 1)
+}
+
+/** About the radius of a sum over products of k primes: the uncertainty of P(s) times what multiplies it. heuristic: affects choice only */
+function productRadius({ power, logPower }: RationalWeight, k: number, cutoff: number): number {
+  const [s, b] = [approximate(power), approximate(logPower)]
+  const l = Math.log(cutoff) // heuristic: affects speed only
+  const ll = Math.log(l) // heuristic: affects speed only
+  let [factor, term] = [0, 1]
+  for (let i = 0; i < k; i++, term *= ll / i) factor += term
+  return 1.95 * cutoff ** (0.5 - s) * l ** (-1 - b) * Math.min(factor, l)
 }
 
 function parametersFor(plan: Plan, goal: Goal): PartialSumParameters {
@@ -81,10 +103,11 @@ export const partialSum: MethodModule = {
   async prepare(request) {
     const definitions = request.definitions.map(seriesOf)
     const plans = definitions.map(planFor)
-    const weights = plans.map(({ weight }) => weight)
+    // The sums of p^-s over the primes, of which others are made, use theta as the weight 1/p does.
+    const weights = definitions[0].set.kind === 'primes' || definitions[0].set.kind === 'residue-class' ? plans.map(({ weight }) => weight) : [{ power: ONE, logPower: ZERO }]
     const chosen = request.parameters ? readPartialSumParameters(request.parameters) : withUsedEstimates(parametersFor(plans[0], request.goal), weights)
     const { set } = definitions[0]
-    if (definitions.some((one) => one.set.kind !== set.kind)) misfit('One run of partial sums serves sets of one kind: ask for others in runs of their own.')
+    if (definitions.some((one) => familyOf(one.set) !== familyOf(set))) misfit('One run of partial sums serves sets of one kind: ask for others in runs of their own.')
     const tasks = definitions.map((one, i) => ({ weight: plans[i].weight, exclude: 'exclude' in one.set ? one.set.exclude : [] }))
     if (set.kind === 'residue-class') {
       const { modulus, residue } = set
@@ -93,6 +116,8 @@ export const partialSum: MethodModule = {
       }
       return new PrimePartialSum(request, chosen, tasks, { modulus, residue })
     }
-    return new PrimePartialSum(request, chosen, tasks)
+    if (set.kind === 'primes') return new PrimePartialSum(request, chosen, tasks)
+    const task = mellinTask(definitions)
+    return new ProductPartialSum(request, request.parameters ? readProductParameters(request.parameters) : chooseProductParameters(chosen, task), task)
   },
 }
