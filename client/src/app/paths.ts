@@ -31,6 +31,7 @@ export const paths = {
   groupAudit: (search: Search = {}) => withSearch('/group/audit', search),
   groupMail: (search: Search = {}) => withSearch('/group/mail', search),
   groupKeys: () => '/group/keys',
+  groupLeft: () => '/left',
   keys: () => '/keys',
   verify: () => '/verify',
   about: () => '/about',

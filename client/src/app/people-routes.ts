@@ -40,6 +40,7 @@ export function peopleRoutes(client: QueryClient, prefetch: Prefetch): RouteObje
       loader: forGroup(() => client.prefetchQuery(membersQuery())),
       lazy: async () => ({ Component: (await import('../pages/group/group-page.tsx')).GroupPage }),
     },
+    { path: 'left', lazy: async () => ({ Component: (await import('../pages/group/left-page.tsx')).LeftPage }) },
     {
       path: 'group/audit',
       handle: MEMBERS,

@@ -24,8 +24,13 @@ export function useEndMembership() {
   return useMutation({ mutationFn: (id: string) => api.delete<void>(`/group/members/${id}`), onSettled: invalidate })
 }
 
-/** Leaving the group oneself ends the session, so everything that was read is dropped. */
+/** Leaving the group oneself ends the session. `forget` drops what was read; call it once the page is one that needs no account. */
 export function useLeaveGroup() {
   const client = useQueryClient()
-  return useMutation({ mutationFn: (input: { password: string }) => api.post<void>('/group/departure', input), onSuccess: () => client.resetQueries() })
+  const leave = useMutation({ mutationFn: (input: { password: string }) => api.post<void>('/group/departure', input) })
+  const forget = async () => {
+    client.removeQueries({ predicate: ({ queryKey }) => queryKey[0] !== sessionKeys.all[0] })
+    await client.refetchQueries({ queryKey: sessionKeys.all })
+  }
+  return { leave: leave.mutateAsync, forget }
 }

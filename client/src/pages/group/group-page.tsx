@@ -18,7 +18,7 @@ export function GroupPage() {
   const rules = useChangeRules()
   const roles = useChangeRoles()
   const end = useEndMembership()
-  const leave = useLeaveGroup()
+  const { leave, forget } = useLeaveGroup()
   const invite = useInvite()
   const resend = useResendInvitation()
   const revoke = useRevokeInvitation()
@@ -36,8 +36,9 @@ export function GroupPage() {
       onRevoke={revoke.mutateAsync}
       onRules={rules.mutateAsync}
       onLeave={async (input) => {
-        await leave.mutateAsync(input)
-        await navigate(paths.register())
+        await leave(input)
+        await navigate(paths.groupLeft(), { replace: true, state: { group: group.data?.name } })
+        await forget()
       }}
     />
   )
