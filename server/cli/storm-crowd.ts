@@ -65,7 +65,7 @@ async function send(world: World, person: Person, what: string, method: string, 
     if (response.status >= 500) world.faults.push(`${what}: ${response.status} ${text.slice(0, 300)}`)
   } catch {
     // The server was killed while it was asked: nobody knows whether the act was done, as in life.
-    await pause(100)
+    await pause(1_000)
   }
   const key = `${what} ${answer.status}`
   world.tally.set(key, (world.tally.get(key) ?? 0) + 1)

@@ -67,16 +67,19 @@ try {
   console.log(`${people} people for ${seconds} s against ${web.address}, seed ${seed}`)
   await gather(world, people)
 
-  const over = AbortSignal.timeout(seconds * 1000)
+  const over = new AbortController()
   const begun = performance.now()
-  const crowd = Promise.all(world.people.map((person) => live(world, person, over)))
+  const crowd = Promise.all(world.people.map((person) => live(world, person, over.signal)))
+  await pause(seconds * 500)
   if (values.kill) {
-    await pause(seconds * 500)
     await Promise.all([end(web.child, 'SIGKILL'), end(worker.child, 'SIGKILL')])
-    console.log('Web process and worker killed; started again.')
+    const down = performance.now()
     ;[web, worker] = await Promise.all([start('web'), start('worker')])
     running.push(web.child, worker.child)
+    console.log(`Web process and worker killed, and back after ${((performance.now() - down) / 1000).toFixed(1)} s.`)
   }
+  await pause(seconds * 500)
+  over.abort()
   await crowd
   const elapsed = (performance.now() - begun) / 1000
   await Promise.all(running.map((child) => end(child, 'SIGTERM')))
