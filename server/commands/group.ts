@@ -3,6 +3,7 @@ import type { Json } from '../audit/canonical.ts'
 import { inTransaction } from '../db.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 import { Group } from '../models/group.ts'
+import { reconsiderGroup } from './claim-consequences.ts'
 import { refreshGroup } from './constant-best.ts'
 
 type Rules = Pick<Group, 'confirmationsNeeded' | 'recheckNeeded' | 'reminderDays' | 'public'>
@@ -19,6 +20,8 @@ export async function changeRules(actor: SignedInMember, patch: RulesPatch): Pro
     await group.update(Object.fromEntries(changed.map((rule) => [rule, patch[rule]])), { transaction })
     if (changed.includes('public')) await refreshGroup(transaction, group.id)
     await recordAudit(transaction, { act: 'group.rules', actorId: actor.id, groupId: group.id, subject: { kind: 'group', id: group.id, label: group.name }, detail })
+    // What was missing before may be enough now.
+    if (changed.includes('confirmationsNeeded') || changed.includes('recheckNeeded')) await reconsiderGroup(transaction, group.id)
     return group
   })
 }

@@ -97,6 +97,17 @@ describe('endorsing', () => {
     expect(await lastMailTo(cast.lead.email)).toMatchObject({ template: 'sign-request' })
   })
 
+  it('follows when the group asks for less than it did', async () => {
+    const cast = await makeCast({ confirmations_needed: 2, recheck_needed: true })
+    const claim = await claimIn('in-review', cast)
+    const [referee, lead] = await Promise.all([cast.referee, cast.lead].map((member) => signedInAs(member, app)))
+    await act(referee!, claim.id, 'confirm', { version: claim.version, remark: 'good' }).expect(200)
+    await lead!.patch('/api/v1/group').send({ recheckNeeded: false }).expect(200)
+    expect((await reload(claim)).state).toBe('in-review')
+    await lead!.patch('/api/v1/group').send({ confirmationsNeeded: 1 }).expect(200)
+    expect((await reload(claim)).state).toBe('endorsed')
+  })
+
   it('is barred by a recheck that does not meet the claim', async () => {
     const cast = await makeCast({ recheck_needed: false })
     const claim = await claimIn('in-review', cast)
