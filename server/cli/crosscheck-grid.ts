@@ -1,4 +1,5 @@
 import { canonicalDefinition, type DefinitionText } from '../../shared/engine/sets/canonical.ts'
+import { loadExpressionParser } from '../../shared/engine/sets/rational-function.ts'
 import type { Definition, SetOfIntegers } from '../../shared/engine/sets/definition.ts'
 
 const sets: SetOfIntegers[] = [
@@ -40,7 +41,8 @@ const overPrimes: DefinitionText[] = [
 ]
 
 /** The definitions of the cross-check: every set with every weight for which its sum converges, and constants over the primes. */
-export function crosscheckGrid(): Definition[] {
+export async function crosscheckGrid(): Promise<Definition[]> {
+  await loadExpressionParser()
   const series = sets.flatMap((set) => weights.map((weight): DefinitionText => ({ type: 'series', set, weight })))
   return [...series, ...overPrimes].flatMap((text) => {
     try {

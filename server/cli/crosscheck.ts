@@ -58,7 +58,7 @@ function wayText({ method, arithmetic, goal }: Way): string {
 /** `npm run crosscheck`: the whole grid; exit code 1 where two enclosures of one constant do not meet. */
 async function main(): Promise<void> {
   let [pairs, broken] = [0, 0]
-  for (const definition of crosscheckGrid()) {
+  for (const definition of await crosscheckGrid()) {
     const { outcomes, disjoint } = await crosscheck(definition)
     const methods = [...new Set(outcomes.map(({ way }) => way.method))].join(', ')
     console.log(`${disjoint.length === 0 ? 'meet    ' : 'DISJOINT'} ${String(outcomes.length).padStart(2)} enclosures by ${methods}: ${readDefinition(definition).text}`)

@@ -3,12 +3,14 @@ import { makeCertificate } from '../../shared/engine/certificate/certificate.ts'
 import { computeAll, prepare, quickestMethod } from '../../shared/engine/engine.ts'
 import { EngineRefusal } from '../../shared/engine/errors.ts'
 import type { Outcome } from '../../shared/engine/methods/computation.ts'
+import { loadExpressionParser } from '../../shared/engine/sets/rational-function.ts'
 import { readDefinition } from '../../shared/engine/sets/typeset.ts'
 import { readEngineRelease } from '../engine-release.ts'
 import { type EncloseOrder, USAGE, readOrder } from './flags.ts'
 
 /** Prints an enclosure. Exit code 0; 2 with one line on standard error where the order makes no sense or the engine refuses. */
 async function main(args: string[]): Promise<void> {
+  if (args.some((arg) => arg.startsWith('--over-primes'))) await loadExpressionParser()
   const order = readOrder(args, readList)
   if (order === 'help') {
     console.log(USAGE)

@@ -3,10 +3,13 @@ import type { z } from 'zod'
 import { canonicalDefinition } from '../../shared/engine/sets/canonical.ts'
 import { convergenceCondition } from '../../shared/engine/sets/convergence.ts'
 import type { Definition, SetKind } from '../../shared/engine/sets/definition.ts'
+import { loadExpressionParser } from '../../shared/engine/sets/rational-function.ts'
 import { readDefinition as reading } from '../../shared/engine/sets/typeset.ts'
 import type { definitionInput, DefinitionView } from '../../shared/schemas/definition.ts'
 import { canonicalJson } from '../audit/canonical.ts'
 import { askingEngine } from './refusal.ts'
+
+await loadExpressionParser()
 
 /** A definition that was typed, as the engine understands it. */
 export interface ReadDefinition {

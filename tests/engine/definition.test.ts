@@ -4,6 +4,9 @@ import { type DefinitionText, canonicalDefinition } from '../../shared/engine/se
 import { convergenceCondition } from '../../shared/engine/sets/convergence.ts'
 import type { SetOfIntegers } from '../../shared/engine/sets/definition.ts'
 import { readDefinition } from '../../shared/engine/sets/typeset.ts'
+import { loadExpressionParser } from '../../shared/engine/sets/rational-function.ts'
+
+await loadExpressionParser()
 
 function series(set: SetOfIntegers, power = '1', logPower = '1'): DefinitionText {
   return { type: 'series', set, weight: { power, logPower } }

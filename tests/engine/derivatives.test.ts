@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest'
 import { parseDecimal } from '../../shared/engine/arithmetic/decimal.ts'
 import { type Rational, add, compare, multiply, rational, subtract } from '../../shared/engine/arithmetic/rational.ts'
 import { computeAll } from '../../shared/engine/engine.ts'
+import type { Parameters } from '../../shared/engine/methods/computation.ts'
 import { derivatives } from '../../shared/engine/methods/derivatives.ts'
 import { centralDifferenceWeights, interpolationErrorUpper } from '../../shared/engine/series/central-differences.ts'
 import type { SetOfIntegers } from '../../shared/engine/sets/definition.ts'
@@ -85,7 +86,7 @@ describe('sums with log n above', () => {
     const definition = { type: 'series' as const, set: integers, weight: { power: '2', logPower: '-2' } }
     const request = { definitions: [definition], method: 'derivatives' as const, arithmetic: 'ball' as const, goal: { digits: 30 } }
     const usual = await derivatives.prepare(request)
-    for (const change of [{ half: 1 }, { half: 2 }, { half: 4 }, { terms: 4 }, { precision: 64 }]) {
+    for (const change of [{ half: 1 }, { half: 2 }, { half: 4 }, { terms: 4 }, { precision: 64 }] as Parameters[]) {
       const [outcome] = await computeAll(await derivatives.prepare({ ...request, parameters: { ...usual.parameters, ...change } }))
       holds([parseDecimal(outcome.enclosure.lo)!, parseDecimal(outcome.enclosure.hi)!, 0], '1.9892802342989010234208586874215163814944')
       expect(outcome.digits.truncated).toBeLessThan(25)

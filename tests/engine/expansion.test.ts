@@ -5,10 +5,12 @@ import { primesUpTo } from '../../shared/engine/arithmetic/primes.ts'
 import { type Rational, ONE, add, compare, magnitude, multiply, rational, subtract } from '../../shared/engine/arithmetic/rational.ts'
 import { computeAll } from '../../shared/engine/engine.ts'
 import { expansion } from '../../shared/engine/methods/expansion.ts'
-import type { Outcome } from '../../shared/engine/methods/computation.ts'
+import type { Outcome, Parameters } from '../../shared/engine/methods/computation.ts'
 import { expandLogarithm, expandQuotient, expansionTail, valueAtPrime } from '../../shared/engine/series/prime-expansion.ts'
 import type { Definition } from '../../shared/engine/sets/definition.ts'
-import { parseRationalFunction } from '../../shared/engine/sets/rational-function.ts'
+import { loadExpressionParser, parseRationalFunction } from '../../shared/engine/sets/rational-function.ts'
+
+await loadExpressionParser()
 
 function overPrimes(text: string, combine: 'sum' | 'product', exclude: number[] = []): Definition {
   const { numerator, denominator } = parseRationalFunction(text)
@@ -120,7 +122,7 @@ describe('sums and products over the primes', () => {
       [{ type: 'named', name: 'mertens' }, '0.26149721284764'],
     ]
     for (const [definition, truth] of cases) {
-      for (const change of [{ powers: 2 }, { powers: 5, split: 7 }, { terms: 30 }, { terms: 12, powers: 4 }, { precision: 120 }]) {
+      for (const change of [{ powers: 2 }, { powers: 5, split: 7 }, { terms: 30 }, { terms: 12, powers: 4 }, { precision: 120 }] as Parameters[]) {
         const request = { definitions: [definition], method: 'expansion' as const, arithmetic: 'ball' as const, goal: { digits: 30 } }
         const usual = await expansion.prepare(request)
         const [outcome] = await computeAll(await expansion.prepare({ ...request, parameters: { ...usual.parameters, ...change } }))

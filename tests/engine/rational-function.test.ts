@@ -1,6 +1,8 @@
 import { describe, expect, it } from 'vitest'
 import { EngineRefusal } from '../../shared/engine/errors.ts'
-import { parseRationalFunction } from '../../shared/engine/sets/rational-function.ts'
+import { loadExpressionParser, parseRationalFunction } from '../../shared/engine/sets/rational-function.ts'
+
+await loadExpressionParser()
 
 describe('an expression in p', () => {
   it.each([

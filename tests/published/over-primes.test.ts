@@ -2,7 +2,9 @@ import { describe, expect, it } from 'vitest'
 import { computeAll } from '../../shared/engine/engine.ts'
 import { expansion } from '../../shared/engine/methods/expansion.ts'
 import type { Definition } from '../../shared/engine/sets/definition.ts'
-import { parseRationalFunction } from '../../shared/engine/sets/rational-function.ts'
+import { loadExpressionParser, parseRationalFunction } from '../../shared/engine/sets/rational-function.ts'
+
+await loadExpressionParser()
 
 async function digitsOf(definition: Definition, digits: number): Promise<string> {
   const [outcome] = await computeAll(await expansion.prepare({ definitions: [definition], method: 'expansion', arithmetic: 'ball', goal: { digits } }))

@@ -61,7 +61,7 @@ export function expandLogarithm(numerator: Polynomial, denominator: Polynomial):
   }
 }
 
-/** log(1 - 1/p) + 1/p: c_j = -1/j. */
+/** log(1 - 1/p) + 1/p: c_j = -1/j (E-4: its sum and Euler's constant make the Mertens constant). */
 export function expandMertens(): PrimeExpansion {
   return { radius: ONE, scale: ONE, coefficient: (j) => (j < 2 ? ZERO : rational(-1, j)) }
 }

@@ -34,13 +34,13 @@ export function canonicalDefinition(input: DefinitionText): Definition {
   }
 }
 
-/** The twin prime constant and Artin's constant are products over primes; only what is none keeps its name. */
+/** Twin primes: prod of 1 - 1/(p-1)^2 over p > 2; Artin: prod of 1 - 1/(p(p-1)). Only what is no such product keeps its name. */
 function named(name: NamedDefinition['name'] | 'twin-prime' | 'artin'): Definition {
   switch (name) {
     case 'twin-prime':
-      return canonicalOverPrimes({ type: 'over-primes', expression: '1 - 1/(p-1)^2', combine: 'product', exclude: [2] })
+      return canonicalOverPrimes({ type: 'over-primes', numerator: ['0', '-2', '1'], denominator: ['1', '-2', '1'], combine: 'product', exclude: [2] })
     case 'artin':
-      return canonicalOverPrimes({ type: 'over-primes', expression: '1 - 1/(p*(p-1))', combine: 'product', exclude: [] })
+      return canonicalOverPrimes({ type: 'over-primes', numerator: ['-1', '-1', '1'], denominator: ['0', '-1', '1'], combine: 'product', exclude: [] })
     default:
       return { type: 'named', name }
   }

@@ -1,4 +1,4 @@
-import { type Fraction, type MathNode, create, fractionDependencies, numericDependencies, parseDependencies } from 'mathjs'
+import type { Fraction, MathNode } from 'mathjs'
 import { gcd } from '../arithmetic/integers.ts'
 import { type Polynomial, coefficientBits, combine, commonDivisor, content, degree, exactQuotient, leading, multiply } from '../arithmetic/polynomial.ts'
 import { EngineRefusal } from '../errors.ts'
@@ -11,13 +11,24 @@ export interface RationalFunction {
 
 const MAX_DEGREE = 60
 const MAX_BITS = 2_000
-const { parse } = create({ parseDependencies, fractionDependencies, numericDependencies }, { number: 'Fraction' })
+
+let parse: ((expression: string) => MathNode) | undefined
+
+/** The parser is a large library that only expressions need: whoever reads expressions loads it first. */
+export async function loadExpressionParser(): Promise<void> {
+  if (parse) return
+  const { create, fractionDependencies, numericDependencies, parseDependencies } = await import('mathjs')
+  const made = create({ parseDependencies, fractionDependencies, numericDependencies }, { number: 'Fraction' })
+  parse = (expression) => made.parse(expression)
+}
 
 /**
  * Reads an expression in p, such as "1/(p*(p-1))", as an exact rational function. Numbers are read as exact decimals;
- * + - * / ^ with whole exponents, brackets and implied products are all there is. Refuses anything else, naming it.
+ * + - * / ^ with whole exponents, brackets and implied products are all there is. Refuses anything else, naming it. Needs
+ * `loadExpressionParser` before.
  */
 export function parseRationalFunction(expression: string): RationalFunction {
+  if (!parse) throw new Error('the parser of expressions is not loaded')
   let tree: MathNode
   try {
     tree = parse(expression)

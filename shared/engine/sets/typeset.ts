@@ -105,7 +105,7 @@ function aliasesOf(definition: Definition): string[] {
     const key = [definition.numerator, definition.denominator, definition.exclude].join('|')
     return definition.combine === 'product' && NAMED_PRODUCTS[key] ? [NAMED_PRODUCTS[key]] : []
   }
-  const { set, weight } = definition
+  const { set } = definition
   const aliases: string[] = []
   if ('exclude' in set && set.exclude.join() === '2') aliases.push(set.kind === 'primes' ? 'odd primes' : `odd ${KIND_NAMES[set.kind] ?? ''}`.trim())
   if (set.kind === 'almost-primes' && set.k === 2) aliases.push('semiprimes')
