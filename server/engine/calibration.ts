@@ -16,8 +16,9 @@ let kept: { speed: number; at: number } | undefined
  */
 export async function machineSpeed(): Promise<number> {
   if (kept && performance.now() - kept.at < KEPT_MS) return kept.speed
-  const row = await selectOne<{ speed: string }>('SELECT speed FROM calibrations WHERE engine_digest = $digest ORDER BY id DESC LIMIT 1', { digest: engineRelease().digest })
-  kept = { speed: row ? Number(row.speed) : 1, at: performance.now() }
+  const row = await selectOne<{ speed: string }>('SELECT speed FROM calibrations WHERE engine_digest = $digest ORDER BY id DESC LIMIT 1', { digest: engineRelease.digest })
+  if (!row) return 1
+  kept = { speed: Number(row.speed), at: performance.now() }
   return kept.speed
 }
 
@@ -25,7 +26,7 @@ export async function machineSpeed(): Promise<number> {
 export async function calibrateMachine(pool: EnginePool): Promise<number> {
   const { value: speed } = await pool.run({ kind: 'calibrate' })
   await change('INSERT INTO calibrations (engine_digest, speed, cores) VALUES ($digest, $speed, $cores)', {
-    digest: engineRelease().digest,
+    digest: engineRelease.digest,
     speed: speed.toPrecision(4),
     cores: computeThreads,
   })

@@ -39,8 +39,7 @@ export async function computeRun(run: Run, hold: Hold, pool: EnginePool, shutdow
   const told: Progress = { progress: Number(run.progress), shardsDone: run.shardsDone, cpuMs: Number(run.cpuMs), secondsLeft: null, interim: null }
   const beating = beat(hold, told, halt, () => pool.busyMs(run.id))
   try {
-    const release = engineRelease()
-    const { parameters, results } = await storedWork(hold, release.digest)
+    const { parameters, results } = await storedWork(hold, engineRelease.digest)
     const asked = JSON.parse(run.request) as ComputationRequest
     const begun: ComputationRequest = parameters === null ? asked : { ...asked, parameters: JSON.parse(parameters) }
     const plan = await pool.run({ kind: 'prepare', run: run.id, request: begun }, signal)
@@ -52,7 +51,7 @@ export async function computeRun(run: Run, hold: Hold, pool: EnginePool, shutdow
     await computeShards({ run, hold, pool, signal, request, costs, interim, results, told })
 
     const inOrder = costs.map((_, index) => results.get(index) ?? '')
-    const { value, cpuMs } = await pool.run({ kind: 'combine', run: run.id, request, results: inOrder, release }, signal)
+    const { value, cpuMs } = await pool.run({ kind: 'combine', run: run.id, request, results: inOrder, release: engineRelease }, signal)
     ours(await finishRun(hold, value.outcome, { text: value.certificate, digest: value.certificateDigest }, told.cpuMs + cpuMs))
   } finally {
     halt.abort(new Abandoned('the computing has ended'))

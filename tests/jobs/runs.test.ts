@@ -1,8 +1,9 @@
 import { setTimeout as pause } from 'node:timers/promises'
 import { beforeAll, describe, expect, it } from 'vitest'
 import { createApp } from '../../server/app.ts'
-import { change, selectOne } from '../../server/db.ts'
+import { change, select } from '../../server/db.ts'
 import { storeShard } from '../../server/jobs/run-lease.ts'
+import { reviveRuns } from '../../server/jobs/run-worker.ts'
 import { isIntact, type Certificate } from '../../shared/engine/certificate/certificate.ts'
 import { repeatCertificate } from '../../shared/engine/certificate/repeat.ts'
 import { makeMember, signedInAs, type Agent } from '../support/people.ts'
@@ -130,6 +131,20 @@ describe('a run', () => {
     await endWorker(worker, 'SIGTERM')
   }, 120_000)
 
+  it('that has lost its job gets a new one, and one only', async () => {
+    const id = await startRun(agent, { ...SHORT, goal: { digits: 13 } })
+    const jobs = () => select<{ state: string }>('SELECT state::text FROM pgboss.job WHERE data->>$key = $id', { key: 'runId', id })
+    await change('DELETE FROM pgboss.job WHERE data->>$key = $id', { key: 'runId', id })
+    // A run that has just been written may still be on its way to the queue.
+    await reviveRuns()
+    expect(await jobs()).toEqual([])
+    await change(`UPDATE runs SET created_at = now() - interval '1 minute' WHERE id = $id`, { id })
+    await Promise.all([reviveRuns(), reviveRuns()])
+    await reviveRuns()
+    expect(await jobs()).toEqual([{ state: 'created' }])
+    await agent.post(`/api/v1/runs/${id}/stop`).expect(200)
+  })
+
   it('is shared by two workers with others, each run by one at a time', async () => {
     const workers = await Promise.all([startWorkerProcess({ COMPUTE_THREADS: '1' }), startWorkerProcess({ COMPUTE_THREADS: '1' })])
     const ids = []
@@ -138,12 +153,4 @@ describe('a run', () => {
     for (const id of ids) expect(await attemptOf(id)).toBe(1)
     await Promise.all(workers.map((worker) => endWorker(worker, 'SIGTERM')))
   }, 60_000)
-})
-
-describe('the measuring of the machine', () => {
-  it('is stored by a worker, and the forecast of a run then comes within a factor of two of its CPU time', async () => {
-    await startWorkerProcess()
-    const row = await until('a measurement', () => selectOne<{ speed: string }>('SELECT speed FROM calibrations ORDER BY id DESC LIMIT 1'))
-    expect(Number(row.speed)).toBeGreaterThan(0)
-  })
 })
