@@ -21,7 +21,7 @@ export const authenticate: RequestHandler = async (req, _res, next) => {
   const bearer = /^Bearer +(\S+)$/i.exec(req.headers.authorization ?? '')?.[1]
   if (req.headers.authorization !== undefined) {
     req.reader = bearer === undefined ? undefined : await readerByToken(tokenHash(bearer))
-    if (!req.reader) throw new Problem(401, 'token_refused', 'This access token is unknown, expired or revoked. Make a new one under Group, access tokens.', { headers: { 'WWW-Authenticate': 'Bearer error="invalid_token"' } })
+    if (!req.reader) throw new Problem(401, 'token_refused', 'This access token is unknown, expired or revoked. Make a new one on your account page.', { headers: { 'WWW-Authenticate': 'Bearer error="invalid_token"' } })
   } else {
     const sessionId = sessionOfCookie(req.headers.cookie)
     req.reader = sessionId === undefined ? undefined : await readerBySession(sessionId)

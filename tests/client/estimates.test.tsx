@@ -82,6 +82,10 @@ describe('one estimate', () => {
     expect(screen.getByRole('link', { name: 'MST-0001/1' })).toHaveAttribute('href', '/claims/MST-0001-1')
     expect(screen.getByText('In doubt.')).toBeInTheDocument()
   })
+  test('where only the latest claims are listed, it says of how many', () => {
+    render(<MemoryRouter><EstimateView estimate={have({ ...(all[2] as Estimate), uses: 1_204 })} /></MemoryRouter>)
+    expect(screen.getByText('the latest 1 of 1204')).toBeInTheDocument()
+  })
   test('a conditional one says so before anything else', () => {
     render(<MemoryRouter><EstimateView estimate={have(all[1] as Estimate)} /></MemoryRouter>)
     expect(screen.getByText('Conditional.')).toBeInTheDocument()

@@ -1,7 +1,7 @@
 /** Acts of the trail in words; the trail itself keeps the short names, and one that has no words here is shown as it is. */
 const ACTS: Record<string, string> = {
-  'access-token.create': 'made an access token',
-  'access-token.revoke': 'revoked an access token',
+  'access-token.create': 'made the access token',
+  'access-token.revoke': 'revoked the access token',
   'claim.accept': 'accepted to referee',
   'claim.answer': 'answered an objection',
   'claim.assign': 'assigned a referee to',

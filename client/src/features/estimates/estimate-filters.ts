@@ -25,7 +25,7 @@ export function filterEstimates(estimates: Estimate[], { text, conditional, stat
   return estimates.filter((estimate) => {
     if (conditional !== '' && estimate.conditional !== (conditional === 'yes')) return false
     if (state !== '' && estimate.state !== state) return false
-    if (use !== '' && estimate.usedBy.length === 0) return false
+    if (use !== '' && estimate.uses === 0) return false
     const haystack = [estimate.id, estimate.title, estimate.statement, estimate.source, estimate.condition ?? '', estimate.validFor].join(' ').toLowerCase()
     return words.every((word) => haystack.includes(word))
   })

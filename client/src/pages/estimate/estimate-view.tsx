@@ -60,7 +60,10 @@ function EstimateBody({ estimate }: { estimate: Estimate }) {
         <p className="max-w-prose"><Printed text={estimate.checked} /></p>
         <p className="mt-2 max-w-prose text-soft">A numerical check can find a slip of the pen; it proves nothing beyond its reach. The inequality is as sound as its source.</p>
       </Section>
-      <Section title="Signed claims that rest on it">
+      <Section
+        title="Signed claims that rest on it"
+        beside={estimate.uses > estimate.usedBy.length && `the latest ${estimate.usedBy.length} of ${estimate.uses}`}
+      >
         {estimate.usedBy.length === 0 ? (
           <Empty title="No signed claim uses it yet.">
             <p>When a claim is signed whose certificate uses this estimate, it is listed here with the point at which the estimate was used.</p>

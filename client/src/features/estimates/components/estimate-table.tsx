@@ -20,7 +20,7 @@ export function EstimateTable({ estimates }: { estimates: Estimate[] }) {
         { key: 'range', header: 'Holds for', cell: ({ validFor }) => <Printed text={validFor} /> },
         { key: 'condition', header: 'Conditional', cell: ({ conditional, condition }) => (conditional ? <span className="text-undecided">on {condition ?? 'an unproved hypothesis'}</span> : 'no') },
         { key: 'state', header: 'State', className: 'sm:whitespace-nowrap', cell: (estimate) => <EstimateState estimate={estimate} /> },
-        { key: 'used', header: 'Used by', className: 'sm:whitespace-nowrap', cell: ({ usedBy }) => (usedBy.length === 0 ? <span className="text-soft">none</span> : `${usedBy.length} signed`) },
+        { key: 'used', header: 'Used by', className: 'sm:whitespace-nowrap', cell: ({ uses }) => (uses === 0 ? <span className="text-soft">none</span> : `${uses} signed`) },
       ]}
     />
   )
