@@ -133,8 +133,10 @@ export async function listConstants(
   const conditions = [...where]
   if (cursor !== undefined) {
     const [after, number] = readCursor(mark, cursor)
-    conditions.push(`(${key}, e.number) ${query.order === 'asc' ? '>' : '<'} ($after::${type}, $afterNumber::int)`)
-    Object.assign(bind, { after, afterNumber: number })
+    // A value can have a thousand digits, too many for an address: its row is named and the value read again.
+    const position = query.sort === 'value' ? `(SELECT ${key} FROM register_entries e WHERE e.audience = $audience AND e.number = $afterNumber)` : `$after::${type}`
+    conditions.push(`(${key}, e.number) ${query.order === 'asc' ? '>' : '<'} (${position}, $afterNumber::int)`)
+    Object.assign(bind, query.sort === 'value' ? { afterNumber: number } : { after, afterNumber: number })
   }
   const rows = await select<ConstantRow>(
     rowsSql(reader, { key, order: query.order, conditions, limit: '$limit' }),
@@ -142,7 +144,7 @@ export async function listConstants(
   )
   const page = rows.slice(0, limit)
   const last = page.at(-1)
-  const after: CursorKey | null = rows.length > limit && last ? [last.sort_key, last.number] : null
+  const after: CursorKey | null = rows.length > limit && last ? [query.sort === 'value' ? null : last.sort_key, last.number] : null
   const total = cursor === undefined ? await countConstants(where, bind) : undefined
   return { rows: page, next: after && writeCursor(mark, after), ...(total !== undefined && { total }) }
 }

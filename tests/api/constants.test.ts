@@ -229,6 +229,20 @@ describe('the register', () => {
     expect(down.slice(0, 3)).toEqual([stated.primes, stated.semiprimes, stated.square])
   })
 
+  it('pages by value where values have a thousand digits', async () => {
+    const lead = await makeMember({ roles: ['lead'] })
+    for (const last of [1, 2, 3]) {
+      const constant = await makeConstant(lead, series({ kind: 'primes', exclude: [101, 103 + 4 * (last - 1)].slice(0, last === 3 ? 1 : 2) }))
+      await makeClaim(lead, constant, { lo: `1.${'4'.repeat(999)}${last}`, hi: `1.${'4'.repeat(999)}${last + 1}` })
+    }
+    const query = `/api/v1/constants?sort=value&limit=1&group=${lead.groupId}`
+    const own = await signedInAs(lead, app)
+    const first = (await own.get(query).expect(200)).body
+    const second = (await own.get(`${query}&cursor=${encodeURIComponent(first.next)}`).expect(200)).body
+    expect(first.items[0].best.lo.endsWith('1')).toBe(true)
+    expect(second.items[0].best.lo.endsWith('2')).toBe(true)
+  })
+
   it('counts with the first page', async () => {
     const { body } = await agent.get(`/api/v1/constants?limit=2&group=${member.groupId}`)
     expect(body.total).toBe(6)

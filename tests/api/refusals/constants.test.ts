@@ -76,6 +76,16 @@ describe('the register refuses', () => {
     await request(app).get(`/api/v1/constants?limit=1&cursor=${body.next}`).expect(400)
   })
 
+  it('a cursor that was made or changed by hand', async () => {
+    const { body } = await (await signedInAs(await makeMember(), app)).get('/api/v1/constants?limit=1')
+    const inside = JSON.parse(Buffer.from(body.next, 'base64url').toString())
+    for (const changed of [{ ...inside, key: ['x', 'y'] }, { ...inside, seal: 'ä'.repeat(16) }, { key: [1, 1] }, null, 7]) {
+      const cursor = Buffer.from(JSON.stringify(changed)).toString('base64url')
+      const refused = await request(app).get(`/api/v1/constants?limit=1&cursor=${cursor}`).expect(400)
+      expect(refused.body.fields[0].path).toBe('cursor')
+    }
+  })
+
   it('a number that is none, and one that is not given', async () => {
     await request(app).get('/api/v1/constants/42').expect(400)
     await request(app).get('/api/v1/constants/MST-00042').expect(404)
