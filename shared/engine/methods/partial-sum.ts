@@ -4,10 +4,11 @@ import { EngineRefusal } from '../errors.ts'
 import { estimatesUsed } from '../estimates/envelope.ts'
 import type { Definition, SeriesDefinition, SetOfIntegers } from '../sets/definition.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
-import type { Goal } from './computation.ts'
+import type { Computation, ComputationRequest, Goal } from './computation.ts'
 import { mellinTask } from './mellin-task.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { type PartialSumParameters, approximate, choosePartialSumParameters, primeTailRadius, readPartialSumParameters } from './partial-sum-parameters.ts'
+import { type FactorSet, IntegerPartialSum, LARGEST_INTEGER_CUTOFF, integerTailRadius } from './partial-sum-integers.ts'
 import { PrimePartialSum } from './partial-sum-primes.ts'
 import { ProductPartialSum, chooseProductParameters, readProductParameters } from './partial-sum-products.ts'
 import { cutIntoRanges } from './partial-sum-ranges.ts'
@@ -15,6 +16,10 @@ import { cutIntoRanges } from './partial-sum-ranges.ts'
 /** What the method can do for one definition, and how well. */
 interface Plan {
   weight: RationalWeight
+  /** Whether integers are sorted by their prime factors, and not primes summed. */
+  byFactors?: true
+  /** The largest cut-off, where it is below the method's. */
+  most?: number
   /** About the radius at a cut-off. heuristic: affects choice only */
   radiusAt(cutoff: number): number
   /** CPU seconds on the reference machine. heuristic: affects choice only */
@@ -46,12 +51,26 @@ function planFor(definition: Definition): Plan {
     case 'almost-primes':
     case 'squarefree-almost-primes':
     case 'distinct-prime-factors':
-      if (logPower.num <= 0n) return misfit('Over products of primes the method needs a positive power of the logarithm.')
+      if (logPower.num <= 0n) return integerPlan(set, weight)
       return { weight, radiusAt: (cutoff) => productRadius(weight, set.k, cutoff), secondsAt: (cutoff) => 2.5 + 1.7e-9 * cutoff }
+    case 'integers':
+    case 'squarefree':
+      return integerPlan(set, weight)
     case 'residue-class':
       return { weight, radiusAt: (cutoff) => wholeTail(weight, cutoff) / 2, secondsAt: primeSeconds }
     default:
       return misfit('The method of partial sums has no bound for what lies beyond the cut-off over this set.')
+  }
+}
+
+function integerPlan(set: FactorSet, weight: RationalWeight): Plan {
+  const [s, b] = [approximate(weight.power), approximate(weight.logPower)]
+  return {
+    weight,
+    byFactors: true,
+    most: LARGEST_INTEGER_CUTOFF,
+    radiusAt: (cutoff) => integerTailRadius(set, s, b, cutoff),
+    secondsAt: (cutoff) => 0.6 + 1.6e-8 * cutoff,
   }
 }
 
@@ -73,7 +92,7 @@ function productRadius({ power, logPower }: RationalWeight, k: number, cutoff: n
 }
 
 function parametersFor(plan: Plan, goal: Goal): PartialSumParameters {
-  const chosen = choosePartialSumParameters(goal, (cutoff) => plan.radiusAt(cutoff))
+  const chosen = choosePartialSumParameters(goal, (cutoff) => plan.radiusAt(cutoff), plan.most)
   if (chosen) return chosen
   throw new EngineRefusal('too_many_digits', 'digits', 'A partial sum cannot reach so many digits: ask for fewer, or choose the transform.')
 }
@@ -103,21 +122,38 @@ export const partialSum: MethodModule = {
   async prepare(request) {
     const definitions = request.definitions.map(seriesOf)
     const plans = definitions.map(planFor)
-    // The sums of p^-s over the primes, of which others are made, use theta as the weight 1/p does.
-    const weights = definitions[0].set.kind === 'primes' || definitions[0].set.kind === 'residue-class' ? plans.map(({ weight }) => weight) : [{ power: ONE, logPower: ZERO }]
-    const chosen = request.parameters ? readPartialSumParameters(request.parameters) : withUsedEstimates(parametersFor(plans[0], request.goal), weights)
     const { set } = definitions[0]
     if (definitions.some((one) => familyOf(one.set) !== familyOf(set))) misfit('One run of partial sums serves sets of one kind: ask for others in runs of their own.')
-    const tasks = definitions.map((one, i) => ({ weight: plans[i].weight, exclude: 'exclude' in one.set ? one.set.exclude : [] }))
-    if (set.kind === 'residue-class') {
-      const { modulus, residue } = set
-      if (definitions.some(({ set: other }) => other.kind !== set.kind || other.modulus !== modulus || other.residue !== residue)) {
-        misfit('One run of partial sums serves one residue class.')
-      }
-      return new PrimePartialSum(request, chosen, tasks, { modulus, residue })
-    }
-    if (set.kind === 'primes') return new PrimePartialSum(request, chosen, tasks)
+    if (plans.some(({ byFactors }) => byFactors)) return integerSum(request, definitions, plans)
+    if (set.kind === 'primes' || set.kind === 'residue-class') return primeSum(request, definitions, plans)
+    const chosen = request.parameters ? null : withUsedEstimates(parametersFor(plans[0], request.goal), [RECIPROCAL])
     const task = mellinTask(definitions)
-    return new ProductPartialSum(request, request.parameters ? readProductParameters(request.parameters) : chooseProductParameters(chosen, task), task)
+    return new ProductPartialSum(request, chosen ? chooseProductParameters(chosen, task) : readProductParameters(request.parameters ?? {}), task)
   },
+}
+
+/** The sums of p^-s over the primes, of which others are made, use theta as the weight 1/p does. */
+const RECIPROCAL: RationalWeight = { power: ONE, logPower: ZERO }
+
+function primeSum(request: ComputationRequest, definitions: readonly SeriesDefinition[], plans: readonly Plan[]): Computation {
+  const weights = plans.map(({ weight }) => weight)
+  const chosen = request.parameters ? readPartialSumParameters(request.parameters) : withUsedEstimates(parametersFor(plans[0], request.goal), weights)
+  const tasks = definitions.map(({ set }, i) => ({ weight: weights[i], exclude: 'exclude' in set ? set.exclude : [] }))
+  const { set } = definitions[0]
+  if (set.kind !== 'residue-class') return new PrimePartialSum(request, chosen, tasks)
+  const { modulus, residue } = set
+  if (definitions.some(({ set: other }) => other.kind !== set.kind || other.modulus !== modulus || other.residue !== residue)) {
+    misfit('One run of partial sums serves one residue class.')
+  }
+  return new PrimePartialSum(request, chosen, tasks, { modulus, residue })
+}
+
+function integerSum(request: ComputationRequest, definitions: readonly SeriesDefinition[], plans: readonly Plan[]): Computation {
+  const [{ set }] = definitions
+  const same = (other: SetOfIntegers): boolean => other.kind === set.kind && 'exclude' in other && 'exclude' in set && other.exclude.join() === set.exclude.join()
+  if (!plans.every(({ byFactors }) => byFactors) || !definitions.every((one) => same(one.set))) {
+    misfit('One run of partial sums over integers serves one kind of set with the same exclusions.')
+  }
+  const chosen = request.parameters ? readPartialSumParameters(request.parameters, LARGEST_INTEGER_CUTOFF) : parametersFor(plans[0], request.goal)
+  return new IntegerPartialSum(request, chosen, plans.map(({ weight }) => weight))
 }
