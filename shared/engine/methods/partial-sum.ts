@@ -1,95 +1,18 @@
 import { createBallArithmetic } from '../arithmetic/ball.ts'
-import { ONE, ZERO, parseRational } from '../arithmetic/rational.ts'
+import { ONE, ZERO } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
 import { estimatesUsed } from '../estimates/envelope.ts'
-import type { Definition, SeriesDefinition, SetOfIntegers } from '../sets/definition.ts'
+import type { SeriesDefinition, SetOfIntegers } from '../sets/definition.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
 import type { Computation, ComputationRequest, Goal } from './computation.ts'
 import { mellinTask } from './mellin-task.ts'
 import type { Forecast, MethodModule } from './method.ts'
-import { type PartialSumParameters, approximate, choosePartialSumParameters, primeTailRadius, readPartialSumParameters } from './partial-sum-parameters.ts'
-import { type FactorSet, IntegerPartialSum, LARGEST_INTEGER_CUTOFF, integerTailRadius } from './partial-sum-integers.ts'
+import { type PartialSumParameters, choosePartialSumParameters, readPartialSumParameters } from './partial-sum-parameters.ts'
+import { IntegerPartialSum, LARGEST_INTEGER_CUTOFF } from './partial-sum-integers.ts'
+import { type Plan, familyOf, misfit, planFor, seriesOf } from './partial-sum-plan.ts'
 import { PrimePartialSum } from './partial-sum-primes.ts'
 import { ProductPartialSum, chooseProductParameters, readProductParameters } from './partial-sum-products.ts'
 import { cutIntoRanges } from './partial-sum-ranges.ts'
-
-/** What the method can do for one definition, and how well. */
-interface Plan {
-  weight: RationalWeight
-  /** Whether integers are sorted by their prime factors, and not primes summed. */
-  byFactors?: true
-  /** The largest cut-off, where it is below the method's. */
-  most?: number
-  /** About the radius at a cut-off. heuristic: affects choice only */
-  radiusAt(cutoff: number): number
-  /** CPU seconds on the reference machine. heuristic: affects choice only */
-  secondsAt(cutoff: number): number
-}
-
-function misfit(message: string): never {
-  throw new EngineRefusal('method_does_not_fit', 'method', message)
-}
-
-function seriesOf(definition: Definition): SeriesDefinition {
-  return definition.type === 'series' ? definition : misfit('A partial sum needs a series over a set of integers.')
-}
-
-/** Sets that one run can serve together. */
-function familyOf({ kind }: SetOfIntegers): string {
-  return kind === 'almost-primes' || kind === 'squarefree-almost-primes' || kind === 'distinct-prime-factors' ? 'products of primes' : kind
-}
-
-function planFor(definition: Definition): Plan {
-  const { set, weight: text } = seriesOf(definition)
-  const [power, logPower] = [parseRational(text.power), parseRational(text.logPower)]
-  if (!power || !logPower) throw new EngineRefusal('not_a_number', 'power', 'The weight is not written as exact numbers.')
-  const weight = { power, logPower }
-  const primeSeconds = (cutoff: number): number => 0.25 + 1.2e-9 * cutoff
-  switch (set.kind) {
-    case 'primes':
-      return { weight, radiusAt: (cutoff) => primeTailRadius(weight, cutoff), secondsAt: primeSeconds }
-    case 'almost-primes':
-    case 'squarefree-almost-primes':
-    case 'distinct-prime-factors':
-      if (logPower.num <= 0n) return integerPlan(set, weight)
-      return { weight, radiusAt: (cutoff) => productRadius(weight, set.k, cutoff), secondsAt: (cutoff) => 2.5 + 1.7e-9 * cutoff }
-    case 'integers':
-    case 'squarefree':
-      return integerPlan(set, weight)
-    case 'residue-class':
-      return { weight, radiusAt: (cutoff) => wholeTail(weight, cutoff) / 2, secondsAt: primeSeconds }
-    default:
-      return misfit('The method of partial sums has no bound for what lies beyond the cut-off over this set.')
-  }
-}
-
-function integerPlan(set: FactorSet, weight: RationalWeight): Plan {
-  const [s, b] = [approximate(weight.power), approximate(weight.logPower)]
-  return {
-    weight,
-    byFactors: true,
-    most: LARGEST_INTEGER_CUTOFF,
-    radiusAt: (cutoff) => integerTailRadius(set, s, b, cutoff),
-    secondsAt: (cutoff) => 0.6 + 1.6e-8 * cutoff,
-  }
-}
-
-/** About the sum over all primes beyond a cut-off. heuristic: affects choice only */
-function wholeTail({ power, logPower }: RationalWeight, cutoff: number): number {
-  const [s, b] = [approximate(power), approximate(logPower)]
-  const l = Math.log(cutoff) // heuristic: affects speed only
-  return s === 1 ? l ** -b / b : (cutoff ** (1 - s) * l ** (-b - 1)) / (s - 1)
-}
-
-/** About the radius of a sum over products of k primes: the uncertainty of P(s) times what multiplies it. heuristic: affects choice only */
-function productRadius({ power, logPower }: RationalWeight, k: number, cutoff: number): number {
-  const [s, b] = [approximate(power), approximate(logPower)]
-  const l = Math.log(cutoff) // heuristic: affects speed only
-  const ll = Math.log(l) // heuristic: affects speed only
-  let [factor, term] = [0, 1]
-  for (let i = 0; i < k; i++, term *= ll / i) factor += term
-  return 1.95 * cutoff ** (0.5 - s) * l ** (-1 - b) * Math.min(factor, l)
-}
 
 function parametersFor(plan: Plan, goal: Goal): PartialSumParameters {
   const chosen = choosePartialSumParameters(goal, (cutoff) => plan.radiusAt(cutoff), plan.most)
