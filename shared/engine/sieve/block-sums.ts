@@ -68,18 +68,20 @@ function taylor<N>(
   // unit >= reach
   const scale = bitLength(BigInt(Math.ceil(reach / step) - 1))
   const ratio = arithmetic.rational({ num: BigInt(step) << BigInt(scale), den: BigInt(centre) })
-  let value = weightAt(arithmetic, expansion.weight, centre, logCentre)
+  const atCentre = weightAt(arithmetic, expansion.weight, centre, logCentre)
   const order = orderOf(block)
+  let value = atCentre
   const coefficients = Array.from({ length: order + 1 }, (_, j) => {
     const coefficient = arithmetic.multiply(value, arithmetic.dot(rows[j], powers))
     value = arithmetic.multiply(value, ratio)
     return coefficient
   })
-  // Now value encloses w(c) (unit/c)^(order+1).
+  // w(c) (4 reach/3 c)^(order+1) remainderFactor for each integer.
   const { remainderFactor } = expansion
-  const remainder = arithmetic.scale(value, {
-    num: 4n ** BigInt(order + 1) * remainderFactor.num,
-    den: 3n ** BigInt(order + 1) * remainderFactor.den,
+  const exponent = BigInt(order + 1)
+  const remainder = arithmetic.scale(atCentre, {
+    num: BigInt(4 * reach) ** exponent * remainderFactor.num,
+    den: BigInt(3 * centre) ** exponent * remainderFactor.den,
   })
   return { coefficients, scale, remainder }
 }
