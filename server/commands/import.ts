@@ -8,14 +8,18 @@ import type { ImportLine, ImportResult } from '../../shared/schemas/import.ts'
 import { inTransaction } from '../db.ts'
 import { readDefinition, type ReadDefinition, viewDefinition } from '../engine/definition.ts'
 import { definitionOfWords } from '../engine/definition-words.ts'
-import { invalidField, Problem } from '../errors.ts'
+import { invalidField, Problem, tooLarge } from '../errors.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 import { Constant } from '../models/constant.ts'
 import { draftClaim } from './claim.ts'
 import { stateConstant } from './constant.ts'
 
 const MOST_LINES = 2_000
+/** A table is read in the web process, so that its size is what a moment can read: far above any table of a paper. */
+const MOST_BYTES = 4 * 1024 * 1024
 const COLUMNS = ['definition', 'digits', 'reading', 'source'] as const
+/** Most characters of a cell, as in a claim that is typed. Checked before any pattern meets the text. */
+const LONGEST = { definition: 200, digits: 20_000, reading: 20, source: 20_000 } as const
 
 /** One line as read: what it asserts, and what the register says to it. */
 interface ReadLine {
@@ -23,8 +27,9 @@ interface ReadLine {
   draft?: { read: ReadDefinition | null; constant: Constant | null; digits: string; reading: 'truncated' | 'rounded'; source: string }
 }
 
-/** Text of an uploaded file; refuses what is not UTF-8, and more lines than one import has. */
+/** Text of an uploaded file; refuses what is larger than one import, and what is not UTF-8. */
 export function textOfFile(content: Buffer): string {
+  if (content.length > MOST_BYTES) throw tooLarge(`A table to import has at most ${MOST_BYTES / 1024 / 1024} MB: cut it into parts.`)
   try {
     return new TextDecoder('utf-8', { fatal: true }).decode(content)
   } catch {
@@ -59,6 +64,8 @@ async function meaningOf(words: string): Promise<{ read: ReadDefinition | null; 
 
 async function readLine(line: number, row: Record<(typeof COLUMNS)[number], string>): Promise<ReadLine> {
   const bad = (message: string): ReadLine => ({ shown: { line, verdict: 'bad', message, definition: null, constant: null, enclosure: null } })
+  const unfit = COLUMNS.find((name) => row[name].length > LONGEST[name] || row[name].includes('\0'))
+  if (unfit) return bad(row[unfit].length > LONGEST[unfit] ? `More than ${LONGEST[unfit].toLocaleString('en')} characters in the column ${unfit}.` : `A character that is none in the column ${unfit}.`)
   const reading = row.reading.toLowerCase()
   if (reading !== 'truncated' && reading !== 'rounded') return bad('The column reading says "truncated" or "rounded".')
   if (row.source === '') return bad('The source is missing.')

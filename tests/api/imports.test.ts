@@ -87,6 +87,21 @@ describe('an import of a table of digits', () => {
     expect(body.fields[0]).toMatchObject({ path: 'file', message: expect.stringMatching(reason) })
   })
 
+  it('keeps the good lines beside a cell that no pattern should meet or no database can keep', async () => {
+    const long = '1'.repeat(200_000)
+    const text = `${HEAD}${long},1.14,rounded,x\nk = 2,1.${long},rounded,x\nk = 2,1.14,rounded,${long}\nk = 2,1.14,rounded,a\0b\nk = 2,1.14,rounded,good\n`
+    const { body } = await send('/api/v1/imports', text).expect(201)
+    expect(body.drafts.map((one: { line: number }) => one.line)).toEqual([6])
+    expect(body.left.map((one: { message: string }) => one.message)).toEqual([
+      'More than 200 characters in the column definition.', 'More than 20,000 characters in the column digits.', 'More than 20,000 characters in the column source.', 'A character that is none in the column source.',
+    ])
+  })
+
+  it('refuses a table that would hold the server up', async () => {
+    const { body } = await send('/api/v1/imports/preview', HEAD + 'primes,1.6,truncated,x\n'.repeat(200_000)).expect(413)
+    expect(body.detail).toMatch(/at most 4 MB/)
+  })
+
   it('is for researchers', async () => {
     const referee = await signedInAs(await makeMember({ roles: ['referee'] }), app)
     await referee.post('/api/v1/imports/preview').attach('file', Buffer.from(TABLE), 'table.csv').expect(403)
