@@ -28,7 +28,7 @@ function waysOf(definition: Definition): Way[] {
     for (const arithmetic of ['ball', 'mpfr'] as const) {
       for (const goal of goals) {
         const forecast = method.forecast(definition, goal, arithmetic, 1)
-        if (forecast.possible && forecast.seconds < 60) ways.push({ method: method.name, arithmetic, goal })
+        if (forecast.possible && forecast.seconds < 15) ways.push({ method: method.name, arithmetic, goal })
       }
     }
   }

@@ -32,7 +32,7 @@ describe('enclose', () => {
     const answer = JSON.parse(out) as { lo: string; hi: string; digits: number; certificate: object }
     expect(Object.keys(answer)).toEqual(['lo', 'hi', 'radius', 'digits', 'method', 'arithmetic', 'budget', 'certificate'])
     expect(answer.digits).toBeGreaterThanOrEqual(20)
-    // Odd integers with three prime factors; Arb 2.23 and PARI/GP, as published-values has it.
+    // Odd integers with three prime factors; Arb 2.23 and PARI/GP 2.15 (reference libraries).
     expect(contains(answer, '0.546010010883498718419889654689')).toBe(true)
 
     const file = join(folder, 'certificate.json')
@@ -42,6 +42,20 @@ describe('enclose', () => {
     const changed = await run('verify', file)
     expect(changed.code).toBe(1)
     expect(changed.out).toContain('does not hold')
+  })
+
+  it('ends, undecided, a repetition whose forged parameters ask for hours', async () => {
+    const { out } = await run('enclose', '--set', 'primes', '--digits', '20', '--method', 'panels', '--json')
+    const { certificate } = JSON.parse(out) as { certificate: { parameters: Record<string, string | number> } }
+    const panels = String(certificate.parameters.panelNodes).split(',').length
+    certificate.parameters.panelNodes = new Array(panels).fill(5_000).join(',')
+    certificate.parameters.precision = 12_000
+    const file = join(folder, 'forged.json')
+    writeFileSync(file, JSON.stringify(certificate))
+    const begun = Date.now()
+    expect(await run('verify', file, '--minutes', '0.05')).toMatchObject({ code: 2, err: expect.stringContaining('not decided') as string })
+    expect(Date.now() - begun).toBeLessThan(30_000)
+    expect(await run('verify', file, '--minutes', 'ever')).toMatchObject({ code: 2 })
   })
 
   it('prints an array for a range of k, and a line for a person without --json', async () => {

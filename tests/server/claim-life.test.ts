@@ -21,7 +21,7 @@ const standings: Standing[] = subsets.flatMap((roles) =>
   yesNo.flatMap((sameGroup) => yesNo.flatMap((author) => yesNo.flatMap((everReferee) => (['none', 'asked', 'accepted', 'declined'] as const).map((assignment) => ({ roles, sameGroup, author, everReferee, assignment }))))),
 )
 
-/** The permission table and the two rules on one's own claim, once more in the words of product.md. */
+/** The permission table and the two rules on one's own claim, once more in words of their own. */
 function capacities({ roles, sameGroup, author, assignment, everReferee }: Standing): Capacity[] {
   const found: Capacity[] = []
   if (author && (roles.includes('researcher') || roles.includes('lead'))) found.push('author')

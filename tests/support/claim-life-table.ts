@@ -2,7 +2,7 @@ import type { PersonAct } from '../../shared/claim-life.ts'
 import type { ClaimState } from '../../shared/schemas/claim.ts'
 
 /*
- * What product.md says of a claim's life, written down a second time and by people, for the tests: who may do an act at all, and in
+ * What is agreed of a claim's life, written down a second time and by people, for the tests: who may do an act at all, and in
  * which states it leads where. Whatever is not here has to be refused.
  */
 
