@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import type { Certificate } from '../engine/certificate/certificate.ts'
-import { ARITHMETIC_NAMES, METHOD_NAMES } from '../engine/methods/computation.ts'
+import { ARITHMETIC_NAMES, ERROR_SOURCES, METHOD_NAMES } from '../engine/methods/computation.ts'
 import { LIMITS } from '../limits.ts'
 
 /** The certificate's file format, version 1. Unknown members are refused: what is not understood is not certified. */
@@ -48,7 +48,7 @@ export const certificateSchema = z.strictObject({
   digits: z.strictObject({ truncated: z.number().int().min(-1), rounded: z.number().int().min(-1) }),
   budget: z.array(
     z.strictObject({
-      source: z.enum(['discretisation', 'truncation-below', 'truncation-above', 'tail', 'series', 'rounding']),
+      source: z.enum(ERROR_SOURCES),
       bound: z.string().max(20),
       magnitude,
     }),

@@ -1,10 +1,11 @@
 import { z } from 'zod'
 import { decimalText, enclosure, id, instant, pageOf, pageQuery, personRef, constantNumber } from './common.ts'
 import { definitionInput, definitionView } from './definition.ts'
+import { ARITHMETIC_NAMES, ERROR_SOURCES, METHOD_NAMES } from '../engine/methods/computation.ts'
 import { LIMITS } from '../limits.ts'
 
-export const method = z.enum(['transform', 'panels', 'partial-sum', 'finite', 'expansion', 'derivatives'])
-export const arithmetic = z.enum(['ball', 'mpfr'])
+export const method = z.enum(METHOD_NAMES)
+export const arithmetic = z.enum(ARITHMETIC_NAMES)
 export const goal = z.union([
   z.object({ digits: z.number().int().min(1, 'at least one digit').max(LIMITS.digits, `at most ${LIMITS.digits} digits`) }),
   z.object({ cutoff: z.string().regex(/^[1-9]\d{0,17}$/, 'write a whole number') }),
@@ -43,9 +44,9 @@ export type RunInput = z.input<typeof runInput>
 
 export const runState = z.enum(['queued', 'running', 'done', 'failed', 'stopped'])
 export const budgetItem = z.object({
-  source: z.enum(['discretisation', 'truncation-below', 'truncation-above', 'tail', 'series', 'rounding']),
+  source: z.enum(ERROR_SOURCES),
   bound: z.string(),
-  /** Statement of the bound in one line, from BOUNDS.md. */
+  /** Name of the bound and what it claims, from BOUNDS.md. */
   statement: z.string(),
   magnitude: z.string(),
 })
@@ -106,5 +107,5 @@ export type Run = z.infer<typeof run>
 export const runEvent = run.pick({ state: true, progress: true, shards: true, secondsLeft: true, cpuSeconds: true }).extend({ enclosure: enclosure.nullable() })
 export type RunEvent = z.infer<typeof runEvent>
 
-export const runQuery = pageQuery.extend({ state: runState.optional(), mine: z.coerce.boolean().optional(), constant: constantNumber.optional() })
+export const runQuery = pageQuery.extend({ state: runState.optional(), mine: z.stringbool().optional(), constant: constantNumber.optional() })
 export const runPage = pageOf(runSummary)

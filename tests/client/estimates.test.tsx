@@ -2,8 +2,9 @@ import { render, screen } from '@testing-library/react'
 import { userEvent } from '@testing-library/user-event'
 import { MemoryRouter } from 'react-router-dom'
 import { describe, expect, test, vi } from 'vitest'
-import { estimateFiltersOf, filterEstimates, printedRange, shortTitle } from '../../client/src/features/estimates/estimate-filters.ts'
-import { Printed } from '../../client/src/features/estimates/components/printed.tsx'
+import { estimateFiltersOf, filterEstimates, shortTitle } from '../../client/src/features/estimates/estimate-filters.ts'
+import { Printed } from '../../client/src/components/formula/printed.tsx'
+import { printedText } from '../../client/src/components/formula/printed-text.ts'
 import { EstimateView } from '../../client/src/pages/estimate/estimate-view.tsx'
 import { EstimatesView } from '../../client/src/pages/estimates/estimates-view.tsx'
 import { ESTIMATES } from '../../shared/engine/estimates/library.ts'
@@ -38,9 +39,9 @@ describe('filters', () => {
 
 describe('print', () => {
   test('a range has its signs and its thin spaces', () => {
-    expect(printedRange('1427 <= x <= 10^19')).toBe('1427\u00a0≤\u00a0x\u00a0≤\u00a010^19')
-    expect(printedRange('x >= 908994923')).toBe('x\u00a0≥\u00a0908\u202f994\u202f923')
-    expect(printedRange('1.101 * 10^26')).toBe('1.101\u00a0·\u00a010^26')
+    expect(printedText('1427 <= x <= 10^19')).toBe('1427\u00a0≤\u00a0x\u00a0≤\u00a010^19')
+    expect(printedText('x >= 908994923')).toBe('x\u00a0≥\u00a0908\u202f994\u202f923')
+    expect(printedText('1.101 * 10^26')).toBe('1.101\u00a0·\u00a010^26')
   })
   test('powers are raised', () => {
     const { container } = render(<Printed text="x >= e^28, radius 10^-40" />)

@@ -34,7 +34,8 @@ export interface Enclosure {
   hi: string
 }
 
-export type ErrorSource = 'discretisation' | 'truncation-below' | 'truncation-above' | 'tail' | 'series' | 'rounding'
+export const ERROR_SOURCES = ['discretisation', 'truncation-below', 'truncation-above', 'tail', 'series', 'rounding'] as const
+export type ErrorSource = (typeof ERROR_SOURCES)[number]
 
 export interface BudgetItem {
   source: ErrorSource

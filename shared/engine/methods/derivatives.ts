@@ -37,10 +37,10 @@ interface Choice {
 }
 
 function taskOf(definition: Definition): Task {
-  const misfit = (message: string): EngineRefusal => new EngineRefusal('method-does-not-fit', 'method', message)
+  const misfit = (message: string): EngineRefusal => new EngineRefusal('method_does_not_fit', 'method', message)
   if (definition.type !== 'series') throw misfit('Derivatives serve sums of weights over a set of integers; this constant is of another kind.')
   const [power, logPower] = [parseRational(definition.weight.power), parseRational(definition.weight.logPower)]
-  if (!power || !logPower) throw new EngineRefusal('not-a-number', 'power', 'The weight is not written as exact numbers.')
+  if (!power || !logPower) throw new EngineRefusal('not_a_number', 'power', 'The weight is not written as exact numbers.')
   if (logPower.num > 0n) throw misfit('Derivatives serve weights with log n to the power 0, 1, 2, … above; with log n below, use the transform.')
   if (!isInteger(logPower)) throw misfit('With log n above, its power must be a whole number: 1, 2, 3, ….')
   const series = dirichletSeries(definition.set, power)
@@ -53,9 +53,9 @@ function taskOf(definition: Definition): Task {
 }
 
 function choose(task: Task, goal: Goal): Choice {
-  if (!('digits' in goal)) throw new EngineRefusal('method-does-not-fit', 'cutoff', 'Derivatives have no cut-off: ask for a number of digits.')
-  if (goal.digits > MOST_DIGITS) throw new EngineRefusal('too-many-digits', 'digits', `Derivatives go up to ${MOST_DIGITS} digits.`)
-  if (task.order > 60) throw new EngineRefusal('too-large', 'logPower', 'log n may stand above to a power of at most 60.')
+  if (!('digits' in goal)) throw new EngineRefusal('method_does_not_fit', 'cutoff', 'Derivatives have no cut-off: ask for a number of digits.')
+  if (goal.digits > MOST_DIGITS) throw new EngineRefusal('too_many_digits', 'digits', `Derivatives go up to ${MOST_DIGITS} digits.`)
+  if (task.order > 60) throw new EngineRefusal('too_large', 'logPower', 'log n may stand above to a power of at most 60.')
   const room = Math.max(0, -Math.log2(Number(task.radius.num) / Number(task.radius.den))) // heuristic: affects speed only
   const bits = (goal.digits + SPARE_DIGITS) * 3.3219281 // heuristic: affects speed only
   const lost = task.order * (room + 6) + room + task.order * Math.log2(task.order + 1) // heuristic: affects speed only
@@ -68,7 +68,7 @@ function read(given: Parameters, order: number): Choice {
   const whole = (name: keyof Choice, least: number, most: number): number => {
     const value = given[name]
     if (typeof value !== 'number' || !Number.isInteger(value) || value < least || value > most) {
-      throw new EngineRefusal('unsound-parameter', name, `The parameter ${name} must be a whole number from ${least} to ${most}.`)
+      throw new EngineRefusal('unsound_parameter', name, `The parameter ${name} must be a whole number from ${least} to ${most}.`)
     }
     return value
   }
@@ -184,7 +184,7 @@ export const derivatives: MethodModule = {
   },
 
   async prepare(request) {
-    if (request.definitions.length !== 1) throw new EngineRefusal('mixed-definitions', 'definitions', 'Derivatives are computed one constant at a time.')
+    if (request.definitions.length !== 1) throw new EngineRefusal('mixed_definitions', 'definitions', 'Derivatives are computed one constant at a time.')
     const task = taskOf(request.definitions[0])
     return new DerivativeComputation(request, task, request.parameters ? read(request.parameters, task.order) : choose(task, request.goal))
   },

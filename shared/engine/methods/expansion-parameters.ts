@@ -31,13 +31,13 @@ export function readExpansionParameters(given: Parameters, expansion: PrimeExpan
     const value = given[name]
     const [least, most] = RANGES[name]
     if (typeof value !== 'number' || !Number.isInteger(value) || value < least || value > most) {
-      throw new EngineRefusal('unsound-parameter', name, `The parameter ${name} must be a whole number from ${least} to ${most}.`)
+      throw new EngineRefusal('unsound_parameter', name, `The parameter ${name} must be a whole number from ${least} to ${most}.`)
     }
     return value
   }
   const p = { precision: whole('precision'), split: whole('split'), powers: whole('powers'), terms: whole('terms') }
   if (compare(rational(p.split), expansion.radius) <= 0) {
-    throw new EngineRefusal('unsound-parameter', 'split', 'The parameter split must lie beyond the radius of the expansion.')
+    throw new EngineRefusal('unsound_parameter', 'split', 'The parameter split must lie beyond the radius of the expansion.')
   }
   return p
 }

@@ -35,7 +35,7 @@ function taskOf(definition: Definition): Task {
     }
   }
   if (definition.type !== 'over-primes') {
-    throw new EngineRefusal('method-does-not-fit', 'method', 'The expansion serves sums and products over the primes of a rational function.')
+    throw new EngineRefusal('method_does_not_fit', 'method', 'The expansion serves sums and products over the primes of a rational function.')
   }
   const { combine, exclude } = definition
   const [numerator, denominator] = [definition.numerator.map(BigInt), definition.denominator.map(BigInt)]
@@ -141,7 +141,7 @@ function magnitudeOf(lo: Rational, hi: Rational): Rational {
 
 function parametersFor(task: Task, request: Pick<ComputationRequest, 'goal' | 'parameters'>): ExpansionParameters {
   if (request.parameters) return readExpansionParameters(request.parameters, task.expansion)
-  if (!('digits' in request.goal)) throw new EngineRefusal('method-does-not-fit', 'cutoff', 'The expansion has no cut-off: ask for a number of digits.')
+  if (!('digits' in request.goal)) throw new EngineRefusal('method_does_not_fit', 'cutoff', 'The expansion has no cut-off: ask for a number of digits.')
   return chooseExpansionParameters(request.goal.digits, task.expansion)
 }
 
@@ -165,7 +165,7 @@ export const expansion: MethodModule = {
   },
 
   async prepare(request) {
-    if (request.definitions.length !== 1) throw new EngineRefusal('mixed-definitions', 'definitions', 'The expansion computes one constant at a time.')
+    if (request.definitions.length !== 1) throw new EngineRefusal('mixed_definitions', 'definitions', 'The expansion computes one constant at a time.')
     const task = taskOf(request.definitions[0])
     refuseBadPrimes(request.definitions[0], task)
     return new ExpansionComputation(request, task, parametersFor(task, request))

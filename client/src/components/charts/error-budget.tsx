@@ -1,16 +1,16 @@
 import { lazy, Suspense } from 'react'
+import type { ErrorSource } from '../../../../shared/engine/methods/computation.ts'
+import { Printed } from '../formula/printed.tsx'
 import { Table } from '../ui/table.tsx'
 import { Power } from './power.tsx'
 
 const ErrorBudgetPlot = lazy(() => import('./error-budget-plot.tsx'))
 
-export type ErrorSource = 'discretisation' | 'truncation-below' | 'truncation-above' | 'tail' | 'series' | 'rounding'
-
 export interface BudgetLine {
   source: ErrorSource
   /** Id of the bound. */
   bound: string
-  /** The bound in one line. */
+  /** Name of the bound and what it claims. */
   statement: string
   /** Contribution to the radius, rounded up: "3.1e-42". */
   magnitude: string
@@ -62,7 +62,7 @@ function BudgetTable({ items, radius }: ErrorBudgetProps) {
         { key: 'source', header: 'Source', cell: (row) => (row.source ? SOURCE_WORDS[row.source] : <strong className="font-semibold">Radius</strong>) },
         { key: 'magnitude', header: 'At most', align: 'right', cell: (row) => <Magnitude text={row.magnitude} /> },
         { key: 'bound', header: 'Bound', cell: (row) => row.bound && <code className="whitespace-nowrap">{row.bound}</code> },
-        { key: 'statement', header: 'What the bound says', cell: (row) => row.statement },
+        { key: 'statement', header: 'What the bound says', cell: (row) => <Printed text={row.statement} /> },
       ]}
     />
   )

@@ -31,15 +31,6 @@ export function filterEstimates(estimates: Estimate[], { text, conditional, stat
   })
 }
 
-/** A range as it is printed: "x ≥ 908 994 923" for "x >= 908994923", with spaces that never break a line. */
-export function printedRange(text: string): string {
-  return text
-    .replace(/(\S) ?>= ?/g, '$1\u00a0≥\u00a0')
-    .replace(/(\S) ?<= ?/g, '$1\u00a0≤\u00a0')
-    .replace(/(\d) ?\* ?(?=\d)/g, '$1\u00a0·\u00a0')
-    .replace(/\d{5,}/g, (digits) => digits.replace(/\B(?=(\d{3})+$)/g, '\u202f'))
-}
-
 /** A title without the range, for a table that has the range in a column of its own. */
 export function shortTitle(title: string): string {
   return title.replace(/, (?:log )?x >=? .*$/, '')

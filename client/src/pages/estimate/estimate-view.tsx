@@ -1,6 +1,8 @@
 import type { Estimate } from '../../../../shared/schemas/estimate.ts'
 import { paths } from '../../app/paths.ts'
 import { Formula } from '../../components/formula/formula.tsx'
+import { Printed } from '../../components/formula/printed.tsx'
+import { printedText } from '../../components/formula/printed-text.ts'
 import { Empty } from '../../components/ui/feedback.tsx'
 import { Part } from '../../components/ui/fetched.tsx'
 import type { Fetched } from '../../components/ui/fetched.tsx'
@@ -9,15 +11,13 @@ import { Notice } from '../../components/ui/notice.tsx'
 import { Facts, MarginNote, Page, Section } from '../../components/ui/page.tsx'
 import { Table } from '../../components/ui/table.tsx'
 import { EstimateState } from '../../features/estimates/components/estimate-state.tsx'
-import { Printed } from '../../features/estimates/components/printed.tsx'
-import { printedRange } from '../../features/estimates/estimate-filters.ts'
 
 /** One published inequality: what it says, where it holds, where it stands, and who rests on it. */
 export function EstimateView({ estimate }: { estimate: Fetched<Estimate> }) {
   const { data } = estimate
   return (
     <Page
-      title={data ? printedRange(data.title) : 'Estimate'}
+      title={data ? printedText(data.title) : 'Estimate'}
       head={
         <>
           <p className="mb-1">

@@ -1,11 +1,11 @@
 import type { Estimate } from '../../../../../shared/schemas/estimate.ts'
 import { paths } from '../../../app/paths.ts'
 import { Formula } from '../../../components/formula/formula.tsx'
+import { Printed } from '../../../components/formula/printed.tsx'
 import { TextLink } from '../../../components/ui/link.tsx'
 import { Table } from '../../../components/ui/table.tsx'
 import { shortTitle } from '../estimate-filters.ts'
 import { EstimateState } from './estimate-state.tsx'
-import { Printed } from './printed.tsx'
 
 /** Estimates with statement, range and what they are conditional on. */
 export function EstimateTable({ estimates }: { estimates: Estimate[] }) {

@@ -1,6 +1,6 @@
 import type { Certificate } from '../../../../../shared/engine/certificate/certificate.ts'
 import { readDefinition } from '../../../../../shared/engine/sets/typeset.ts'
-import { Printed } from '../../estimates/components/printed.tsx'
+import { Printed } from '../../../components/formula/printed.tsx'
 import { paths } from '../../../app/paths.ts'
 import { Magnitude, SOURCE_WORDS } from '../../../components/charts/error-budget.tsx'
 import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
