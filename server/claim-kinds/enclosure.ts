@@ -1,6 +1,6 @@
 import type { Transaction } from 'sequelize'
 import { conflict, unprocessable } from '../errors.ts'
-import { boundStatement } from '../engine/bounds.ts'
+import { boundTitle } from '../engine/bounds.ts'
 import { Run } from '../models/run.ts'
 import type { ClaimContent, ClaimKind, Claimant } from './claim-kind.ts'
 import { estimateItem } from './estimate-item.ts'
@@ -20,7 +20,7 @@ export const enclosure: ClaimKind<{ runId: string }> = {
     if (!outcome) return []
     const bounds = outcome.budget.map(({ bound, magnitude, source }) => ({
       item: `Bound ${bound}`,
-      detail: `${boundStatement(bound)} Brings ${magnitude} to the radius (${source}).`,
+      detail: `${boundTitle(bound)}; brings ${magnitude.replace('e', ' · 10^')} to the radius (${source.replace('-', ' ')})`,
     }))
     return [...outcome.estimates.map(estimateItem), ...bounds]
   },

@@ -2,6 +2,7 @@ import { useEffect, useRef, useState } from 'react'
 import { z } from 'zod'
 import { longText } from '../../../../../shared/schemas/common.ts'
 import type { Claim } from '../../../../../shared/schemas/claim.ts'
+import { Printed } from '../../../components/formula/printed.tsx'
 import { Button } from '../../../components/ui/button.tsx'
 import { Choice, Field, FieldSet, TextArea } from '../../../components/ui/field.tsx'
 import { Notice } from '../../../components/ui/notice.tsx'
@@ -40,7 +41,7 @@ export function VerdictForm({ claim, onAct, onKeepDraft }: VerdictFormProps) {
       {checklist.length > 0 && (
         <FieldSet legend="What I have checked">
           {checklist.map(({ item, detail }, index) => (
-            <Choice key={item} label={item} hint={detail} {...form.register(`checked.${index}`)} />
+            <Choice key={item} label={item} hint={<Printed text={detail} />} {...form.register(`checked.${index}`)} />
           ))}
         </FieldSet>
       )}
