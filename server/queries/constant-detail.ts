@@ -1,4 +1,5 @@
 import { hasRight } from '../../shared/permissions.ts'
+import type { Run } from '../../shared/schemas/run.ts'
 import { select, selectOne } from '../db.ts'
 import { audienceOf, type Reader } from './audience.ts'
 
@@ -90,9 +91,9 @@ export async function estimatesUnder(reader: Reader, constantId: string): Promis
 
 export interface ConstantRunRow {
   id: string
-  method: string
-  arithmetic: string
-  state: string
+  method: Run['method']
+  arithmetic: Run['arithmetic']
+  state: Run['state']
   created_at: Date
 }
 

@@ -2,6 +2,7 @@ import { z } from 'zod'
 import { constantNumber, enclosure, id, instant, pageOf, pageQuery } from './common.ts'
 import { definitionInput, definitionView } from './definition.ts'
 import { claimState, claimSummary } from './claim.ts'
+import { arithmetic, method, runState } from './run.ts'
 
 /** POST /constants: states a constant; one that exists is answered with 200 instead of 201. */
 export const constantInput = z.object({ definition: definitionInput })
@@ -58,7 +59,7 @@ export const constant = constantSummary.extend({
   /** Where it was stated. */
   statedBy: z.string(),
   statedAt: instant,
-  runs: z.array(z.object({ id, method: z.string(), arithmetic: z.string(), state: z.string(), createdAt: instant })),
+  runs: z.array(z.object({ id, method, arithmetic, state: runState, createdAt: instant })),
 })
 export type Constant = z.infer<typeof constant>
 

@@ -79,7 +79,7 @@ export function AboutPage() {
             <li>The digest and the signature speak of the file and not of the mathematics.</li>
             <li>Digits after the stone are not certified, and an enclosure that does not decide a digit does not suggest one.</li>
           </ul>
-          <p>Who builds a proof on a constant should repeat it from its certificate, and read the bounds.</p>
+          <p>Whoever builds a proof on a constant should repeat it from its certificate, and read the bounds.</p>
         </Section>
       </div>
     </Page>

@@ -4,6 +4,7 @@ import { Narrowing } from '../../components/charts/narrowing.tsx'
 import { Nest } from '../../components/charts/nest.tsx'
 import { DigitLine } from '../../components/digit-line/digit-line.tsx'
 import { Formula } from '../../components/formula/formula.tsx'
+import { Printed } from '../../components/formula/printed.tsx'
 import { StateMark } from '../../components/state-mark/state-mark.tsx'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
 import { ButtonLink, TextLink } from '../../components/ui/link.tsx'
@@ -11,6 +12,7 @@ import { Notice } from '../../components/ui/notice.tsx'
 import { Page, Section } from '../../components/ui/page.tsx'
 import { ClaimTable } from '../../features/claims/components/claim-table.tsx'
 import { ConstantMargin } from '../../features/constants/components/constant-margin.tsx'
+import { METHOD_WORDS, RUN_STATE_WORDS } from '../../features/runs/run-words.ts'
 
 export interface ConstantViewProps {
   number: string
@@ -85,7 +87,7 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
         </Section>
       )}
       <Section title="What is summed">
-        <p className="max-w-prose">{constant.convergence}</p>
+        <p className="max-w-prose"><Printed text={constant.convergence} /></p>
         {constant.firstMembers.length > 0 && (
           <p className="mt-2 max-w-prose">
             The set begins with {constant.firstMembers.join(', ')}, …
@@ -98,9 +100,9 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
             {constant.runs.map((run) => (
               <li key={run.id}>
                 <TextLink to={paths.run(run.id)}>
-                  {run.method}, {run.arithmetic}
+                  {METHOD_WORDS[run.method]}, {run.arithmetic}
                 </TextLink>
-                : {run.state}
+                : {RUN_STATE_WORDS[run.state]}
               </li>
             ))}
           </ul>

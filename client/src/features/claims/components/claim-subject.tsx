@@ -84,7 +84,7 @@ export function Caution({ claim }: { claim: Claim }) {
       An enclosure is as sound as the estimates it cites and the programs that computed it. This one{' '}
       {estimates.length === 0 ? 'uses no published estimate' : `uses ${estimates.length} published estimate${estimates.length === 1 ? '' : 's'}`}
       {conditional > 0 && `, ${conditional} of them conditional`}
-      {arithmetics.length > 1 ? `; the arithmetics ${arithmetics.join(' and ')} agree` : arithmetics.length === 1 ? `; it was computed by ${arithmetics[0]} arithmetic alone` : ''}. Who builds a proof on it should repeat it
+      {arithmetics.length > 1 ? `; the arithmetics ${arithmetics.join(' and ')} agree` : arithmetics.length === 1 ? `; it was computed by ${arithmetics[0]} arithmetic alone` : ''}. Whoever builds a proof on it should repeat it
       from the certificate.
     </p>
   )

@@ -51,7 +51,7 @@ export function RulesForm({ group, onSave }: { group: Group; onSave: (patch: Gro
         label="A computed enclosure needs a recheck"
         hint="At least one run by other arithmetic or another method whose enclosure meets the claimed one."
       />
-      <Field label="Days before a reminder" hint="Who is to act is reminded by mail after so long." narrow error={errorAt('reminderDays')}>
+      <Field label="Days before a reminder" hint="Whoever is to act is reminded by mail after so many days." narrow error={errorAt('reminderDays')}>
         {(control) => <TextInput {...control} {...form.register('reminderDays', { valueAsNumber: true })} type="number" min={1} max={365} />}
       </Field>
       <Choice

@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react'
 import type { Run } from '../../../../../shared/schemas/run.ts'
 import { files, paths } from '../../../app/paths.ts'
+import { type MarkedState, STATE_WORDS } from '../../../components/state-mark/state-mark.tsx'
 import { FileLink, TextLink } from '../../../components/ui/link.tsx'
 import { Facts, MarginNote } from '../../../components/ui/page.tsx'
 import { secondsInWords, Time } from '../../../components/ui/time.tsx'
@@ -42,7 +43,7 @@ export function RunMargin({ run }: { run: Run }) {
           <ul>
             {run.claims.map((claim) => (
               <li key={claim.id}>
-                <TextLink to={paths.claim(claim)}>{claim.number ?? 'a draft'}</TextLink>, {claim.state}
+                <TextLink to={paths.claim(claim)}>{claim.number ?? 'a draft'}</TextLink>, {STATE_WORDS[claim.state as MarkedState]}
               </li>
             ))}
           </ul>
