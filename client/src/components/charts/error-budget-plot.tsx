@@ -17,7 +17,7 @@ export default function ErrorBudgetPlot({ items, radius }: { items: BudgetLine[]
   return (
     <ResponsiveContainer width="100%" height={58 + 34 * data.length}>
       <BarChart data={data} layout="vertical" margin={MARGIN} barCategoryGap={9} accessibilityLayer={false}>
-        <XAxis type="number" domain={[0, top - floor]} ticks={exponentTicks(floor, top).map((tick) => tick - floor)} interval={0} tick={<PowerTick below read={(length) => ({ exponent: length + floor })} />} tickLine={AXIS_LINE} axisLine={AXIS_LINE} label={axisLabel('contribution to the radius', 'below')} />
+        <XAxis type="number" domain={[0, top - floor]} ticks={exponentTicks(floor, top).map((tick) => tick - floor)} interval="equidistantPreserveStart" minTickGap={32} tick={<PowerTick below read={(length) => ({ exponent: length + floor })} />} tickLine={AXIS_LINE} axisLine={AXIS_LINE} label={axisLabel('contribution to the radius', 'below')} />
         <YAxis type="category" dataKey="name" tick={{ ...TICK, fill: INK }} tickLine={false} axisLine={AXIS_LINE} width={164} />
         <Bar dataKey="length" isAnimationActive={false}>
           {data.map((bar, index) => (

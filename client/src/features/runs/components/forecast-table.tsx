@@ -54,7 +54,7 @@ export function ForecastTable({ forecasts, chosen, onChoose, busy }: ForecastTab
   )
 }
 
-/** What can't be done, and why: one line a reason, since both arithmetics of a method mostly share it. */
+/** What can't be done, and why, folded away unless nothing can: one line a reason, since both arithmetics of a method mostly share it. */
 export function ForecastRefusals({ forecasts }: { forecasts: Forecast[] }) {
   const reasons = new Map<string, Forecast[]>()
   for (const forecast of forecasts) {
@@ -62,9 +62,11 @@ export function ForecastRefusals({ forecasts }: { forecasts: Forecast[] }) {
   }
   if (reasons.size === 0) return null
   return (
-    <div className="mt-5 text-[0.92rem]">
-      <h3 className="font-normal italic">Not for this constant and goal</h3>
-      <ul className="mt-1 grid gap-1 text-soft">
+    <details className="mt-4 text-[0.92rem]" open={forecasts.every((forecast) => !forecast.possible)}>
+      <summary className="w-fit text-certain underline decoration-rule underline-offset-[0.2em]">
+        Methods that do not serve this constant and goal
+      </summary>
+      <ul className="mt-2 grid gap-1 text-soft">
         {[...reasons.entries()].map(([reason, [first, ...others]]) => (
           <li key={reason}>
             {first && METHOD_WORDS[first.method]}
@@ -72,6 +74,6 @@ export function ForecastRefusals({ forecasts }: { forecasts: Forecast[] }) {
           </li>
         ))}
       </ul>
-    </div>
+    </details>
   )
 }
