@@ -15,6 +15,10 @@ export async function connectToLocalDatabase(): Promise<() => Promise<void>> {
   if (!process.env.PUBLIC_URL && existsSync(addressFile)) process.env.PUBLIC_URL = readFileSync(addressFile, 'utf8')
   process.env.LOG_LEVEL ??= 'warn'
   if (process.env.DATABASE_URL) return async () => undefined
+  if (!existsSync(resolve(projectRoot, process.env.DATA_DIR || '.data', 'postgres', 'data'))) {
+    console.error('There is no database here yet: "npm start" makes one; or set DATABASE_URL.')
+    process.exit(2)
+  }
   // Plain JavaScript that is not part of the build.
   const { startLocalCluster } = (await import(pathToFileURL(join(projectRoot, 'server', 'scripts', 'local-cluster.mjs')).href)) as LocalClusterModule
   const cluster = await startLocalCluster()
