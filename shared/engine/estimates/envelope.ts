@@ -189,5 +189,5 @@ function approximateIntegral(terms: readonly Term[], from: number, to: number, {
 }
 
 function approximate(a: Rational): number {
-  return Number(floorScaled(a, 80)) / 2 ** 80
+  return Number(floorScaled(a, 80)) / 2 ** 80 // heuristic: affects speed only, and width
 }

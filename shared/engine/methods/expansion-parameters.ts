@@ -45,7 +45,7 @@ export function readExpansionParameters(given: Parameters, expansion: PrimeExpan
 /** Chooses parameters for `digits` decimals. heuristic: affects speed only */
 export function chooseExpansionParameters(digits: number, expansion: PrimeExpansion): ExpansionParameters {
   const bits = Math.ceil((digits + SPARE_DIGITS) * 3.3219281) // heuristic: affects speed only
-  const split = Math.max(50 + Math.round(bits / 6), Number(ceil(multiply(expansion.radius, rational(16)))))
+  const split = Math.max(50 + Math.round(bits / 6), Number(ceil(multiply(expansion.radius, rational(16))))) // heuristic: affects speed only
   const radiusBits = approxBits(expansion.radius)
   const gain = approxBits(rational(split)) - radiusBits
   const powers = Math.max(2, Math.ceil((bits + approxBits(expansion.scale) + approxBits(rational(split))) / gain) + 1) // heuristic: affects speed only

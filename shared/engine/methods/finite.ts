@@ -38,7 +38,7 @@ function precisionFor(goal: Goal, task: FiniteTask): number {
   if (goal.digits > LIMITS.digits) throw new EngineRefusal('too_many_digits', 'digits', `At most ${LIMITS.digits} digits can be asked for.`)
   const { num, den } = task.weight.logPower
   const growth = Number(num < 0n ? (-num * 7n) / den : (num * 11n) / (den * 10n)) + 1
-  return Math.ceil((goal.digits + 3) * 3.322) + task.members.length.toString(2).length + growth + 24
+  return Math.ceil((goal.digits + 3) * 3.322) + task.members.length.toString(2).length + growth + 24 // heuristic: affects speed only, and width
 }
 
 function readPrecision({ precision }: Parameters): number {

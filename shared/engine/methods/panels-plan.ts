@@ -172,5 +172,5 @@ function scaled(x: number, part: number): Rational {
 }
 
 function approx(a: Rational): number {
-  return Number(a.num) / Number(a.den)
+  return Number(a.num) / Number(a.den) // heuristic: affects speed only
 }

@@ -64,7 +64,7 @@ function parametersFor(task: Task, goal: Goal): PanelsParameters {
 }
 
 function approx({ num, den }: Rational): number {
-  return Number(num) / Number(den)
+  return Number(num) / Number(den) // heuristic: affects speed only
 }
 
 /** log2 of the factor of rho^-nodes in P-4, the weights taken for about twice their integral. heuristic: affects speed only */

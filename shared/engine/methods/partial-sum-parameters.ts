@@ -72,7 +72,7 @@ function cutoffFor(digits: number, radiusAt: (cutoff: number) => number, most: n
 }
 
 export function approximate(a: Rational): number {
-  return Number(floorScaled(a, 64)) / 2 ** 64
+  return Number(floorScaled(a, 64)) / 2 ** 64 // heuristic: affects speed only
 }
 
 /** About the radius that the tail of a sum over the primes leaves (S-5). heuristic: affects speed only */

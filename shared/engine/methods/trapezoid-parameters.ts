@@ -120,7 +120,7 @@ export function chooseParameters(
 }
 
 function approx(a: Rational): number {
-  return Number(a.num) / Number(a.den)
+  return Number(a.num) / Number(a.den) // heuristic: affects speed only
 }
 
 function bestGap(step: number, b: number): number {
