@@ -11,6 +11,6 @@ export function Printed({ text }: { text: string }) {
     if (index % 3 === 1) return null
     if (index % 3 === 0) return part
     const script = part.replace(/^[({](.*)[)}]$/, '$1').replaceAll('-', '−')
-    return parts[index - 1] === '^' ? <sup key={index} className="leading-none">{script}</sup> : <sub key={index} className="leading-none">{script}</sub>
+    return parts[index - 1] === '^' ? <sup key={index} className="whitespace-nowrap leading-none">{script}</sup> : <sub key={index} className="whitespace-nowrap leading-none">{script}</sub>
   })
 }
