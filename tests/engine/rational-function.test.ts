@@ -26,11 +26,20 @@ describe('an expression in p', () => {
     ['x + 1', /"x"/],
     ['1/(p-p)', /division by 0/],
     ['1/p + ', /not an expression/],
+    ['('.repeat(5_000), /nested too deep/],
     ['a = 3', /quotient of polynomials/],
     ['(p+1)^61', /beyond 60/],
     ['(p+1)^40 (p+2)^40', /degree/],
   ])('refuses %s and says why', (text, reason) => {
     expect(() => parseRationalFunction(text)).toThrow(EngineRefusal)
     expect(() => parseRationalFunction(text)).toThrow(reason)
+  })
+
+  it('tells at once that large polynomials are coprime', () => {
+    const nines = '9'.repeat(150)
+    const begun = performance.now()
+    const { denominator } = parseRationalFunction(`(p^30+3*p^7+${nines})/(p^30-p^11+7*${nines}-1)/(p^29+5*p+${nines}-2)`)
+    expect(denominator).toHaveLength(60)
+    expect(performance.now() - begun).toBeLessThan(1_000)
   })
 })

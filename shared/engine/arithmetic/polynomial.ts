@@ -56,8 +56,35 @@ function pseudoRemainder(a: Polynomial, b: Polynomial): Polynomial {
   return rest
 }
 
+/** A prime, 2^61 - 1. */
+const MODULUS = (1n << 61n) - 1n
+
+function remainderModulo(a: Polynomial, b: Polynomial): Polynomial {
+  let inverse = 1n
+  for (let [base, e] = [leading(b), MODULUS - 2n]; e > 0n; e >>= 1n, base = (base * base) % MODULUS) if (e & 1n) inverse = (inverse * base) % MODULUS
+  const rest = [...a]
+  for (let i = rest.length - b.length; i >= 0; i--) {
+    const q = (rest[i + b.length - 1] * inverse) % MODULUS
+    b.forEach((c, j) => (rest[i + j] = (rest[i + j] - q * c) % MODULUS))
+  }
+  return trimmed(rest)
+}
+
+/**
+ * Whether a and b are coprime modulo a prime that does not divide the leading coefficient of a. If so, they are coprime over the
+ * rationals: a primitive common divisor divides a over the integers, hence keeps its degree modulo the prime.
+ */
+function coprimeModulo(a: Polynomial, b: Polynomial): boolean {
+  if (leading(a) % MODULUS === 0n) return false
+  let [x, y] = [a, b].map((part) => trimmed(part.map((c) => c % MODULUS)))
+  while (y.length > 0) [x, y] = [y, remainderModulo(x, y)]
+  return degree(x) === 0
+}
+
 /** Greatest common divisor over the rationals as a primitive polynomial, by Euclid's algorithm with primitive remainders. */
 export function commonDivisor(a: Polynomial, b: Polynomial): Polynomial {
+  // The usual case, told apart at once: between coprime polynomials the remainders grow enormous.
+  if (coprimeModulo(a, b)) return [1n]
   let [x, y] = [primitivePart(a), primitivePart(b)]
   while (y.length > 0) [x, y] = [y, primitivePart(pseudoRemainder(x, y))]
   return x

@@ -33,6 +33,8 @@ export function parseRationalFunction(expression: string): RationalFunction {
   try {
     tree = parse(expression)
   } catch (error) {
+    // The parser calls itself for every bracket; some hundred open ones exhaust the stack.
+    if (error instanceof RangeError) throw refusal('The brackets are nested too deep.')
     throw refusal(`This is not an expression: ${error instanceof Error ? error.message : 'it cannot be read'}.`)
   }
   return reduce(evaluate(tree))
