@@ -9,6 +9,8 @@ import { divisibility } from '../../shared/engine/sets/primitive.ts'
 import { sumBatch } from '../../shared/engine/sieve/block-sums.ts'
 import { factorMoments } from '../../shared/engine/sieve/factor-moments.ts'
 import { expandWeight } from '../../shared/engine/sieve/weight.ts'
+import { EnginePool } from '../engine/pool.ts'
+import { readEngineRelease } from '../engine-release.ts'
 import { projectRoot } from '../project-root.ts'
 
 const WEIGHT = { power: '1', logPower: '1' }
@@ -66,6 +68,24 @@ function primesieve(): number | null {
   return run.status === 0 ? (performance.now() - start) / 1000 : null
 }
 
+/** Wall seconds of a computation whose shards go to that many threads, as the worker has it; the threads are warm. */
+async function threaded(threads: number, request: ComputationRequest): Promise<number> {
+  const pool = new EnginePool(threads, 1024)
+  const whole = async (run: string): Promise<void> => {
+    const { value } = await pool.run({ kind: 'prepare', run, request })
+    const shards = await Promise.all(value.costs.map((_, index) => pool.run({ kind: 'shard', run, request: { ...request, parameters: value.parameters }, index })))
+    await pool.run({ kind: 'combine', run, request: { ...request, parameters: value.parameters }, results: shards.map((shard) => shard.value), release: readEngineRelease() })
+  }
+  try {
+    await Promise.all(Array.from({ length: threads }, () => pool.run({ kind: 'calibrate' })))
+    const start = performance.now()
+    await whole('bench')
+    return (performance.now() - start) / 1000
+  } finally {
+    await pool.close()
+  }
+}
+
 function allFactorsTo(n: number): void {
   const arithmetic = createBallArithmetic(96)
   const expansions = [expandWeight({ power: rational(1), logPower: rational(1) }, 8)]
@@ -100,6 +120,8 @@ async function rows(long: boolean): Promise<Row[]> {
   const whole50 = command(['--set', 'almost-primes', '--k', '1..10', '--digits', '50'])
   const whole100 = command(['--set', 'almost-primes', '--k', '1..20', '--digits', '100'])
   const one200 = await cpu(() => enclose({ definitions: [almostPrimes(1)], method: 'panels', goal: { digits: 200 } }))
+  const request200: ComputationRequest = { definitions: [almostPrimes(1)], method: 'panels', arithmetic: 'ball', goal: { digits: 200 } }
+  const [oneThread, twoThreads] = [await threaded(1, request200), await threaded(2, request200)]
   const sum9 = await cpu(() => enclose({ definitions: [primeSum], method: 'partial-sum', goal: { cutoff: '1000000000' } }))
   const sum7 = await cpu(() => enclose({ definitions: [primeSum], method: 'partial-sum', goal: { cutoff: '10000000' } }))
   const factors = await cpu(() => allFactorsTo(100_000_000))
@@ -112,6 +134,7 @@ async function rows(long: boolean): Promise<Row[]> {
     { work: 'enclose, k = 1..10, 50 digits (wall)', seconds: whole50, atMost: 1.6, beside: '' },
     { work: 'enclose, k = 1..20, 100 digits (wall)', seconds: whole100, atMost: 6, beside: '' },
     { work: 'one constant, 200 digits', seconds: one200, atMost: 30, beside: '' },
+    { work: 'one constant, 200 digits, two threads (wall)', seconds: twoThreads, atMost: Number((oneThread / 1.7).toFixed(2)), beside: shown(oneThread, 'one thread', twoThreads) },
     { work: 'sum over p <= 10^9 with its tail', seconds: sum9, atMost: 3, beside: shown(primesieve(), 'primesieve (counting only)', sum9) },
     { work: 'sum over p <= 10^7 with its tail', seconds: sum7, atMost: 1, beside: shown(gp(PARI_PRIMES), 'PARI/GP forprime without bound', sum7) },
     { work: 'all k at once to 10^8', seconds: factors, atMost: 4, beside: '' },

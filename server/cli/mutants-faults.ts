@@ -49,10 +49,10 @@ export const FAULTS: Fault[] = [
     tests: ['tests/engine/elementary.test.ts'],
   },
   {
-    name: 'the series of the logarithm loses a term',
+    name: 'the series of the logarithm stops half-way',
     file: `${arithmetic}/logarithm.ts`,
     find: 'let n = inverseOdd.length - 1',
-    replace: 'let n = inverseOdd.length - 3',
+    replace: 'let n = (inverseOdd.length - 1) >> 1',
     tests: ['tests/engine/elementary.test.ts'],
   },
   {
@@ -72,8 +72,8 @@ export const FAULTS: Fault[] = [
   {
     name: 'the error of the eta sum is dropped',
     file: `${series}/zeta.ts`,
-    find: 'return arithmetic.addError(arithmetic.dot(eta, this.powers(r)), etaError)',
-    replace: 'return (void etaError, arithmetic.dot(eta, this.powers(r)))',
+    find: 'arithmetic.addError(arithmetic.dot(etaSigns, this.etaTerms), etaError)',
+    replace: '(void etaError, arithmetic.dot(etaSigns, this.etaTerms))',
     tests: ['tests/engine/zeta.test.ts', 'tests/engine/trapezoid.test.ts', 'tests/engine/expansion.test.ts'],
   },
   {
@@ -99,16 +99,16 @@ export const FAULTS: Fault[] = [
   },
   {
     name: 'the discretisation error of the trapezoid is dropped',
-    file: `${methods}/trapezoid-computation.ts`,
+    file: `${methods}/trapezoid-outcome.ts`,
     find: 'const kappa = kappas[level]',
     replace: 'const kappa = rational(0n * kappas[level].num)',
     tests: ['tests/engine/trapezoid.test.ts'],
   },
   {
     name: 'the nodes left out by the trapezoid are forgotten',
-    file: `${methods}/trapezoid-computation.ts`,
-    find: 'const leftOut = add(below, above)',
-    replace: 'const leftOut = rational(0n * add(below, above).num)',
+    file: `${methods}/trapezoid-outcome.ts`,
+    find: 'const most = add(hi, multiply(add(below, above), rational(2 ** level)))',
+    replace: 'const most = (void below, void above, hi)',
     tests: ['tests/engine/trapezoid.test.ts'],
   },
   {
@@ -117,6 +117,20 @@ export const FAULTS: Fault[] = [
     find: 'for (let j = from; j <= to; j++)',
     replace: 'for (let j = from; j < to; j++)',
     tests: ['tests/engine/trapezoid.test.ts'],
+  },
+  {
+    name: 'the quadrature error of the panels is dropped',
+    file: `${methods}/panels-computation.ts`,
+    find: 'const error = prefix.edge + prefix.panels',
+    replace: 'const error = 0n * (prefix.edge + prefix.panels)',
+    tests: ['tests/engine/panels.test.ts'],
+  },
+  {
+    name: 'what lies beyond the last panel is forgotten',
+    file: `${methods}/panels-computation.ts`,
+    find: 'const hi = max(0n, prefix.hi + error + (prefix.tail ?? 0n))',
+    replace: 'const hi = max(0n, prefix.hi + error)',
+    tests: ['tests/engine/panels.test.ts'],
   },
   {
     name: 'theta is off by a sign in the tail over the primes',

@@ -1,4 +1,5 @@
 import { type Arithmetic, certainlyLess } from '../arithmetic/arithmetic.ts'
+import { steadyExp, steadyLog } from '../arithmetic/steady.ts'
 import { type Rational, compare, floorScaled, parseRational } from '../arithmetic/rational.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
 import type { Bound, Estimate, Point, Term } from './estimate.ts'
@@ -182,7 +183,7 @@ function approximateIntegral(terms: readonly Term[], from: number, to: number, {
   for (const [c, a, k] of rough(terms)) {
     for (let i = 0; i < steps; i++) {
       const v = from + (i + 0.5) * width
-      total += c * width * v ** (k - b - 1) * Math.exp((a - s) * v + (s - 1) * from) // heuristic: affects speed only, and width
+      total += c * width * steadyExp((k - b - 1) * steadyLog(v) + (a - s) * v + (s - 1) * from) // heuristic: affects width only
     }
   }
   return total
