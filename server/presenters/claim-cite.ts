@@ -2,7 +2,7 @@ import { claimNumberText, claimSlug } from '../../shared/constant-number.ts'
 import { certifiedTruncated, intervalText } from '../../shared/digits.ts'
 import { env } from '../env.ts'
 import type { ClaimDetailRow } from '../queries/claim.ts'
-import { bibtexText } from './constant-cite.ts'
+import { bibtexText, closed } from './constant-cite.ts'
 
 /** What a claim says, in one line. */
 export function assertionText({ lo, hi, text, basis }: Pick<ClaimDetailRow, 'lo' | 'hi' | 'text' | 'basis'>): string {
@@ -24,7 +24,7 @@ export function citeClaim(row: ClaimDetailRow): { plain: string; bibtex: string 
   const date = row.signed_at.toISOString().slice(0, 10)
   const what = assertionText(row)
   return {
-    plain: `${row.author_name}, ${number}: ${what}. Register of certified constants Merestone, ${row.group_name}, signed ${date}, certificate ${row.certificate_digest.slice(0, 16)}. ${address}`,
+    plain: `${row.author_name}, ${number}: ${closed(what)} Register of certified constants Merestone, ${row.group_name}, signed ${date}, certificate ${row.certificate_digest.slice(0, 16)}. ${address}`,
     bibtex: [
       `@misc{${slug},`,
       `  author       = {{${bibtexText(row.author_name)}}},`,

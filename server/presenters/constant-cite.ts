@@ -16,6 +16,9 @@ function valueText(row: ConstantRow): string {
   return text === null || interval.length <= 60 ? `in ${interval}` : best.lo === best.hi ? text : `${text}…`
 }
 
+/** A sentence with its full stop, which digits that go on do not take. */
+export const closed = (sentence: string): string => (sentence.endsWith('…') ? sentence : `${sentence}.`)
+
 export const bibtexText = (text: string): string => text.replace(/[\\{}]/g, '').replace(/[&%$#_]/g, (mark) => `\\${mark}`).replaceAll('^', '\\^{}').replaceAll('…', '\\ldots{}').replaceAll('>=', '$\\ge$').replaceAll('<=', '$\\le$').replaceAll('!=', '$\\ne$')
 
 /** How to cite a constant as it stands. The year is that of its last change, so that the entry does not move by itself. */
@@ -23,7 +26,7 @@ export function citeConstant(row: ConstantRow): { plain: string; bibtex: string 
   const number = constantNumberText(row.number)
   const date = row.changed_at.toISOString().slice(0, 10)
   return {
-    plain: `${number}: ${row.text}; ${valueText(row)}. Register of certified constants Merestone, ${row.group_name}, state of ${date}. ${constantAddress(row.number)}`,
+    plain: `${number}: ${row.text}; ${closed(valueText(row))} Register of certified constants Merestone, ${row.group_name}, state of ${date}. ${constantAddress(row.number)}`,
     bibtex: [
       `@misc{${number},`,
       `  title        = {${number}: ${bibtexText(row.text)}},`,
