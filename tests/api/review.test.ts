@@ -205,7 +205,7 @@ describe('what there is to check', () => {
     const { body } = await author.post('/api/v1/claims').send({ kind: 'enclosure', runId: run.id }).expect(201)
     expect(body.checklist).toEqual([
       { item: `Estimate ${known.id}: ${known.title}`, detail: expect.stringContaining('Used at x >= 1000.') },
-      { item: 'Bound R-1', detail: expect.stringContaining('1.0e-20') },
+      { item: 'Bound R-1', detail: expect.stringContaining('1.0 · 10^-20') },
     ])
     expect(body.checklist[0].detail).toContain(known.statement)
   })
