@@ -16,6 +16,8 @@ export default defineConfig({
   worker: { format: 'es' },
   test: {
     root,
+    // As many files at a time as the smallest machine that runs the tests has cores; the tool's own default leaves one of two idle.
+    maxWorkers: 2,
     reporters: ['default', './tests/support/summary-reporter.ts'],
     projects: [
       { extends: true, test: { name: 'engine', root, include: ['tests/{engine,published,reference}/**/*.test.ts'], environment: 'node', testTimeout: 60_000 } },

@@ -24,11 +24,11 @@ export interface Crossing {
 function waysOf(definition: Definition): Way[] {
   const ways: Way[] = []
   for (const method of Object.values(METHODS)) {
-    const goals: Goal[] = method.name === 'partial-sum' ? [{ cutoff: '20000' }, { cutoff: '1000000' }] : [{ digits: 12 }, { digits: 25 }]
+    const goals: Goal[] = method.name === 'partial-sum' ? [{ cutoff: '20000' }, { cutoff: '200000' }] : [{ digits: 12 }, { digits: 25 }]
     for (const arithmetic of ['ball', 'mpfr'] as const) {
       for (const goal of arithmetic === 'ball' ? goals : goals.slice(0, 1)) {
         const forecast = method.forecast(definition, goal, arithmetic, 1)
-        if (forecast.possible && forecast.seconds < 10) ways.push({ method: method.name, arithmetic, goal })
+        if (forecast.possible && forecast.seconds < 5) ways.push({ method: method.name, arithmetic, goal })
       }
     }
   }
