@@ -55,13 +55,15 @@ function wayText({ method, arithmetic, goal }: Way): string {
   return `${method}, ${arithmetic}, ${'digits' in goal ? `${goal.digits} digits` : `up to ${goal.cutoff}`}`
 }
 
-/** `npm run crosscheck`: the whole grid; exit code 1 where two enclosures of one constant do not meet. */
-async function main(): Promise<void> {
+/** `npm run crosscheck`: the whole grid, or what holds one of the words given; exit code 1 where two enclosures of one constant do not meet. */
+async function main(words: string[]): Promise<void> {
   let [pairs, broken] = [0, 0]
   for (const definition of await crosscheckGrid()) {
+    const { text } = readDefinition(definition)
+    if (words.length > 0 && !words.some((word) => text.includes(word))) continue
     const { outcomes, disjoint } = await crosscheck(definition)
     const methods = [...new Set(outcomes.map(({ way }) => way.method))].join(', ')
-    console.log(`${disjoint.length === 0 ? 'meet    ' : 'DISJOINT'} ${String(outcomes.length).padStart(2)} enclosures by ${methods}: ${readDefinition(definition).text}`)
+    console.log(`${disjoint.length === 0 ? 'meet    ' : 'DISJOINT'} ${String(outcomes.length).padStart(2)} enclosures by ${methods}: ${text}`)
     for (const [a, b] of disjoint) console.log(`         ${wayText(a)}  |  ${wayText(b)}`)
     pairs += (outcomes.length * (outcomes.length - 1)) / 2
     broken += disjoint.length
@@ -70,4 +72,4 @@ async function main(): Promise<void> {
   process.exitCode = broken === 0 ? 0 : 1
 }
 
-if (process.argv[1]?.replace(/\.[jt]s$/, '').endsWith('cli/crosscheck')) await main()
+if (process.argv[1]?.replace(/\.[jt]s$/, '').endsWith('cli/crosscheck')) await main(process.argv.slice(2))
