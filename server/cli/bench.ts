@@ -122,6 +122,8 @@ async function rows(long: boolean): Promise<Row[]> {
   const one200 = await cpu(() => enclose({ definitions: [almostPrimes(1)], method: 'panels', goal: { digits: 200 } }))
   const request200: ComputationRequest = { definitions: [almostPrimes(1)], method: 'panels', arithmetic: 'ball', goal: { digits: 200 } }
   const [oneThread, twoThreads] = [await threaded(1, request200), await threaded(2, request200)]
+  const request9: ComputationRequest = { definitions: [primeSum], method: 'partial-sum', arithmetic: 'ball', goal: { cutoff: '4000000000' } }
+  const [oneSieve, twoSieve] = [await threaded(1, request9), await threaded(2, request9)]
   const sum9 = await cpu(() => enclose({ definitions: [primeSum], method: 'partial-sum', goal: { cutoff: '1000000000' } }))
   const sum7 = await cpu(() => enclose({ definitions: [primeSum], method: 'partial-sum', goal: { cutoff: '10000000' } }))
   const factors = await cpu(() => allFactorsTo(100_000_000))
@@ -135,6 +137,7 @@ async function rows(long: boolean): Promise<Row[]> {
     { work: 'enclose, k = 1..20, 100 digits (wall)', seconds: whole100, atMost: 6, beside: '' },
     { work: 'one constant, 200 digits', seconds: one200, atMost: 30, beside: '' },
     { work: 'one constant, 200 digits, two threads (wall)', seconds: twoThreads, atMost: Number((oneThread / 1.7).toFixed(2)), beside: shown(oneThread, 'one thread', twoThreads) },
+    { work: 'sum over p <= 4 10^9, two threads (wall)', seconds: twoSieve, atMost: Number((oneSieve / 1.7).toFixed(2)), beside: shown(oneSieve, 'one thread', twoSieve) },
     { work: 'sum over p <= 10^9 with its tail', seconds: sum9, atMost: 3, beside: shown(primesieve(), 'primesieve (counting only)', sum9) },
     { work: 'sum over p <= 10^7 with its tail', seconds: sum7, atMost: 1, beside: shown(gp(PARI_PRIMES), 'PARI/GP forprime without bound', sum7) },
     { work: 'all k at once to 10^8', seconds: factors, atMost: 4, beside: '' },
