@@ -1,5 +1,5 @@
 /**
- * exp and powers in doubles by additions, products and quotients alone, which IEEE 754 fixes to the last bit, while `Math.exp` may differ
+ * exp and powers in doubles by additions, products and quotients alone, which IEEE 754 fixes to the last bit, while the built-in exp may differ
  * from one JavaScript engine to the next. For choices that a repetition must make alike without finding them in the certificate;
  * accurate to a few units of the twelfth digit, and never part of a bound.
  */
