@@ -1,7 +1,8 @@
 import { METHODS, computeAll, prepare } from '../../shared/engine/engine.ts'
 import { parseDecimal } from '../../shared/engine/arithmetic/decimal.ts'
 import { compare } from '../../shared/engine/arithmetic/rational.ts'
-import type { ArithmeticName, Goal, Method, Outcome } from '../../shared/engine/methods/computation.ts'
+import type { ArithmeticName, Method, Outcome } from '../../shared/engine/methods/computation.ts'
+import { type Goal, goalText } from '../../shared/engine/methods/goal.ts'
 import type { Definition } from '../../shared/engine/sets/definition.ts'
 import { readDefinition } from '../../shared/engine/sets/typeset.ts'
 import { crosscheckGrid } from './crosscheck-grid.ts'
@@ -52,7 +53,7 @@ export async function crosscheck(definition: Definition): Promise<Crossing> {
 }
 
 function wayText({ method, arithmetic, goal }: Way): string {
-  return `${method}, ${arithmetic}, ${'digits' in goal ? `${goal.digits} digits` : `up to ${goal.cutoff}`}`
+  return `${method}, ${arithmetic}, ${goalText(goal)}`
 }
 
 /** `npm run crosscheck`: the whole grid, or what holds one of the words given; exit code 1 where two enclosures of one constant do not meet. */

@@ -1,8 +1,10 @@
 import { readFileSync } from 'node:fs'
+import { ONE, parseRational } from '../../shared/engine/arithmetic/rational.ts'
 import { makeCertificate } from '../../shared/engine/certificate/certificate.ts'
 import { computeAll, prepare, quickestMethod } from '../../shared/engine/engine.ts'
 import { EngineRefusal } from '../../shared/engine/errors.ts'
 import type { Outcome } from '../../shared/engine/methods/computation.ts'
+import { type Goal, serves } from '../../shared/engine/methods/goal.ts'
 import { loadExpressionParser } from '../../shared/engine/sets/rational-function.ts'
 import { readDefinition } from '../../shared/engine/sets/typeset.ts'
 import { readEngineRelease } from '../engine-release.ts'
@@ -18,7 +20,7 @@ async function main(args: string[]): Promise<void> {
   }
   const outcomes = await enclose(order)
   if (!order.json) {
-    for (const outcome of outcomes) console.log(personLine(outcome))
+    for (const outcome of outcomes) console.log(personLine(outcome, order.goal))
     return
   }
   const release = readEngineRelease()
@@ -46,12 +48,13 @@ function showProgress(): ((share: number) => void) | undefined {
   return (share) => process.stderr.write(share < 1 ? `\r${Math.floor(share * 100)} %` : '\r      \r')
 }
 
-function personLine(outcome: Outcome): string {
+function personLine(outcome: Outcome, goal: Goal): string {
   const { text } = readDefinition(outcome.definition)
   const { lo, hi } = outcome.enclosure
   const places = outcome.digits.truncated
   const shown = places > 0 ? `${lo.slice(0, lo.indexOf('.') + 1 + places)}…` : 'no digit certified'
-  return `${text}\n  ${shown}  (${Math.max(0, places)} decimals certified)\n  in [${lo}, ${hi}]`
+  const short = serves(goal, parseRational(outcome.radius) ?? ONE) ? '' : `\n  wider than asked for: the radius is ${outcome.radius}`
+  return `${text}\n  ${shown}  (${Math.max(0, places)} decimals certified)\n  in [${lo}, ${hi}]${short}`
 }
 
 function jsonAnswer(outcome: Outcome, certificate: object): object {

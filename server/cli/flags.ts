@@ -1,7 +1,8 @@
 import { parseArgs } from 'node:util'
 import { isPrime, primeDivisors } from '../../shared/engine/arithmetic/primes.ts'
 import { EngineRefusal } from '../../shared/engine/errors.ts'
-import { ARITHMETIC_NAMES, type ArithmeticName, type Goal, METHOD_NAMES, type Method } from '../../shared/engine/methods/computation.ts'
+import { ARITHMETIC_NAMES, type ArithmeticName, METHOD_NAMES, type Method } from '../../shared/engine/methods/computation.ts'
+import { type Goal, readWidth } from '../../shared/engine/methods/goal.ts'
 import { type DefinitionText, canonicalDefinition } from '../../shared/engine/sets/canonical.ts'
 import type { Definition, SetOfIntegers } from '../../shared/engine/sets/definition.ts'
 import { LIMITS } from '../../shared/limits.ts'
@@ -23,7 +24,7 @@ export const USAGE = `enclose: an enclosure of a sum over integers or primes, wi
   --k 3 or 1..12     --exclude 2,3     --coprime-to q     --y 7     --mod q --residue a     --file list.csv
   --power 1          --log-power 1     the weight n^-power (log n)^-log-power; fractions such as 1/2 are exact
   --constant twin-prime|artin|mertens      --over-primes '1/(p*(p-1))' --combine sum|product
-  --digits 30 or --cutoff 1000000000       --method ${METHOD_NAMES.join('|')}
+  --digits 30, --width 1e-30 or --cutoff 1000000000      --method ${METHOD_NAMES.join('|')}
   --arithmetic ball|mpfr
   --json             one JSON object (an array for a range of k), certificate included`
 
@@ -42,6 +43,7 @@ const OPTIONS = {
   'over-primes': { type: 'string' },
   combine: { type: 'string' },
   digits: { type: 'string' },
+  width: { type: 'string' },
   cutoff: { type: 'string' },
   method: { type: 'string' },
   arithmetic: { type: 'string' },
@@ -148,7 +150,12 @@ function refuseFlags(flags: Flags, names: readonly (keyof Flags)[], beside: stri
 }
 
 function readGoal(flags: Flags): Goal {
-  if (flags.digits !== undefined && flags.cutoff !== undefined) throw new EngineRefusal('bad_flag', 'digits', 'Give --digits or --cutoff, not both.')
+  const given = [flags.digits, flags.width, flags.cutoff].filter((flag) => flag !== undefined)
+  if (given.length > 1) throw new EngineRefusal('bad_flag', 'digits', 'Give one of --digits, --width and --cutoff.')
+  if (flags.width !== undefined) {
+    readWidth(flags.width)
+    return { width: flags.width }
+  }
   if (flags.cutoff !== undefined) {
     const cutoff = integer(flags.cutoff, 'cutoff')
     if (cutoff < 2 || cutoff > LIMITS.cutoff) throw new EngineRefusal('out_of_range', 'cutoff', `The cut-off must be from 2 to ${LIMITS.cutoff}.`)

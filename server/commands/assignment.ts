@@ -1,10 +1,10 @@
 import type { Transaction } from 'sequelize'
 import type { z } from 'zod'
 import { hasRight } from '../../shared/permissions.ts'
+import type { Goal } from '../../shared/engine/methods/goal.ts'
 import type { act } from '../../shared/schemas/claim.ts'
 import { inTransaction } from '../db.ts'
 import { conflict, invalidField, notFound } from '../errors.ts'
-import type { Goal } from '../../shared/engine/methods/computation.ts'
 import { queueMail } from '../mail/outbox.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 import { Assignment } from '../models/assignment.ts'
@@ -65,7 +65,7 @@ export async function declineReview(member: SignedInMember, claimId: string, { r
 export async function recheckClaim(member: SignedInMember, claimId: string, { method, arithmetic, digits, cutoff }: Input<'recheck'>): Promise<void> {
   await actOnClaim(member, claimId, 'recheck', {}, async ({ transaction, claim }) => {
     const own = claim.runId === null ? null : await Run.findByPk(claim.runId, { transaction })
-    const sameGoal = own && (method !== 'partial-sum') === 'digits' in own.goal ? own.goal : undefined
+    const sameGoal = own && (method === 'partial-sum') === 'cutoff' in own.goal ? own.goal : undefined
     const goal: Goal = cutoff !== undefined ? { cutoff } : digits !== undefined ? { digits } : (sameGoal ?? { digits: Math.max(1, claim.digitsTruncated ?? 1) })
     const run = await startRecheck(transaction, claim, member, { method, arithmetic, goal })
     return { detail: { run: run.id, method, arithmetic } }

@@ -1,6 +1,7 @@
 import { parseRational, compare, type Rational } from '../../shared/engine/arithmetic/rational.ts'
 import { METHODS } from '../../shared/engine/engine.ts'
-import type { ArithmeticName, Goal, Method } from '../../shared/engine/methods/computation.ts'
+import type { ArithmeticName, Method } from '../../shared/engine/methods/computation.ts'
+import { type Goal, serves } from '../../shared/engine/methods/goal.ts'
 import type { Definition } from '../../shared/engine/sets/definition.ts'
 import type { Plan } from '../../shared/schemas/run.ts'
 import { env } from '../env.ts'
@@ -11,12 +12,14 @@ type ForecastView = Plan['forecasts'][number]
 
 const ARITHMETICS: readonly ArithmeticName[] = ['ball', 'mpfr']
 
-/** Whether a radius is as small as the goal asks; a goal by cut-off asks for none. */
-function reaches(goal: Goal, radius: string): boolean {
-  if (!('digits' in goal)) return true
-  const [value, asked] = [parseRational(radius), parseRational(`1e-${goal.digits}`)]
-  return value !== null && asked !== null && compare(value, asked) <= 0
+/** Whether an interval of this radius serves the goal. */
+function reaches(goal: Goal, radius: string | null): boolean {
+  const value = radius === null ? null : parseRational(radius)
+  return value !== null && serves(goal, value)
 }
+
+/** The field of the request that holds the goal. */
+const goalField = (goal: Goal): string => `goal.${Object.keys(goal)[0]}`
 
 /** What every method, with either arithmetic, says of a definition and a goal; the quickest that reaches the goal is recommended. */
 export async function forecasts(definition: Definition, goal: Goal): Promise<ForecastView[]> {
@@ -29,7 +32,7 @@ export async function forecasts(definition: Definition, goal: Goal): Promise<For
         : { method: method.name, arithmetic, possible: false, reason: forecast.reason, radius: null, seconds: null, recommended: false }
     }),
   )
-  const able = views.filter((view) => view.possible && reaches(goal, view.radius ?? ''))
+  const able = views.filter((view) => view.possible && reaches(goal, view.radius))
   const quickest = able.reduce<ForecastView | null>((best, view) => (best === null || (view.seconds ?? 0) < (best.seconds ?? 0) ? view : best), null)
   if (quickest) quickest.recommended = true
   return views
@@ -43,11 +46,11 @@ export async function chooseForecast(
   arithmetic: ArithmeticName,
 ): Promise<{ method: Method; arithmetic: ArithmeticName; forecastSeconds: number | null }> {
   const views = (await forecasts(definition, goal)).filter((view) => view.arithmetic === arithmetic && (method === 'auto' || view.method === method))
-  const able = views.filter((view) => view.possible && (method !== 'auto' || reaches(goal, view.radius ?? '')))
+  const able = views.filter((view) => view.possible && (method !== 'auto' || reaches(goal, view.radius)))
   const chosen = able.reduce<ForecastView | null>((best, view) => (best === null || (view.seconds ?? 0) < (best.seconds ?? 0) ? view : best), null)
   if (!chosen) throw refusal(goal, method, views)
   if ((chosen.seconds ?? 0) > env.RUN_CPU_LIMIT_SECONDS) {
-    throw invalidField('digits' in goal ? 'goal.digits' : 'goal.cutoff', `would take about ${Math.ceil((chosen.seconds ?? 0) / 3600)} hours of CPU time, more than a run may use: ask for less`)
+    throw invalidField(goalField(goal), `would take about ${Math.ceil((chosen.seconds ?? 0) / 3600)} hours of CPU time, more than a run may use: ask for less`)
   }
   return { method: chosen.method, arithmetic, forecastSeconds: chosen.seconds }
 }
@@ -56,7 +59,7 @@ function refusal(goal: Goal, method: Method | 'auto', views: ForecastView[]) {
   const reasons = [...new Set(views.map((view) => view.reason).filter((reason) => reason !== null))]
   if (method !== 'auto') return invalidField('method', reasons[0] ?? 'this method does not exist')
   const closest = views.filter((view) => view.possible).map((view) => view.radius ?? '')
-  if (closest.length > 0) return invalidField('digits' in goal ? 'goal.digits' : 'goal.cutoff', `no method reaches so many digits here; the best radius is ${smallest(closest)}`)
+  if (closest.length > 0) return invalidField(goalField(goal), `no method gets so close here; the best radius is ${smallest(closest)}`)
   return invalidField('method', reasons.join(' ') || 'no method can do this')
 }
 

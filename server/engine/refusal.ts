@@ -15,6 +15,7 @@ const PATHS: Record<string, string> = {
   combine: 'definition.combine',
   name: 'definition.name',
   digits: 'goal.digits',
+  width: 'goal.width',
   cutoff: 'goal.cutoff',
   method: 'method',
   arithmetic: 'arithmetic',

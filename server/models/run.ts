@@ -1,5 +1,6 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from 'sequelize'
-import type { ArithmeticName, Goal, Method, Outcome } from '../../shared/engine/methods/computation.ts'
+import type { ArithmeticName, Method, Outcome } from '../../shared/engine/methods/computation.ts'
+import type { Goal } from '../../shared/engine/methods/goal.ts'
 import type { Run as RunView } from '../../shared/schemas/run.ts'
 import { sequelize } from '../db.ts'
 

@@ -1,6 +1,7 @@
 import { z } from 'zod'
 import type { Certificate } from '../engine/certificate/certificate.ts'
 import { ARITHMETIC_NAMES, ERROR_SOURCES, METHOD_NAMES } from '../engine/methods/computation.ts'
+import { WIDTH_HINT, parseWidth } from '../engine/methods/goal.ts'
 import { LIMITS } from '../limits.ts'
 
 /** The certificate's file format, version 1. Unknown members are refused: what is not understood is not certified. */
@@ -40,6 +41,7 @@ export const certificateSchema = z.strictObject({
   arithmetic: z.enum(ARITHMETIC_NAMES),
   goal: z.union([
     z.strictObject({ digits: z.number().int().min(1).max(LIMITS.digits) }),
+    z.strictObject({ width: z.string().refine((text) => parseWidth(text) !== null, `a width is ${WIDTH_HINT}`) }),
     z.strictObject({ cutoff: z.string().regex(/^[1-9]\d{0,17}$/) }),
   ]),
   parameters: z.record(z.string().max(60), z.union([z.string().max(4000), z.number()])),

@@ -15,6 +15,10 @@ describe('reading the form of a new run', () => {
       goal: { cutoff: '1000000' },
     })
   })
+  test('a width goes as it is typed, and what is none is told at its field', () => {
+    expect(readRunForm({ ...BLANK_RUN, goal: 'width', width: ' 2.5e−30 ' }).input?.goal).toEqual({ width: '2.5e-30' })
+    expect(readRunForm({ ...BLANK_RUN, goal: 'width', width: '30 digits' }).errors).toEqual({ width: 'write a decimal below 1 and not below 1e-1000, such as 1e-30' })
+  })
   test('a finite list takes commas and line breaks', () => {
     expect(readRunForm({ ...BLANK_RUN, set: 'finite', members: '6, 10\n15' }).input?.definition).toMatchObject({ set: { kind: 'finite', members: ['6', '10', '15'] } })
   })

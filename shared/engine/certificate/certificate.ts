@@ -1,4 +1,5 @@
-import type { ArithmeticName, BudgetItem, Enclosure, EstimateUse, Goal, Json, Method, Outcome, Parameters } from '../methods/computation.ts'
+import type { ArithmeticName, BudgetItem, Enclosure, EstimateUse, Json, Method, Outcome, Parameters } from '../methods/computation.ts'
+import type { Goal } from '../methods/goal.ts'
 import type { Definition } from '../sets/definition.ts'
 import { canonicalJson, sha256Hex } from './canonical-json.ts'
 

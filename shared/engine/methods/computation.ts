@@ -1,4 +1,5 @@
 import type { Definition } from '../sets/definition.ts'
+import type { Goal } from './goal.ts'
 
 /**
  * `transform`: Mellin transform by the trapezoid; `panels`: the same integral by power series and Gauss-Legendre panels;
@@ -8,9 +9,6 @@ export const METHOD_NAMES = ['transform', 'panels', 'partial-sum', 'finite', 'ex
 export type Method = (typeof METHOD_NAMES)[number]
 export const ARITHMETIC_NAMES = ['ball', 'mpfr'] as const
 export type ArithmeticName = (typeof ARITHMETIC_NAMES)[number]
-
-/** What is asked for: certified digits after the point, or (partial sum) the cut-off up to which terms are added. */
-export type Goal = { digits: number } | { cutoff: string }
 
 export interface ComputationRequest {
   /** One definition, or several that share one sweep (a table over k). */

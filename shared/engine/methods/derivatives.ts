@@ -9,7 +9,8 @@ import { PrimeZeta } from '../series/prime-zeta.ts'
 import { ZetaPoint } from '../series/zeta.ts'
 import { type ZetaContext, createZetaContext } from '../series/zeta-context.ts'
 import type { Definition } from '../sets/definition.ts'
-import type { Computation, ComputationRequest, Goal, Outcome, Parameters, ShardResult } from './computation.ts'
+import type { Computation, ComputationRequest, Outcome, Parameters, ShardResult } from './computation.ts'
+import { type Goal, decimalsAsked, radiusAimedAt } from './goal.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { type ExactBudgetItem, describeEnclosure, halfWidth } from './outcome.ts'
 
@@ -53,11 +54,10 @@ function taskOf(definition: Definition): Task {
 }
 
 function choose(task: Task, goal: Goal): Choice {
-  if (!('digits' in goal)) throw new EngineRefusal('method_does_not_fit', 'cutoff', 'Derivatives have no cut-off: ask for a number of digits.')
-  if (goal.digits > MOST_DIGITS) throw new EngineRefusal('too_many_digits', 'digits', `Derivatives go up to ${MOST_DIGITS} digits.`)
+  const digits = decimalsAsked(goal, 'The derivative of the series', MOST_DIGITS)
   if (task.order > 60) throw new EngineRefusal('too_large', 'logPower', 'log n may stand above to a power of at most 60.')
   const room = Math.max(0, -Math.log2(Number(task.radius.num) / Number(task.radius.den))) // heuristic: affects speed only
-  const bits = (goal.digits + SPARE_DIGITS) * 3.3219281 // heuristic: affects speed only
+  const bits = (digits + SPARE_DIGITS) * 3.3219281 // heuristic: affects speed only
   const lost = task.order * (room + 6) + room + task.order * Math.log2(task.order + 1) // heuristic: affects speed only
   const half = task.order === 0 ? 0 : Math.ceil((bits + lost + room) / 8) + task.order // heuristic: affects speed only
   const precision = Math.ceil(bits + lost + task.order * Math.log2(half + 1) + 40) // heuristic: affects speed only
@@ -176,7 +176,7 @@ export const derivatives: MethodModule = {
       const words = choice.precision / 64
       // heuristic: affects choice only
       const seconds = 0.01 + (2 * choice.half + 1) * (200 + 80 * words * words) * 1e-6 * (arithmetic === 'mpfr' ? 5 : 1)
-      return { possible: true, radius: `1.0e-${'digits' in goal ? goal.digits + 1 : 1}`, seconds: seconds / speed }
+      return { possible: true, radius: radiusAimedAt(goal), seconds: seconds / speed }
     } catch (refusal) {
       if (refusal instanceof EngineRefusal) return { possible: false, reason: refusal.message }
       throw refusal

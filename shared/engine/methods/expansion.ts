@@ -1,3 +1,4 @@
+import { LIMITS } from '../../limits.ts'
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
 import { primesUpTo } from '../arithmetic/primes.ts'
@@ -11,6 +12,7 @@ import { createZetaContext } from '../series/zeta-context.ts'
 import type { Definition } from '../sets/definition.ts'
 import type { Computation, ComputationRequest, Outcome } from './computation.ts'
 import { type ExpansionParameters, chooseExpansionParameters, readExpansionParameters } from './expansion-parameters.ts'
+import { decimalsAsked, radiusAimedAt } from './goal.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { describeEnclosure, halfWidth } from './outcome.ts'
 
@@ -141,8 +143,7 @@ function magnitudeOf(lo: Rational, hi: Rational): Rational {
 
 function parametersFor(task: Task, request: Pick<ComputationRequest, 'goal' | 'parameters'>): ExpansionParameters {
   if (request.parameters) return readExpansionParameters(request.parameters, task.expansion)
-  if (!('digits' in request.goal)) throw new EngineRefusal('method_does_not_fit', 'cutoff', 'The expansion has no cut-off: ask for a number of digits.')
-  return chooseExpansionParameters(request.goal.digits, task.expansion)
+  return chooseExpansionParameters(decimalsAsked(request.goal, 'The expansion', LIMITS.digits), task.expansion)
 }
 
 /** Sums and products over the primes through the expansion of their terms in prime zeta values. */
@@ -157,7 +158,7 @@ export const expansion: MethodModule = {
       const words = p.precision / 64
       // heuristic: affects choice only
       const seconds = (0.01 + p.powers * p.terms * (0.15 + 0.03 * words * words) * 1e-6 + p.split * 2e-6) * (arithmetic === 'mpfr' ? 4 : 1)
-      return { possible: true, radius: `1.0e-${'digits' in goal ? goal.digits + 1 : 1}`, seconds: seconds / speed }
+      return { possible: true, radius: radiusAimedAt(goal), seconds: seconds / speed }
     } catch (refusal) {
       if (refusal instanceof EngineRefusal) return { possible: false, reason: refusal.message }
       throw refusal

@@ -5,7 +5,8 @@ import { ZERO, dyadic, parseRational, rational } from '../arithmetic/rational.ts
 import { EngineRefusal } from '../errors.ts'
 import type { Definition } from '../sets/definition.ts'
 import { type RationalWeight, weightAt } from '../sieve/weight.ts'
-import type { Computation, ComputationRequest, Goal, Outcome, Parameters, ShardResult } from './computation.ts'
+import type { Computation, ComputationRequest, Outcome, Parameters, ShardResult } from './computation.ts'
+import { type Goal, decimalsAsked, radiusAimedAt } from './goal.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { decimalEnclosure, describeEnclosure, halfWidth } from './outcome.ts'
 
@@ -34,11 +35,10 @@ function taskOf(definition: Definition): FiniteTask {
  * where (log 2)^-1 < 2^0.55 and the quotient loses this twice. heuristic: affects width only
  */
 function precisionFor(goal: Goal, task: FiniteTask): number {
-  if (!('digits' in goal)) return misfit('A finite list has no cut-off: ask for a number of digits.')
-  if (goal.digits > LIMITS.digits) throw new EngineRefusal('too_many_digits', 'digits', `At most ${LIMITS.digits} digits can be asked for.`)
+  const digits = decimalsAsked(goal, 'A finite sum', LIMITS.digits)
   const { num, den } = task.weight.logPower
   const growth = Number(num < 0n ? (-num * 7n) / den : (num * 11n) / (den * 10n)) + 1
-  return Math.ceil((goal.digits + 3) * 3.322) + task.members.length.toString(2).length + growth + 24 // heuristic: affects speed only, and width
+  return Math.ceil((digits + 3) * 3.322) + task.members.length.toString(2).length + growth + 24 // heuristic: affects speed only, and width
 }
 
 function readPrecision({ precision }: Parameters): number {
@@ -127,8 +127,7 @@ export const finite: MethodModule = {
       const task = taskOf(definition)
       const words = precisionFor(goal, task) / 64
       const perTerm = (3 + 0.6 * words * words) * 1e-6 * (arithmetic === 'mpfr' ? 4 : 1)
-      const digits = 'digits' in goal ? goal.digits : 0
-      return { possible: true, radius: `1.0e-${digits + 2}`, seconds: (0.05 + task.members.length * perTerm) / speed }
+      return { possible: true, radius: radiusAimedAt(goal), seconds: (0.05 + task.members.length * perTerm) / speed }
     } catch (refusal) {
       if (refusal instanceof EngineRefusal) return { possible: false, reason: refusal.message }
       throw refusal

@@ -1,5 +1,6 @@
-import type { Computation, ComputationRequest, Goal, Method } from './computation.ts'
 import type { Definition } from '../sets/definition.ts'
+import type { Computation, ComputationRequest, Method } from './computation.ts'
+import type { Goal } from './goal.ts'
 
 /** What a method says of a definition and a goal before anything is computed. */
 export type Forecast =

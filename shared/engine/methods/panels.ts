@@ -2,7 +2,8 @@ import { ONE, type Rational, compare } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
 import type { DirichletSeries } from '../series/dirichlet.ts'
 import { type EdgeSeries, edgeSeries } from '../series/edge.ts'
-import type { ComputationRequest, Goal } from './computation.ts'
+import type { ComputationRequest } from './computation.ts'
+import { type Goal, decimalsAsked, radiusAimedAt } from './goal.ts'
 import { type MellinTask, mellinTask } from './mellin-task.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { PanelsComputation } from './panels-computation.ts'
@@ -42,14 +43,11 @@ function smoothEdge(series: DirichletSeries): EdgeSeries {
 }
 
 function parametersFor(task: Task, goal: Goal): PanelsParameters {
-  if (!('digits' in goal)) throw new EngineRefusal('method_does_not_fit', 'cutoff', 'Panels have no cut-off: ask for a number of digits.')
-  if (goal.digits > MOST_DIGITS) {
-    throw new EngineRefusal('too_many_digits', 'digits', `Panels go up to ${MOST_DIGITS} digits.`)
-  }
+  const digits = decimalsAsked(goal, 'The transform by panels', MOST_DIGITS)
   const [power, logPower] = [approx(task.power), approx(task.logPower)]
   const exponents = task.list.map(({ edge }) => logPower - edge.pole)
   return planPanels({
-    digits: goal.digits,
+    digits,
     excess: power - 1,
     logPower,
     complexity: task.complexity,
@@ -88,8 +86,7 @@ export const panels: MethodModule = {
     try {
       const task = taskOf([definition])
       const parameters = parametersFor(task, goal)
-      const digits = 'digits' in goal ? goal.digits : 0
-      return { possible: true, radius: `1.0e-${digits + 1}`, seconds: predictSeconds(parameters, task, arithmetic) / speed }
+      return { possible: true, radius: radiusAimedAt(goal), seconds: predictSeconds(parameters, task, arithmetic) / speed }
     } catch (refusal) {
       if (refusal instanceof EngineRefusal) return { possible: false, reason: refusal.message }
       throw refusal

@@ -4,7 +4,8 @@ import { EngineRefusal } from '../errors.ts'
 import type { Estimate } from '../estimates/estimate.ts'
 import { ESTIMATES, estimateById } from '../estimates/library.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
-import type { Goal, Parameters } from './computation.ts'
+import type { Parameters } from './computation.ts'
+import { type Goal, widthAsked } from './goal.ts'
 
 /** All that fixes a partial sum. */
 export interface PartialSumParameters {
@@ -57,15 +58,16 @@ export function choosePartialSumParameters(
   radiusAt: (cutoff: number) => number,
   most: number = LIMITS.cutoff,
 ): PartialSumParameters | null {
-  const cutoff = 'cutoff' in goal ? readCutoff(goal.cutoff, most) : cutoffFor(goal.digits, radiusAt, most)
+  const width = widthAsked(goal)
+  const cutoff = 'cutoff' in goal ? readCutoff(goal.cutoff, most) : cutoffFor(width ? approximate(width) : 1, radiusAt, most)
   return cutoff === null ? null : { cutoff, precision: PRECISION, estimates: unconditional() }
 }
 
-/** The least of 1, 2, 5 times a power of ten at which the radius is well below 10^-digits. heuristic: affects speed only */
-function cutoffFor(digits: number, radiusAt: (cutoff: number) => number, most: number): number | null {
+/** The least of 1, 2, 5 times a power of ten at which the interval is narrower than asked for. heuristic: affects speed only */
+function cutoffFor(width: number, radiusAt: (cutoff: number) => number, most: number): number | null {
   for (let power = 10_000; power <= most; power *= 10) {
     for (const factor of [1, 2, 5]) {
-      if (power * factor <= most && radiusAt(power * factor) < 0.45 * 10 ** -digits) return power * factor
+      if (power * factor <= most && radiusAt(power * factor) < 0.45 * width) return power * factor
     }
   }
   return null

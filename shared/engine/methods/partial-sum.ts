@@ -4,7 +4,8 @@ import { EngineRefusal } from '../errors.ts'
 import { estimatesUsed } from '../estimates/envelope.ts'
 import type { SeriesDefinition, SetOfIntegers } from '../sets/definition.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
-import type { Computation, ComputationRequest, Goal } from './computation.ts'
+import type { Computation, ComputationRequest } from './computation.ts'
+import type { Goal } from './goal.ts'
 import { mellinTask } from './mellin-task.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { type PartialSumParameters, choosePartialSumParameters, readPartialSumParameters } from './partial-sum-parameters.ts'
@@ -17,7 +18,7 @@ import { cutIntoRanges } from './partial-sum-ranges.ts'
 function parametersFor(plan: Plan, goal: Goal): PartialSumParameters {
   const chosen = choosePartialSumParameters(goal, (cutoff) => plan.radiusAt(cutoff), plan.most)
   if (chosen) return chosen
-  throw new EngineRefusal('too_many_digits', 'digits', 'A partial sum cannot reach so many digits: ask for fewer, or choose the transform.')
+  throw new EngineRefusal('too_many_digits', 'width' in goal ? 'width' : 'digits', 'A partial sum cannot come so close: ask for less, or choose the transform.')
 }
 
 /** Only the estimates that the tail will use. */

@@ -1,5 +1,5 @@
 import { EngineRefusal } from '../errors.ts'
-import type { Goal } from './computation.ts'
+import { type Goal, decimalsAsked, radiusAimedAt } from './goal.ts'
 import { type MellinTask, mellinTask } from './mellin-task.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { TrapezoidComputation } from './trapezoid-computation.ts'
@@ -10,11 +10,7 @@ import { type TrapezoidParameters, chooseParameters, readParameters } from './tr
 const MOST_DIGITS = 300
 
 function parametersFor(task: MellinTask, goal: Goal): TrapezoidParameters {
-  if (!('digits' in goal)) throw new EngineRefusal('method_does_not_fit', 'cutoff', 'The transform has no cut-off: ask for a number of digits.')
-  if (goal.digits > MOST_DIGITS) {
-    throw new EngineRefusal('too_many_digits', 'digits', `The trapezoid goes up to ${MOST_DIGITS} digits: use panels, or ask for fewer.`)
-  }
-  return chooseParameters(goal.digits, task.series, task.power, task.logPower, task.complexity, task.distinct)
+  return chooseParameters(decimalsAsked(goal, 'The trapezoid', MOST_DIGITS), task.series, task.power, task.logPower, task.complexity, task.distinct)
 }
 
 /** The Mellin transform by the trapezoid rule. */
@@ -25,8 +21,7 @@ export const trapezoid: MethodModule = {
     try {
       const task = mellinTask([definition])
       const parameters = parametersFor(task, goal)
-      const digits = 'digits' in goal ? goal.digits : 0
-      return { possible: true, radius: `1.0e-${digits + 1}`, seconds: predictSeconds(definition, parameters, arithmetic) / speed }
+      return { possible: true, radius: radiusAimedAt(goal), seconds: predictSeconds(definition, parameters, arithmetic) / speed }
     } catch (refusal) {
       if (refusal instanceof EngineRefusal) return { possible: false, reason: refusal.message }
       throw refusal

@@ -75,6 +75,7 @@ describe('what makes no sense is refused at its field, before anything is writte
     ['no digit', { goal: { digits: 0 } }, 'goal.digits'],
     ['half a digit', { goal: { digits: 1.5 } }, 'goal.digits'],
     ['no goal', { goal: {} }, 'goal'],
+    ['a width that is none', { goal: { width: '0' } }, 'goal.width'],
     ['a cut-off that is no number', { goal: { cutoff: 'far' } }, 'goal.cutoff'],
     ['an exclusion that is no prime', { definition: series({ kind: 'primes', exclude: [6] }) }, 'definition.set.exclude'],
     ['a sum that diverges', { definition: series({ kind: 'primes' }, { logPower: '0' }) }, 'definition.weight.logPower'],

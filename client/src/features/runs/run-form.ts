@@ -17,8 +17,9 @@ export interface RunFormValues {
   expression: string
   combine: 'sum' | 'product'
   name: 'mertens' | 'twin-prime' | 'artin'
-  goal: 'digits' | 'cutoff'
+  goal: 'digits' | 'width' | 'cutoff'
   digits: string
+  width: string
   cutoff: string
 }
 
@@ -26,7 +27,7 @@ export type RunField = keyof RunFormValues
 
 export const BLANK_RUN: RunFormValues = {
   type: 'series', set: 'almost-primes', k: '3', y: '', modulus: '', residue: '', members: '', exclude: '', power: '1', logPower: '1',
-  expression: '', combine: 'sum', name: 'mertens', goal: 'digits', digits: '30', cutoff: '1000000000',
+  expression: '', combine: 'sum', name: 'mertens', goal: 'digits', digits: '30', width: '1e-30', cutoff: '1000000000',
 }
 
 export const SETS_WITH_K: readonly SetKind[] = ['almost-primes', 'squarefree-almost-primes', 'distinct-prime-factors']
@@ -40,7 +41,7 @@ export type ReadRun = { input: PlanInput; errors: null } | { input: null; errors
 export function readRunForm(values: RunFormValues): ReadRun {
   const typed = {
     definition: definitionOf(values),
-    goal: values.goal === 'digits' ? { digits: wholeNumber(values.digits) } : { cutoff: values.cutoff.replace(/[\s_]/g, '') },
+    goal: goalOf(values),
   }
   const parsed = planInput.safeParse(typed)
   if (parsed.success) return { input: typed as PlanInput, errors: null }
@@ -50,6 +51,11 @@ export function readRunForm(values: RunFormValues): ReadRun {
     if (field) errors[field] ??= plainMessage(field, issue.message)
   }
   return { input: null, errors }
+}
+
+function goalOf(values: RunFormValues): unknown {
+  if (values.goal === 'digits') return { digits: wholeNumber(values.digits) }
+  return values.goal === 'width' ? { width: minus(values.width) } : { cutoff: values.cutoff.replace(/[\s_]/g, '') }
 }
 
 function definitionOf(values: RunFormValues): unknown {
@@ -84,7 +90,7 @@ function minus(text: string): string {
 
 const FIELDS: Record<string, RunField> = {
   k: 'k', y: 'y', modulus: 'modulus', residue: 'residue', members: 'members', exclude: 'exclude', power: 'power', logPower: 'logPower',
-  expression: 'expression', name: 'name', digits: 'digits', cutoff: 'cutoff', set: 'set', kind: 'set', combine: 'combine',
+  expression: 'expression', name: 'name', digits: 'digits', width: 'width', cutoff: 'cutoff', set: 'set', kind: 'set', combine: 'combine',
 }
 
 /** The field of the form that a path of the request ("definition.set.exclude.0") belongs to. */

@@ -1,3 +1,5 @@
+import { parseRational } from '../../../../../shared/engine/arithmetic/rational.ts'
+import { goalText, serves } from '../../../../../shared/engine/methods/goal.ts'
 import type { OutcomeView, Run } from '../../../../../shared/schemas/run.ts'
 import { Convergence } from '../../../components/charts/convergence.tsx'
 import { ErrorBudget, Magnitude } from '../../../components/charts/error-budget.tsx'
@@ -40,13 +42,15 @@ export function RunOutcome({ run, outcome, onDraft }: RunOutcomeProps) {
   )
 }
 
-/** The enclosure that a run ended with. */
-export function OutcomeEnclosure({ outcome }: { outcome: OutcomeView }) {
+/** The enclosure that a run ended with, and whether it is as narrow as was asked. */
+export function OutcomeEnclosure({ outcome, goal }: { outcome: OutcomeView; goal: Run['goal'] }) {
+  const radius = parseRational(outcome.radius)
   return (
     <div className="mt-3">
       <DigitLine lo={outcome.enclosure.lo} hi={outcome.enclosure.hi} size="large" copy />
       <p className="mt-2 text-[0.92rem] text-soft">
         {outcome.digits.truncated} digits after the point certified when truncated, {outcome.digits.rounded} when rounded; radius at most <Magnitude text={outcome.radius} />.
+        {radius && !serves(goal, radius) && ` That is wider than asked for (${goalText(goal)}): run it again for a little more.`}
       </p>
     </div>
   )
