@@ -1,11 +1,13 @@
 import { useState } from 'react'
+import { UNKNOWN_PAGE } from '../../shared/page-head.ts'
+import { STATE_WORDS } from '../../shared/words.ts'
 import { Convergence } from '../src/components/charts/convergence.tsx'
 import { ErrorBudget } from '../src/components/charts/error-budget.tsx'
 import { Narrowing } from '../src/components/charts/narrowing.tsx'
 import { Nest } from '../src/components/charts/nest.tsx'
 import { DigitLine } from '../src/components/digit-line/digit-line.tsx'
 import { Formula } from '../src/components/formula/formula.tsx'
-import { STATE_WORDS, StateMark } from '../src/components/state-mark/state-mark.tsx'
+import { StateMark } from '../src/components/state-mark/state-mark.tsx'
 import type { MarkedState } from '../src/components/state-mark/state-mark.tsx'
 import { Button } from '../src/components/ui/button.tsx'
 import { Actions, Dialog } from '../src/components/ui/dialog.tsx'
@@ -40,7 +42,7 @@ export function ComponentsPage() {
   const [open, setOpen] = useState(false)
   return (
     <Page
-      title="Components"
+      about={{ ...UNKNOWN_PAGE, title: 'Components' }}
       head={
         <>
           <p className="text-soft">

@@ -1,4 +1,5 @@
 import { useState } from 'react'
+import { pageHead } from '../../shared/page-head.ts'
 import { DigitCheckForm } from '../src/features/digit-check/components/digit-check.tsx'
 import type { DigitCheckValue } from '../src/features/digit-check/components/digit-check.tsx'
 import { Page, Section } from '../src/components/ui/page.tsx'
@@ -20,7 +21,7 @@ function Example({ start }: { start: DigitCheckValue }) {
 /** The digit check in every state that it has. */
 export function DigitCheckPage() {
   return (
-    <Page title="Digit check" head={<h1>Digit check</h1>}>
+    <Page about={pageHead('digitCheck')} head={<h1>Digit check</h1>}>
       {EXAMPLES.map((start) => (
         <Section key={start.text} title={start.text}>
           <Example start={start} />

@@ -1,5 +1,5 @@
 import { env } from '../env.ts'
-import { escapeHtml } from './html.ts'
+import { escapeHtml } from '../html.ts'
 
 /** What a template gives: words only. How a mail looks is decided here, once, for all of them. */
 export interface MailContent {

@@ -9,53 +9,46 @@ import { keysQuery } from '../features/keys/queries.ts'
 import { membersQuery } from '../features/members/queries.ts'
 import { outboxListQuery } from '../features/outbox/queries.ts'
 import type { Prefetch } from './prefetch.ts'
-import type { RouteHandle } from './shell.tsx'
-
-const MEMBERS: RouteHandle = { membersOnly: true }
+import { routeOf } from './route-of.ts'
 
 /** Pages about people: joining, one's account, the group. */
 export function peopleRoutes(client: QueryClient, prefetch: Prefetch): RouteObject[] {
   const forGroup = (...more: (() => Promise<unknown>)[]) => prefetch(() => Promise.all([client.prefetchQuery(groupQuery()), ...more.map((start) => start())]))
   return [
     {
-      path: 'invitations/:token',
+      ...routeOf('invitation'),
       loader: prefetch(({ params }) => client.prefetchQuery(invitationOfferQuery(params.token ?? ''))),
       lazy: async () => ({ Component: (await import('../pages/invitation/invitation-page.tsx')).InvitationPage }),
     },
-    { path: 'password-reset', lazy: async () => ({ Component: (await import('../pages/password-reset/ask-reset-page.tsx')).AskResetPage }) },
+    { ...routeOf('forgotPassword'), lazy: async () => ({ Component: (await import('../pages/password-reset/ask-reset-page.tsx')).AskResetPage }) },
     {
-      path: 'password-reset/:token',
+      ...routeOf('passwordReset'),
       loader: prefetch(({ params }) => client.prefetchQuery(passwordResetOfferQuery(params.token ?? ''))),
       lazy: async () => ({ Component: (await import('../pages/password-reset/set-password-page.tsx')).SetPasswordPage }),
     },
     {
-      path: 'account',
-      handle: MEMBERS,
+      ...routeOf('account'),
       loader: prefetch(() => client.prefetchQuery(accountQuery())),
       lazy: async () => ({ Component: (await import('../pages/account/account-page.tsx')).AccountPage }),
     },
     {
-      path: 'group',
-      handle: MEMBERS,
+      ...routeOf('group'),
       loader: forGroup(() => client.prefetchQuery(membersQuery())),
       lazy: async () => ({ Component: (await import('../pages/group/group-page.tsx')).GroupPage }),
     },
-    { path: 'left', lazy: async () => ({ Component: (await import('../pages/group/left-page.tsx')).LeftPage }) },
+    { ...routeOf('groupLeft'), lazy: async () => ({ Component: (await import('../pages/group/left-page.tsx')).LeftPage }) },
     {
-      path: 'group/audit',
-      handle: MEMBERS,
+      ...routeOf('groupAudit'),
       loader: prefetch(({ search }) => client.prefetchQuery(auditListQuery({ ...auditQueryOf(auditFiltersOf(search)), cursor: search.get('cursor') ?? undefined }))),
       lazy: async () => ({ Component: (await import('../pages/group/audit-page.tsx')).AuditPage }),
     },
     {
-      path: 'group/mail',
-      handle: MEMBERS,
+      ...routeOf('groupMail'),
       loader: prefetch(({ search }) => client.prefetchQuery(outboxListQuery({ state: search.get('state') ?? undefined, cursor: search.get('cursor') ?? undefined }))),
       lazy: async () => ({ Component: (await import('../pages/group/mail-page.tsx')).MailPage }),
     },
     {
-      path: 'group/keys',
-      handle: MEMBERS,
+      ...routeOf('groupKeys'),
       loader: forGroup(() => client.prefetchQuery(keysQuery())),
       lazy: async () => ({ Component: (await import('../pages/group/group-keys-page.tsx')).GroupKeysPage }),
     },

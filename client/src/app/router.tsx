@@ -10,12 +10,10 @@ import { runListQueryOf } from '../features/runs/run-filters.ts'
 import { sessionQuery } from '../features/session/queries.ts'
 import { peopleRoutes } from './people-routes.ts'
 import type { Prefetch } from './prefetch.ts'
+import { routeOf } from './route-of.ts'
 import { RouteError } from './route-error.tsx'
 import { readingRoutes } from './reading-routes.ts'
 import { Shell } from './shell.tsx'
-import type { RouteHandle } from './shell.tsx'
-
-const MEMBERS: RouteHandle = { membersOnly: true }
 
 /**
  * All routes. A page's code comes when it is first opened; its data is asked for at the same time and not waited for, since
@@ -30,42 +28,39 @@ export function createRouter(client: QueryClient) {
   const pages: RouteObject[] = [
     { index: true, lazy: async () => ({ Component: (await import('../pages/home/home-page.tsx')).HomePage }) },
     {
-      path: 'register',
+      ...routeOf('register'),
       loader: prefetch(({ search }) => client.prefetchQuery(constantListQuery(registerQueryOf(search)))),
       lazy: async () => ({ Component: (await import('../pages/register/register-page.tsx')).RegisterPage }),
     },
     {
-      path: 'constants/:number',
+      ...routeOf('constant'),
       loader: prefetch(({ params }) => client.prefetchQuery(constantQuery(params.number ?? ''))),
       lazy: async () => ({ Component: (await import('../pages/constant/constant-page.tsx')).ConstantPage }),
     },
     {
-      path: 'runs',
-      handle: MEMBERS,
+      ...routeOf('runs'),
       loader: prefetch(({ search }) => client.prefetchQuery(runListQuery(runListQueryOf(search)))),
       lazy: async () => ({ Component: (await import('../pages/runs/runs-page.tsx')).RunsPage }),
     },
-    { path: 'runs/new', handle: MEMBERS, lazy: async () => ({ Component: (await import('../pages/new-run/new-run-page.tsx')).NewRunPage }) },
+    { ...routeOf('newRun'), lazy: async () => ({ Component: (await import('../pages/new-run/new-run-page.tsx')).NewRunPage }) },
     {
-      path: 'runs/:id',
-      handle: MEMBERS,
+      ...routeOf('run'),
       loader: prefetch(({ params }) => client.prefetchQuery(runQuery(params.id ?? ''))),
       lazy: async () => ({ Component: (await import('../pages/run/run-page.tsx')).RunPage }),
     },
-    { path: 'claims/new', handle: MEMBERS, lazy: async () => ({ Component: (await import('../pages/new-claim/new-claim-page.tsx')).NewClaimPage }) },
-    { path: 'claims/import', handle: MEMBERS, lazy: async () => ({ Component: (await import('../pages/import/import-page.tsx')).ImportPage }) },
+    { ...routeOf('newClaim'), lazy: async () => ({ Component: (await import('../pages/new-claim/new-claim-page.tsx')).NewClaimPage }) },
+    { ...routeOf('importDigits'), lazy: async () => ({ Component: (await import('../pages/import/import-page.tsx')).ImportPage }) },
     {
-      path: 'claims/:id',
+      ...routeOf('claim'),
       loader: prefetch(({ params }) => client.prefetchQuery(claimQuery(params.id ?? ''))),
       lazy: async () => ({ Component: (await import('../pages/claim/claim-page.tsx')).ClaimPage }),
     },
     {
-      path: 'desk',
-      handle: MEMBERS,
+      ...routeOf('desk'),
       loader: prefetch(() => client.prefetchQuery(deskQuery())),
       lazy: async () => ({ Component: (await import('../pages/desk/desk-page.tsx')).DeskPage }),
     },
-    { path: 'sign-in', lazy: async () => ({ Component: (await import('../pages/sign-in/sign-in-page.tsx')).SignInPage }) },
+    { ...routeOf('signIn'), lazy: async () => ({ Component: (await import('../pages/sign-in/sign-in-page.tsx')).SignInPage }) },
     ...peopleRoutes(client, prefetch),
     ...readingRoutes(client, prefetch),
     { path: '*', lazy: async () => ({ Component: (await import('../pages/not-found/not-found-page.tsx')).NotFoundPage }) },

@@ -1,4 +1,4 @@
-import { escapeHtml } from '../html.ts'
+import { escapeHtml } from '../../html.ts'
 import type { StoredMail } from './store.ts'
 
 const STYLE = `

@@ -1,6 +1,6 @@
 import { Bar, BarChart, Cell, ResponsiveContainer, XAxis, YAxis } from 'recharts'
 import type { BudgetLine } from './error-budget.tsx'
-import { SOURCE_WORDS } from './error-budget.tsx'
+import { SOURCE_WORDS } from '../../../../shared/words.ts'
 import { PowerTick } from './power.tsx'
 import { exponentTicks, log10OfText } from './scale.ts'
 import { AXIS_LINE, axisLabel, CERTAIN, INK, MARGIN, TICK } from './theme.ts'

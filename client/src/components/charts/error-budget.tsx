@@ -1,5 +1,6 @@
 import { lazy, Suspense } from 'react'
 import type { ErrorSource } from '../../../../shared/engine/methods/computation.ts'
+import { SOURCE_WORDS } from '../../../../shared/words.ts'
 import { Printed } from '../formula/printed.tsx'
 import { Table } from '../ui/table.tsx'
 import { Power } from './power.tsx'
@@ -14,15 +15,6 @@ export interface BudgetLine {
   statement: string
   /** Contribution to the radius, rounded up: "3.1e-42". */
   magnitude: string
-}
-
-export const SOURCE_WORDS: Record<ErrorSource, string> = {
-  discretisation: 'Discretisation',
-  'truncation-below': 'Truncation below',
-  'truncation-above': 'Truncation above',
-  tail: 'Tail',
-  series: 'Series',
-  rounding: 'Rounding',
 }
 
 /** "3.1e-42" as it is printed. */

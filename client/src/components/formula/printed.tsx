@@ -1,4 +1,4 @@
-import { printedText } from './printed-text.ts'
+import { printedText } from '../../../../shared/printed-text.ts'
 
 /** What stands raised or lowered after ^ or _: in brackets, or a number or word with its sign. */
 const SCRIPT = /([\^_])(-?(?:\([^()]*\)|\{[^{}]*\}|[\p{L}\d]+|∞))/u

@@ -1,22 +1,10 @@
 import type { ReactElement } from 'react'
 import type { ClaimState } from '../../../../shared/schemas/claim.ts'
+import { STATE_WORDS } from '../../../../shared/words.ts'
 import { classNames } from '../../lib/class-names.ts'
 
 /** States of a claim, and `stated` for a constant of which nothing is claimed yet. */
 export type MarkedState = ClaimState | 'stated'
-
-export const STATE_WORDS: Record<MarkedState, string> = {
-  stated: 'stated',
-  draft: 'draft',
-  submitted: 'submitted',
-  'in-review': 'in review',
-  returned: 'returned',
-  endorsed: 'endorsed',
-  signed: 'signed',
-  superseded: 'superseded',
-  suspended: 'suspended',
-  withdrawn: 'withdrawn',
-}
 
 /** The standing stone, 8 wide and 17 high on the ground at y = 20. */
 const STONE = 'M8 20 8.5 8.2C8.7 4.8 10 3 12.1 3.1 14.4 3.2 15.3 5.2 15.4 8.4L16 20z'

@@ -1,10 +1,11 @@
-import { useEffect } from 'react'
 import type { ReactNode } from 'react'
+import type { PageHead } from '../../../../shared/page-head.ts'
 import { classNames } from '../../lib/class-names.ts'
+import { useDocumentHead } from '../../lib/use-document-head.ts'
 
 interface PageProps {
-  /** What the browser's tab says, before the product's name. */
-  title: string
+  /** How the browser and search engines know the page. */
+  about: PageHead
   /** The head of the page: its subject. */
   head: ReactNode
   /** What the main matter rests on: provenance, estimates, history. Beside it on wide screens, after it on narrow ones. */
@@ -13,10 +14,8 @@ interface PageProps {
 }
 
 /** One main column and, where there is something to put there, a margin column. */
-export function Page({ title, head, margin, children }: PageProps) {
-  useEffect(() => {
-    document.title = `${title} · Merestone`
-  }, [title])
+export function Page({ about, head, margin, children }: PageProps) {
+  useDocumentHead(about)
   return (
     <main id="main" tabIndex={-1} className="mx-auto w-full max-w-[84rem] px-5 pt-7 pb-20 outline-none sm:px-8 print:p-0">
       <header className="mb-7">{head}</header>

@@ -29,19 +29,6 @@ export const REASONED_ACTS = {
 } as const satisfies Partial<Record<Act, { ability: string; button: string; tells: string }>>
 export type ReasonedAct = keyof typeof REASONED_ACTS
 
-const PAST: Record<string, string> = {
-  create: 'drafted', draft: 'drafted', edit: 'edited', attach: 'added evidence', detach: 'removed evidence', submit: 'submitted', assign: 'assigned a referee', remind: 'reminded',
-  accept: 'accepted to referee', decline: 'declined to referee', recheck: 'started a recheck', object: 'objected', answer: 'answered', settle: 'settled an objection',
-  uphold: 'upheld an objection', confirm: 'confirmed', return: 'returned it', resubmit: 'resubmitted', endorse: 'endorsed', sign: 'signed', supersede: 'superseded',
-  suspend: 'suspended', reinstate: 'reinstated', withdraw: 'withdrew', restore: 'restored', 'await-referee': 'put back to wait for a referee',
-}
-
-/** An act of the history in the past tense; one that is not known here is shown as the trail names it. */
-export function pastWords(act: string): string {
-  const name = act.replace(/^claim[.:]/, '')
-  return PAST[name] ?? name
-}
-
 /** States in which a claim is public history and can no longer be changed. */
 export function isSettled(state: ClaimState): boolean {
   return state === 'signed' || state === 'superseded' || state === 'suspended' || state === 'withdrawn'

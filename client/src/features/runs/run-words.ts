@@ -8,15 +8,6 @@ export const RUN_STATE_WORDS: Record<Run['state'], string> = {
   stopped: 'stopped',
 }
 
-export const METHOD_WORDS: Record<Run['method'], string> = {
-  transform: 'transform, trapezoid',
-  panels: 'transform, panels',
-  'partial-sum': 'partial sum with tail',
-  expansion: 'expansion in prime zeta values',
-  derivatives: 'derivatives of the series',
-  finite: 'finite sum',
-}
-
 /** What a run is to reach, in words. */
 export function goalWords(goal: Run['goal']): string {
   return 'digits' in goal ? `${goal.digits} digit${goal.digits === 1 ? '' : 's'}` : `terms up to ${goal.cutoff}`

@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import { paths } from '../../app/paths.ts'
 import { Formula } from '../../components/formula/formula.tsx'
 import { TextLink } from '../../components/ui/link.tsx'
@@ -7,7 +8,7 @@ import { MarginNote, Page, Section } from '../../components/ui/page.tsx'
 export function AboutPage() {
   return (
     <Page
-      title="How it is certified"
+      about={pageHead('about')}
       head={
         <>
           <h1>How it is certified</h1>

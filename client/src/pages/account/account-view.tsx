@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { Account, MailPreferences } from '../../../../shared/schemas/member.ts'
 import type { AccessToken, AccessTokenInput, OwnSession } from '../../../../shared/schemas/session.ts'
 import { Part } from '../../components/ui/fetched.tsx'
@@ -32,7 +33,7 @@ interface AccountViewProps {
 export function AccountView(props: AccountViewProps) {
   const { account, sessions, tokens, newToken, origin } = props
   return (
-    <Page title="Account" head={<h1>Account</h1>} margin={account.data && <Membership account={account.data} />}>
+    <Page about={pageHead('account')} head={<h1>Account</h1>} margin={account.data && <Membership account={account.data} />}>
       <Part of={account} what="your account">
         {(own) => (
           <>

@@ -1,4 +1,5 @@
 import type { ReactNode } from 'react'
+import { claimHead, pageHead } from '../../../../shared/page-head.ts'
 import type { Claim } from '../../../../shared/schemas/claim.ts'
 import { paths } from '../../app/paths.ts'
 import { ErrorBudget } from '../../components/charts/error-budget.tsx'
@@ -50,7 +51,7 @@ const LEAD = ['assign', 'return', 'sign', 'suspend', 'reinstate', 'withdraw']
 export function ClaimView(props: ClaimViewProps) {
   if (props.claim) return <Loaded {...props} />
   return (
-    <Page title="Claim" head={<h1>Claim</h1>}>
+    <Page about={pageHead('claim')} head={<h1>Claim</h1>}>
       {props.error ? <ErrorView title="This claim could not be read" error={props.error} onRetry={props.onRetry} /> : <Loading what="Reading the claim" />}
     </Page>
   )
@@ -60,7 +61,7 @@ function Loaded({ claim, done, mayReadRuns, onAct, onEdit, onDelete, onUpload, o
   const may = (acts: string[]) => acts.some((act) => claim.abilities[act])
   return (
     <Page
-      title={`${claimName(claim)}: ${claim.definition.text}`}
+      about={claimHead(claim)}
       head={
         <>
           <p className="text-soft">

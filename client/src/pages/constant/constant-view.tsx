@@ -1,4 +1,6 @@
+import { constantHead, pageHead } from '../../../../shared/page-head.ts'
 import type { Constant } from '../../../../shared/schemas/constant.ts'
+import { METHOD_WORDS } from '../../../../shared/words.ts'
 import { paths } from '../../app/paths.ts'
 import { Narrowing } from '../../components/charts/narrowing.tsx'
 import { Nest } from '../../components/charts/nest.tsx'
@@ -12,7 +14,7 @@ import { Notice } from '../../components/ui/notice.tsx'
 import { Page, Section } from '../../components/ui/page.tsx'
 import { ClaimTable } from '../../features/claims/components/claim-table.tsx'
 import { ConstantMargin } from '../../features/constants/components/constant-margin.tsx'
-import { METHOD_WORDS, RUN_STATE_WORDS } from '../../features/runs/run-words.ts'
+import { RUN_STATE_WORDS } from '../../features/runs/run-words.ts'
 
 export interface ConstantViewProps {
   number: string
@@ -25,7 +27,7 @@ export interface ConstantViewProps {
 export function ConstantView({ number, constant, error, onRetry, mayStart }: ConstantViewProps) {
   if (!constant)
     return (
-      <Page title={number} head={<h1>{number}</h1>}>
+      <Page about={pageHead('constant', number)} head={<h1>{number}</h1>}>
         {error ? <ErrorView title="This constant could not be read" error={error} onRetry={onRetry} /> : <Loading what={`Reading ${number}`} />}
       </Page>
     )
@@ -33,7 +35,7 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
   const open = constant.conflicts.filter((conflict) => conflict.closedAt === null)
   return (
     <Page
-      title={`${constant.number}: ${constant.definition.text}`}
+      about={constantHead(constant)}
       head={
         <>
           <div className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-2">

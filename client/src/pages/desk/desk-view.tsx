@@ -1,4 +1,5 @@
 import type { ReactNode } from 'react'
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { Role } from '../../../../shared/permissions.ts'
 import type { Desk } from '../../../../shared/schemas/claim.ts'
 import { paths } from '../../app/paths.ts'
@@ -30,7 +31,7 @@ export function DeskView({ desk, error, onRetry, roles }: DeskViewProps) {
   const nothing = desk && parts.every((part) => desk[part.role].length === 0)
   return (
     <Page
-      title="Desk"
+      about={pageHead('desk')}
       head={
         <div className="flex flex-wrap items-baseline justify-between gap-x-8 gap-y-1">
           <h1>Desk</h1>

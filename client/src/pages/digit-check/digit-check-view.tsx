@@ -1,4 +1,5 @@
 import type { FormEvent } from 'react'
+import { pageHead } from '../../../../shared/page-head.ts'
 import { paths } from '../../app/paths.ts'
 import { DigitLine } from '../../components/digit-line/digit-line.tsx'
 import { Formula } from '../../components/formula/formula.tsx'
@@ -41,7 +42,7 @@ export function DigitCheckView({ subject, against, value, onSubject, onChange }:
   }
   return (
     <Page
-      title="Digit check"
+      about={pageHead('digitCheck')}
       head={<h1>Digit check</h1>}
       margin={
         <>

@@ -1,8 +1,8 @@
+import { estimateHead, pageHead } from '../../../../shared/page-head.ts'
 import type { Estimate } from '../../../../shared/schemas/estimate.ts'
 import { paths } from '../../app/paths.ts'
 import { Formula } from '../../components/formula/formula.tsx'
 import { Printed } from '../../components/formula/printed.tsx'
-import { printedText } from '../../components/formula/printed-text.ts'
 import { Empty } from '../../components/ui/feedback.tsx'
 import { Part } from '../../components/ui/fetched.tsx'
 import type { Fetched } from '../../components/ui/fetched.tsx'
@@ -17,7 +17,7 @@ export function EstimateView({ estimate }: { estimate: Fetched<Estimate> }) {
   const { data } = estimate
   return (
     <Page
-      title={data ? printedText(data.title) : 'Estimate'}
+      about={data ? estimateHead(data) : pageHead('estimate')}
       head={
         <>
           <p className="mb-1">

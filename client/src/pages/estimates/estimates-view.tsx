@@ -1,4 +1,5 @@
 import type { FormEvent } from 'react'
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { Estimate } from '../../../../shared/schemas/estimate.ts'
 import { paths } from '../../app/paths.ts'
 import { Empty } from '../../components/ui/feedback.tsx'
@@ -22,7 +23,7 @@ interface EstimatesViewProps {
 export function EstimatesView({ estimates, filters, onFilter }: EstimatesViewProps) {
   return (
     <Page
-      title="Estimates"
+      about={pageHead('estimates')}
       head={
         <>
           <h1>Estimates</h1>

@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import { files, paths } from '../../app/paths.ts'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
 import { FileLink } from '../../components/ui/link.tsx'
@@ -33,7 +34,7 @@ export function AuditView({ group, list, error, refetching, onRetry, filters, ex
   const filtered = Object.keys(filters).length > 0
   return (
     <Page
-      title="Audit trail"
+      about={pageHead('groupAudit')}
       head={<GroupHead group={group} />}
       margin={
         <>

@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { Role } from '../../../../shared/permissions.ts'
 import type { Group } from '../../../../shared/schemas/group.ts'
 import type { Invitation, InvitationInput, Member } from '../../../../shared/schemas/member.ts'
@@ -32,7 +33,7 @@ interface GroupViewProps {
 export function GroupView(props: GroupViewProps) {
   const { group, members, invitations, ownId } = props
   return (
-    <Page title="Group" head={<GroupHead group={group.data} />} margin={<RoleNotes />}>
+    <Page about={pageHead('group')} head={<GroupHead group={group.data} />} margin={<RoleNotes />}>
       <Section title="Members">
         <Part of={members} what="the members">
           {(list) => <MemberTable members={list} ownId={ownId} onChangeRoles={props.onChangeRoles} onEnd={props.onEndMembership} />}

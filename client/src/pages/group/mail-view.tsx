@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
 import { Field, Select } from '../../components/ui/field.tsx'
 import { Notice } from '../../components/ui/notice.tsx'
@@ -30,7 +31,7 @@ export function MailView({ group, list, error, refetching, onRetry, state, onSta
   const bounced = members.filter((member) => member.state === 'active' && member.mailBouncedAt !== null)
   return (
     <Page
-      title="Outgoing mail"
+      about={pageHead('groupMail')}
       head={<GroupHead group={group} />}
       margin={
         <>

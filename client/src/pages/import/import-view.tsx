@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { ImportLine, ImportPreview, ImportResult } from '../../../../shared/schemas/import.ts'
 import { paths } from '../../app/paths.ts'
 import { Formula } from '../../components/formula/formula.tsx'
@@ -39,7 +40,7 @@ export function ImportView({ fileName, preview, busy, error, result, onFile, onI
   const good = preview?.lines.filter(({ verdict }) => verdict !== 'bad').length ?? 0
   return (
     <Page
-      title="Import a table of digits"
+      about={pageHead('importDigits')}
       head={
         <>
           <h1>Import a table of digits</h1>

@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import { invitationAcceptance } from '../../../../shared/schemas/member.ts'
 import type { InvitationOffer } from '../../../../shared/schemas/member.ts'
 import { paths } from '../../app/paths.ts'
@@ -26,7 +27,7 @@ interface InvitationViewProps {
 export function InvitationView({ offer, signedInAs, onAccept }: InvitationViewProps) {
   if (offer.data === undefined && offer.error instanceof ApiError && [400, 404, 410].includes(offer.error.status)) return <UsedUp error={offer.error} />
   return (
-    <Page title="Invitation" head={<h1>{offer.data ? `Join ${offer.data.group}` : 'Invitation'}</h1>}>
+    <Page about={pageHead('invitation')} head={<h1>{offer.data ? `Join ${offer.data.group}` : 'Invitation'}</h1>}>
       <Part of={offer} what="the invitation">{(data) => <Acceptance offer={data} signedInAs={signedInAs} onAccept={onAccept} />}</Part>
     </Page>
   )
@@ -34,7 +35,7 @@ export function InvitationView({ offer, signedInAs, onAccept }: InvitationViewPr
 
 function UsedUp({ error }: { error: ApiError }) {
   return (
-    <Page title="Invitation" head={<h1>Invitation</h1>}>
+    <Page about={pageHead('invitation')} head={<h1>Invitation</h1>}>
       <ErrorView title="This invitation can’t be accepted" error={error} />
       <p className="mt-4 max-w-prose">
         If you have accepted it before, <TextLink to={paths.signIn()}>sign in</TextLink>. Otherwise ask whoever invited you to send it again: the new

@@ -1,4 +1,5 @@
 import type { FormEvent } from 'react'
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { PrintedAs } from '../../../../shared/digit-check.ts'
 import { paths } from '../../app/paths.ts'
 import { DigitLine } from '../../components/digit-line/digit-line.tsx'
@@ -34,7 +35,7 @@ export function LookUpView({ digits, reading, found, unreadable, busy, onLookUp 
   }
   return (
     <Page
-      title="Look-up"
+      about={pageHead('lookUp')}
       head={<h1>Look up digits</h1>}
       margin={
         <MarginNote title="What is compared">

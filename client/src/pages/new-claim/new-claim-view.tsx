@@ -1,4 +1,5 @@
 import { useWatch } from 'react-hook-form'
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { ClaimInput } from '../../../../shared/schemas/claim.ts'
 import { Button } from '../../components/ui/button.tsx'
 import { Choice, Field, FieldSet, TextArea, TextInput } from '../../components/ui/field.tsx'
@@ -13,7 +14,7 @@ export function NewClaimView({ form: api }: { form: Form }) {
   const { form, submit, errorAt, rootError, sending } = api
   const kind = useWatch({ control: form.control, name: 'kind' })
   return (
-    <Page title="New claim" head={<h1>New claim</h1>}>
+    <Page about={pageHead('newClaim')} head={<h1>New claim</h1>}>
       <form onSubmit={(event) => void submit(event)} noValidate className="grid max-w-xl justify-items-start gap-6">
         <FieldSet legend="What is claimed">
           <Choice type="radio" value="stated" label="a value from elsewhere" hint="Digits or an interval from a paper or a program, with the source. It is shown as not repeated here until a run of ours meets it." {...form.register('kind')} />

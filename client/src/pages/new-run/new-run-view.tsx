@@ -1,5 +1,6 @@
 import type { FormEvent } from 'react'
 import type { UseFormReturn } from 'react-hook-form'
+import { pageHead } from '../../../../shared/page-head.ts'
 import { LIMITS } from '../../../../shared/limits.ts'
 import type { Plan } from '../../../../shared/schemas/run.ts'
 import { paths } from '../../app/paths.ts'
@@ -37,7 +38,7 @@ export function NewRunView({ form, errors, plan, planning, planError, chosen, on
     onStart()
   }
   return (
-    <Page title="New run" head={<h1>New run</h1>}>
+    <Page about={pageHead('newRun')} head={<h1>New run</h1>}>
       <form onSubmit={start} noValidate className="grid gap-x-14 gap-y-8 wide:grid-cols-[minmax(0,26rem)_minmax(0,1fr)]">
         <div className="grid content-start gap-5">
           <DefinitionFields form={form} errors={errors} />
@@ -101,11 +102,16 @@ function GoalFields({ form, errors }: { form: UseFormReturn<RunFormValues>; erro
   return (
     <FieldSet legend="Goal">
       <Choice type="radio" value="digits" label="certified digits after the point" {...form.register('goal')} />
+      <Choice type="radio" value="width" label="an enclosure of at most this width" {...form.register('goal')} />
       <Choice type="radio" value="cutoff" label="terms up to a cut-off, with a bound of the tail" {...form.register('goal')} />
       <div className="mt-2">
         {goal === 'digits' ? (
           <Field label="Digits" hint={`From 1 to ${LIMITS.digits}`} error={errors.digits} narrow>
             {(control) => <TextInput {...control} {...form.register('digits')} inputMode="numeric" autoComplete="off" />}
+          </Field>
+        ) : goal === 'width' ? (
+          <Field label="Width" hint={<>hi − lo at most this, such as 2.5e-30</>} error={errors.width} narrow>
+            {(control) => <TextInput {...control} {...form.register('width')} autoComplete="off" spellCheck={false} />}
           </Field>
         ) : (
           <Field label="Cut-off" hint="All terms up to it are added" error={errors.cutoff} narrow>

@@ -1,4 +1,5 @@
 import { useState } from 'react'
+import { pageHead } from '../../../../shared/page-head.ts'
 import { passwordResetInput } from '../../../../shared/schemas/session.ts'
 import { paths } from '../../app/paths.ts'
 import { Button } from '../../components/ui/button.tsx'
@@ -18,7 +19,7 @@ export function AskResetView({ onAsk }: { onAsk: (input: PasswordResetInput) => 
     setAsked(values.email)
   })
   return (
-    <Page title="Forgotten password" head={<h1>Forgotten the password?</h1>}>
+    <Page about={pageHead('forgotPassword')} head={<h1>Forgotten the password?</h1>}>
       <form onSubmit={(event) => void submit(event)} noValidate className="grid max-w-[26rem] gap-5">
         {rootError && (
           <Notice tone="refused" title="Not asked." live>

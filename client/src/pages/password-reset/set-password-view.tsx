@@ -1,4 +1,5 @@
 import { useState } from 'react'
+import { pageHead } from '../../../../shared/page-head.ts'
 import { passwordResetCompletion } from '../../../../shared/schemas/session.ts'
 import { paths } from '../../app/paths.ts'
 import { Button } from '../../components/ui/button.tsx'
@@ -24,7 +25,7 @@ export function SetPasswordView({ offer, onSet }: SetPasswordViewProps) {
   const [done, setDone] = useState(false)
   const usedUp = offer.data === undefined && offer.error instanceof ApiError && [400, 404, 410].includes(offer.error.status)
   return (
-    <Page title="New password" head={<h1>Set a new password</h1>}>
+    <Page about={pageHead('passwordReset')} head={<h1>Set a new password</h1>}>
       {done ? (
         <div className="grid max-w-prose justify-items-start gap-5">
           <Notice tone="done" title="Your password is set." live>

@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import { files, paths } from '../../app/paths.ts'
 import { type Fetched, Part } from '../../components/ui/fetched.tsx'
 import { TextLink } from '../../components/ui/link.tsx'
@@ -8,7 +9,7 @@ import type { ApiDocument, ApiOperation } from '../../features/programs/queries.
 export function ProgramsView({ document }: { document: Fetched<ApiDocument> }) {
   return (
     <Page
-      title="For programs"
+      about={pageHead('programs')}
       head={
         <>
           <h1>For programs</h1>

@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import { files, paths } from '../../app/paths.ts'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
 import { ButtonLink, FileLink, TextLink } from '../../components/ui/link.tsx'
@@ -29,7 +30,7 @@ export interface RegisterViewProps {
 export function RegisterView({ list, error, refetching, onRetry, filters, filtered, onFilter, sorting, pages, mayStart }: RegisterViewProps) {
   return (
     <Page
-      title="Register"
+      about={pageHead('register')}
       head={
         <div className="flex flex-wrap items-end justify-between gap-4">
           <h1>Register of constants</h1>

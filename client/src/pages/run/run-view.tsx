@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { Run, RunEvent } from '../../../../shared/schemas/run.ts'
 import { paths } from '../../app/paths.ts'
 import { Formula } from '../../components/formula/formula.tsx'
@@ -27,14 +28,14 @@ export interface RunViewProps {
 export function RunView({ run, error, onRetry, live, onSteer, steering, steerError, onDraft }: RunViewProps) {
   if (!run)
     return (
-      <Page title="Run" head={<h1>Run</h1>}>
+      <Page about={pageHead('run')} head={<h1>Run</h1>}>
         {error ? <ErrorView title="This run could not be read" error={error} onRetry={onRetry} /> : <Loading what="Reading the run" />}
       </Page>
     )
   const state = live?.state ?? run.state
   return (
     <Page
-      title={`Run of ${run.constant}`}
+      about={pageHead('run', `Run of ${run.constant}`)}
       head={
         <div className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-1">
           <h1>
@@ -48,7 +49,7 @@ export function RunView({ run, error, onRetry, live, onSteer, steering, steerErr
       <div className="entry">
         <Formula display latex={run.definition.latex} text={run.definition.text} />
         {(state === 'queued' || state === 'running') && <RunProgress run={run} live={live} />}
-        {run.outcome && <OutcomeEnclosure outcome={run.outcome} />}
+        {run.outcome && <OutcomeEnclosure outcome={run.outcome} goal={run.goal} />}
       </div>
       <div className="mt-5 grid justify-items-start gap-4">
         {run.abilities.stop && (state === 'queued' || state === 'running') && (

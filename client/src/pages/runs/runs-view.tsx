@@ -1,4 +1,7 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { RunSummary } from '../../../../shared/schemas/run.ts'
+import { goalText } from '../../../../shared/engine/methods/goal.ts'
+import { METHOD_WORDS } from '../../../../shared/words.ts'
 import { paths } from '../../app/paths.ts'
 import { Formula } from '../../components/formula/formula.tsx'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
@@ -11,7 +14,7 @@ import type { Column } from '../../components/ui/table.tsx'
 import { Time } from '../../components/ui/time.tsx'
 import type { useCursorPages } from '../../components/ui/use-cursor-pages.ts'
 import type { RunPageData } from '../../features/runs/queries.ts'
-import { goalWords, METHOD_WORDS, RUN_STATE_WORDS } from '../../features/runs/run-words.ts'
+import { RUN_STATE_WORDS } from '../../features/runs/run-words.ts'
 
 export interface RunsViewProps {
   list: RunPageData | undefined
@@ -28,7 +31,7 @@ export interface RunsViewProps {
 const COLUMNS: Column<RunSummary>[] = [
   { key: 'definition', header: 'Constant', plain: true, cell: (run) => <><TextLink to={paths.run(run.id)} className="whitespace-nowrap">{run.constant}</TextLink> {run.purpose === 'recheck' && <span className="text-soft">recheck{run.claimNumber ? ` of ${run.claimNumber}` : ''}</span>}</> },
   { key: 'formula', header: 'Definition', plain: true, cell: (run) => <Formula latex={run.definition.latex} text={run.definition.text} /> },
-  { key: 'goal', header: 'Goal', cell: (run) => goalWords(run.goal) },
+  { key: 'goal', header: 'Goal', cell: (run) => goalText(run.goal) },
   { key: 'method', header: 'Method', cell: (run) => `${METHOD_WORDS[run.method]}, ${run.arithmetic}` },
   { key: 'state', header: 'State', cell: (run) => (run.state === 'running' ? `${RUN_STATE_WORDS.running}, ${Math.floor(run.progress * 100)} %` : RUN_STATE_WORDS[run.state]) },
   { key: 'digits', header: 'Digits', align: 'right', cell: (run) => run.digits?.truncated ?? '' },
@@ -39,7 +42,7 @@ export function RunsView({ list, error, refetching, onRetry, state, mine, onFilt
   const filtered = state !== '' || mine
   return (
     <Page
-      title="Runs"
+      about={pageHead('runs')}
       head={
         <div className="flex flex-wrap items-end justify-between gap-4">
           <h1>Runs</h1>

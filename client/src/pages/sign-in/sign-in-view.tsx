@@ -1,4 +1,5 @@
 import type { z } from 'zod'
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { signInInput, SignInInput } from '../../../../shared/schemas/session.ts'
 import { paths } from '../../app/paths.ts'
 import { Button } from '../../components/ui/button.tsx'
@@ -16,7 +17,7 @@ interface SignInViewProps {
 
 export function SignInView({ form: { form, submit, errorAt, rootError, sending }, asked }: SignInViewProps) {
   return (
-    <Page title="Sign in" head={<h1>Sign in</h1>}>
+    <Page about={pageHead('signIn')} head={<h1>Sign in</h1>}>
       <div className="grid gap-12 wide:grid-cols-[26rem_1fr]">
         <form onSubmit={(event) => void submit(event)} noValidate className="grid content-start gap-5">
           {asked && <p className="text-soft">The page you asked for is for members. Sign in, and it opens.</p>}

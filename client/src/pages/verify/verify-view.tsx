@@ -1,3 +1,4 @@
+import { pageHead } from '../../../../shared/page-head.ts'
 import type { Certificate } from '../../../../shared/engine/certificate/certificate.ts'
 import { paths } from '../../app/paths.ts'
 import { FileDrop } from '../../components/ui/file-drop.tsx'
@@ -20,7 +21,7 @@ export function VerifyView({ dropped, onFile }: VerifyViewProps) {
   const certificate = dropped && 'certificate' in dropped ? dropped.certificate : null
   return (
     <Page
-      title="Verify a certificate"
+      about={pageHead('verify')}
       head={
         <>
           <h1>Verify a certificate</h1>

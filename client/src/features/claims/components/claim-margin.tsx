@@ -1,13 +1,11 @@
 import type { ReactNode } from 'react'
 import type { Claim } from '../../../../../shared/schemas/claim.ts'
+import { KIND_WORDS, METHOD_WORDS, pastWords } from '../../../../../shared/words.ts'
 import { files, paths } from '../../../app/paths.ts'
 import { FileLink, TextLink } from '../../../components/ui/link.tsx'
 import { Facts, MarginNote } from '../../../components/ui/page.tsx'
 import { Time } from '../../../components/ui/time.tsx'
 import { CiteNote } from '../../constants/components/constant-margin.tsx'
-import { METHOD_WORDS } from '../../runs/run-words.ts'
-import { pastWords } from '../act-words.ts'
-import { KIND_WORDS } from '../claim-words.ts'
 
 /** Who says so, by what certificate, how to cite it, and how it came to stand where it stands. */
 export function ClaimMargin({ claim, mayReadRuns }: { claim: Claim; mayReadRuns: boolean }) {

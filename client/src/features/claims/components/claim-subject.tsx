@@ -1,4 +1,5 @@
 import type { Claim } from '../../../../../shared/schemas/claim.ts'
+import { cautionWords, digitsWords } from '../../../../../shared/words.ts'
 import { paths } from '../../../app/paths.ts'
 import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
 import { Formula } from '../../../components/formula/formula.tsx'
@@ -22,12 +23,7 @@ export function ClaimSubject({ claim }: { claim: Claim }) {
             </dl>
           </div>
         )}
-        {claim.digits && (
-          <p className="mt-2 text-[0.92rem] text-soft">
-            {claim.digits.truncated} digits after the point {claim.kind === 'stated' && !claim.repeatedHere ? 'follow from what the source states' : 'certified'} when truncated, {claim.digits.rounded} when
-            rounded.
-          </p>
-        )}
+        {claim.digits && <p className="mt-2 text-[0.92rem] text-soft">{digitsWords(claim)}</p>}
       </div>
       <div className="mt-5 grid gap-4 empty:hidden">
         {claim.conflicts
@@ -75,17 +71,5 @@ function Order({ order }: { order: NonNullable<Claim['order']> }) {
 
 /** The usual caution: on what the enclosure rests and which arithmetics agree. */
 export function Caution({ claim }: { claim: Claim }) {
-  const estimates = claim.outcome?.estimates ?? []
-  const conditional = estimates.filter((use) => use.conditional).length
-  const meeting = claim.rechecks.filter((recheck) => recheck.verdict === 'meets')
-  const arithmetics = [...new Set([claim.run?.arithmetic, ...meeting.map((recheck) => recheck.arithmetic)].filter(Boolean))]
-  return (
-    <p className="mt-10 max-w-prose break-inside-avoid border-t border-rule pt-3 text-[0.92rem] text-soft print:mt-4 print:max-w-none">
-      An enclosure is as sound as the estimates it cites and the programs that computed it. This one{' '}
-      {estimates.length === 0 ? 'uses no published estimate' : `uses ${estimates.length} published estimate${estimates.length === 1 ? '' : 's'}`}
-      {conditional > 0 && `, ${conditional} of them conditional`}
-      {arithmetics.length > 1 ? `; the arithmetics ${arithmetics.join(' and ')} agree` : arithmetics.length === 1 ? `; it was computed by ${arithmetics[0]} arithmetic alone` : ''}. Whoever builds a proof on it should repeat it
-      from the certificate.
-    </p>
-  )
+  return <p className="mt-10 max-w-prose break-inside-avoid border-t border-rule pt-3 text-[0.92rem] text-soft print:mt-4 print:max-w-none">{cautionWords(claim)}</p>
 }

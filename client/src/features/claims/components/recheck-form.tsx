@@ -1,11 +1,11 @@
 import { z } from 'zod'
 import { arithmetic, method } from '../../../../../shared/schemas/run.ts'
 import type { Claim } from '../../../../../shared/schemas/claim.ts'
+import { METHOD_WORDS } from '../../../../../shared/words.ts'
 import { Button } from '../../../components/ui/button.tsx'
 import { Field, Select, TextInput } from '../../../components/ui/field.tsx'
 import { Notice } from '../../../components/ui/notice.tsx'
 import { useApiForm } from '../../../lib/use-api-form.ts'
-import { METHOD_WORDS } from '../../runs/run-words.ts'
 import type { DoAct } from '../queries.ts'
 
 const recheckForm = z.object({ method, arithmetic, digits: z.string().trim().regex(/^[1-9]\d{0,4}$/, 'Write a whole number of digits.') })

@@ -1,9 +1,9 @@
 import type { Claim } from '../../../../../shared/schemas/claim.ts'
+import { METHOD_WORDS } from '../../../../../shared/words.ts'
 import { paths } from '../../../app/paths.ts'
 import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
 import { TextLink } from '../../../components/ui/link.tsx'
 import { Table } from '../../../components/ui/table.tsx'
-import { METHOD_WORDS } from '../../runs/run-words.ts'
 import { claimName } from '../claim-words.ts'
 
 type Recheck = Claim['rechecks'][number]

@@ -1,8 +1,8 @@
 import type { Plan } from '../../../../../shared/schemas/run.ts'
+import { METHOD_WORDS } from '../../../../../shared/words.ts'
 import { Magnitude } from '../../../components/charts/error-budget.tsx'
 import { secondsInWords } from '../../../components/ui/time.tsx'
 import { Table } from '../../../components/ui/table.tsx'
-import { METHOD_WORDS } from '../run-words.ts'
 
 type Forecast = Plan['forecasts'][number]
 export type Choice = Pick<Forecast, 'method' | 'arithmetic'>

@@ -1,11 +1,12 @@
 import type { ReactNode } from 'react'
 import type { Run } from '../../../../../shared/schemas/run.ts'
+import { METHOD_WORDS, STATE_WORDS } from '../../../../../shared/words.ts'
 import { files, paths } from '../../../app/paths.ts'
-import { type MarkedState, STATE_WORDS } from '../../../components/state-mark/state-mark.tsx'
+import type { MarkedState } from '../../../components/state-mark/state-mark.tsx'
 import { FileLink, TextLink } from '../../../components/ui/link.tsx'
 import { Facts, MarginNote } from '../../../components/ui/page.tsx'
 import { secondsInWords, Time } from '../../../components/ui/time.tsx'
-import { goalWords, METHOD_WORDS } from '../run-words.ts'
+import { goalWords } from '../run-words.ts'
 
 /** How a run was asked for, its certificate, and what was made of it. */
 export function RunMargin({ run }: { run: Run }) {
