@@ -98,6 +98,35 @@ describe('numbers of the mpfr arithmetic', () => {
     expect(() => a.add(lost, lost)).toThrow('after its frame')
     expect(contains(a, a.scale(kept, rational(3)), rational(1))).toBe(true)
   })
+
+  it('of a frame inside another end with it, and leave those around it as they were', async () => {
+    const a = await createArithmetic('mpfr', 64)
+    const third = rational(1, 3)
+    a.frame(() => {
+      const outer = a.rational(third)
+      let lost: unknown
+      a.frame(() => {
+        const inner = a.rational(rational(2, 3))
+        expect(contains(a, a.add(outer, inner), rational(1))).toBe(true)
+        lost = inner
+      })
+      expect(() => a.add(outer, lost)).toThrow('after its frame')
+      expect(() => a.frame(() => { throw new Error('midway') })).toThrow('midway')
+      a.keep(() => a.frame(() => Array.from({ length: 8 }, () => a.rational(rational(5)))).length)
+      expect(contains(a, outer, third) && !contains(a, outer, rational(5))).toBe(true)
+    })
+  })
+
+  it('take integers of any size', async () => {
+    const a = await createArithmetic('mpfr', 64)
+    for (const bits of [31n, 32n, 64n, 4_000n, 20_000n]) {
+      for (const n of [1n << bits, -(1n << bits), (1n << bits) - 1n, 3n ** bits]) {
+        const q = { num: n, den: 5n }
+        expect(contains(a, a.rational(q), q)).toBe(true)
+        expect(contains(a, a.scale(a.rational({ num: 1n, den: n < 0n ? -n : n }), { num: n, den: 1n << bits }), rational(n < 0n ? -1n : 1n, 1n << bits))).toBe(true)
+      }
+    }
+  })
 })
 
 describe('two precisions', () => {

@@ -7,7 +7,7 @@ export const UP = mpfr_rnd_t.MPFR_RNDU
 /** A float of MPFR: an address in the library's memory. */
 export type Pointer = number
 
-/** One frame's numbers carry its count, so that none is used after its memory was given to another. */
+/** The numbers of a frame carry its count, so that none is used after its memory was given to another. */
 export interface Interval {
   readonly lo: Pointer
   readonly hi: Pointer
@@ -17,23 +17,40 @@ export interface Interval {
 /** Numbers that live until the arithmetic is collected. */
 const KEPT = 0
 
+/** Room for the digits of one integer at first, in bytes. */
+const LEAST_TEXT = 4_096
+
 /** Gives the memory of an arithmetic's floats back when nobody holds the arithmetic any more. */
-const collected = new FinalizationRegistry<{ g: GMPFunctions; all: Pointer[]; integer: number }>(({ g, all, integer }) => {
+const collected = new FinalizationRegistry<Held>(({ g, all, integer, text }) => {
   g.mpz_clear(integer)
   g.mpz_t_free(integer)
+  g.free(text.address)
   for (const pointer of all) {
     g.mpfr_clear(pointer)
     g.mpfr_t_free(pointer)
   }
 })
 
-/** The memory behind intervals of one precision, and the ways in and out of it. Frames reuse the floats of earlier frames. */
+interface Held {
+  readonly g: GMPFunctions
+  readonly all: Pointer[]
+  readonly integer: number
+  /** Where the digits of an integer are handed over. */
+  readonly text: { address: number; size: number }
+}
+
+/**
+ * The memory behind intervals of one precision, and the ways in and out of it. Frames lie on a stack: one that ends gives its floats
+ * to the next, and those of the frames around it stay.
+ */
 export class MpfrStore {
   readonly g: GMPFunctions
   readonly precision: number
   private readonly all: Pointer[] = []
   private readonly pool: Pointer[] = []
   private readonly integer: number
+  private readonly text: Held['text']
+  private readonly alive = new Set([KEPT])
   private next = 0
   private epoch = KEPT
   private lastEpoch = KEPT
@@ -48,7 +65,8 @@ export class MpfrStore {
     this.precision = precision
     this.integer = g.mpz_t()
     g.mpz_init(this.integer)
-    collected.register(this, { g, all: this.all, integer: this.integer })
+    this.text = { address: g.malloc(LEAST_TEXT), size: LEAST_TEXT }
+    collected.register(this, { g, all: this.all, integer: this.integer, text: this.text })
   }
 
   /** A float of `bits` bits for good. */
@@ -69,17 +87,19 @@ export class MpfrStore {
 
   /** Throws where the number's frame is over. */
   check(x: { readonly epoch: number }): void {
-    if (x.epoch !== KEPT && x.epoch !== this.epoch) throw new Error('a number is used after its frame has ended')
+    if (x.epoch !== this.epoch && !this.alive.has(x.epoch)) throw new Error('a number is used after its frame has ended')
   }
 
   frame<T>(work: () => T): T {
-    if (this.epoch !== KEPT) return work()
+    const [outer, start] = [this.epoch, this.next]
     this.epoch = ++this.lastEpoch
-    this.next = 0
+    this.alive.add(this.epoch)
     try {
       return work()
     } finally {
-      this.epoch = KEPT
+      this.alive.delete(this.epoch)
+      this.epoch = outer
+      this.next = start
     }
   }
 
@@ -95,7 +115,18 @@ export class MpfrStore {
 
   /** The library's big integer with this value, until the next call. */
   big(n: bigint): number {
-    this.g.mpz_set_string(this.integer, n.toString(16), 16)
+    const digits = n.toString(16)
+    const { g, text } = this
+    if (digits.length >= text.size) {
+      g.free(text.address)
+      text.size = 2 * digits.length
+      text.address = g.malloc(text.size)
+    }
+    // By hand: an encoder costs several times the conversion itself. The view is taken anew, as memory moves when it grows.
+    const memory = g.mem
+    for (let i = 0; i < digits.length; i++) memory[text.address + i] = digits.charCodeAt(i)
+    memory[text.address + digits.length] = 0
+    g.mpz_set_str(this.integer, text.address, 16)
     return this.integer
   }
 

@@ -6,10 +6,11 @@ interface MpfrVector extends Vector<Interval> {
   readonly items: readonly Interval[]
 }
 
-/** Weights as floats that hold them exactly, with their signs. */
+/** Weights as floats that hold them exactly, with their signs; `ones` where all are 1. */
 interface ExactWeights {
   readonly floats: readonly Pointer[]
   readonly signs: readonly number[]
+  readonly ones: boolean
 }
 
 /** Operations on many numbers in [0, 1], for the MPFR arithmetic (A-8): end points are not negative, so that products need no cases. */
@@ -28,7 +29,8 @@ export function mpfrVectors(
         g.mpfr_set_z(pointer, store.big(n), DOWN)
         return pointer
       })
-      found = { floats, signs: weights.numerators.map((n) => (n < 0n ? -1 : n > 0n ? 1 : 0)) }
+      const signs = weights.numerators.map((n) => (n < 0n ? -1 : n > 0n ? 1 : 0))
+      found = { floats, signs, ones: weights.numerators.every((n) => n === 1n) }
       known.set(weights, found)
     }
     return found
@@ -61,7 +63,7 @@ export function mpfrVectors(
     item: (v, index) => (v as MpfrVector).items[index],
     dot: (weights, v) => {
       const { items } = v as MpfrVector
-      const { floats, signs } = exactWeights(weights)
+      const { floats, signs, ones } = exactWeights(weights)
       const total = store.interval()
       g.mpfr_set_zero(total.lo, 1)
       g.mpfr_set_zero(total.hi, 1)
@@ -69,9 +71,15 @@ export function mpfrVectors(
         if (signs[i] === 0) continue
         store.check(items[i])
         const { lo, hi } = items[i]
+        if (ones) {
+          g.mpfr_add(total.lo, total.lo, lo, DOWN)
+          g.mpfr_add(total.hi, total.hi, hi, UP)
+          continue
+        }
         g.mpfr_fma(total.lo, floats[i], signs[i] > 0 ? lo : hi, total.lo, DOWN)
         g.mpfr_fma(total.hi, floats[i], signs[i] > 0 ? hi : lo, total.hi, UP)
       }
+      if (weights.divisor === 1n) return total
       const divisor = store.big(weights.divisor)
       g.mpfr_div_z(total.lo, total.lo, divisor, DOWN)
       g.mpfr_div_z(total.hi, total.hi, divisor, UP)

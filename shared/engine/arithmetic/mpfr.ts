@@ -1,11 +1,17 @@
 import type { mpfr_rnd_t } from 'gmp-wasm'
 import type { Arithmetic } from './arithmetic.ts'
+import { bitLength } from './integers.ts'
 import { DOWN, type Interval, MpfrStore, type Pointer, UP } from './mpfr-store.ts'
 import { mpfrVectors } from './mpfr-vectors.ts'
 import type { Rational } from './rational.ts'
 
 /** What the library takes as a machine integer. */
 const SMALL = 1n << 31n
+
+/** n with 2^n = den, null where there is none. */
+function powerOfTwo(den: bigint): number | null {
+  return (den & (den - 1n)) === 0n ? bitLength(den) - 1 : null
+}
 
 /**
  * Intervals with end points by MPFR, whose results are correctly rounded: every operation is done once rounded down and once
@@ -30,7 +36,11 @@ export async function createMpfrArithmetic(precision: number): Promise<Arithmeti
     else g.mpfr_set_z(to, store.big(num), direction)
     if (den === 1n) return
     if (den < SMALL) g.mpfr_div_ui(to, to, Number(den), direction)
-    else g.mpfr_div_z(to, to, store.big(den), direction)
+    else {
+      const twos = powerOfTwo(den)
+      if (twos === null) g.mpfr_div_z(to, to, store.big(den), direction)
+      else g.mpfr_div_2ui(to, to, twos, direction)
+    }
   }
 
   const between = (lo: Rational, hi: Rational): Interval =>
@@ -87,6 +97,17 @@ export async function createMpfrArithmetic(precision: number): Promise<Arithmeti
           g.mpfr_mul_z(hi, high, big, UP)
         }
         if (den === 1n) return
+        if (den < SMALL) {
+          g.mpfr_div_ui(lo, lo, Number(den), DOWN)
+          g.mpfr_div_ui(hi, hi, Number(den), UP)
+          return
+        }
+        const twos = powerOfTwo(den)
+        if (twos !== null) {
+          g.mpfr_div_2ui(lo, lo, twos, DOWN)
+          g.mpfr_div_2ui(hi, hi, twos, UP)
+          return
+        }
         const big = store.big(den)
         g.mpfr_div_z(lo, lo, big, DOWN)
         g.mpfr_div_z(hi, hi, big, UP)
