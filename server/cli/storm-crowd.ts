@@ -4,19 +4,9 @@ import { PERSON_ACTS, type PersonAct } from '../../shared/claim-life.ts'
 import { ROLES, type Role } from '../../shared/permissions.ts'
 import type { Claim, Desk } from '../../shared/schemas/claim.ts'
 import { change } from '../db.ts'
+import { dice } from './dice.ts'
 
 const PASSWORD = 'rain from all sides at once'
-
-/** Whole numbers by chance, the same for the same seed (mulberry32); which of them a person gets depends on who is quicker. */
-export function dice(seed: number): (below: number) => number {
-  let state = seed
-  return (below) => {
-    state = (state + 0x6d2b79f5) | 0
-    let mixed = Math.imul(state ^ (state >>> 15), 1 | state)
-    mixed = (mixed + Math.imul(mixed ^ (mixed >>> 7), 61 | mixed)) ^ mixed
-    return ((mixed ^ (mixed >>> 14)) >>> 0) % below
-  }
-}
 
 export interface Person {
   id: string

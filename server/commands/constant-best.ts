@@ -7,7 +7,8 @@ import { PUBLIC } from '../queries/audience.ts'
 /** States from the beginning of a claim's way to its end at the register; the furthest one stands for the constant. */
 const WAY: readonly (ClaimState | 'stated')[] = ['stated', 'withdrawn', 'draft', 'returned', 'submitted', 'in-review', 'endorsed', 'superseded', 'suspended', 'signed']
 
-interface ClaimRow {
+/** What of a claim decides how the register shows its constant. */
+export interface ClaimStanding {
   group_id: string
   public: boolean
   state: ClaimState
@@ -19,19 +20,21 @@ interface ClaimRow {
 }
 
 /** The intersection of the signed enclosures among these claims, with its digits. */
-function bestOf(claims: readonly ClaimRow[]) {
+export function bestOf(claims: readonly ClaimStanding[]) {
   const enclosures = claims.flatMap(({ signed, state, lo, hi }) => (signed && state === 'signed' && lo !== null && hi !== null ? [{ lo, hi }] : []))
   const best = intersection(enclosures)
   return best ? { ...best, ...digitsOf(best) } : { lo: null, hi: null, truncated: null, rounded: null }
 }
 
-const furthest = (claims: readonly ClaimRow[]): ClaimState | 'stated' =>
+const furthest = (claims: readonly ClaimStanding[]): ClaimState | 'stated' =>
   claims.reduce<ClaimState | 'stated'>((state, claim) => (WAY.indexOf(claim.state) > WAY.indexOf(state) ? claim.state : state), 'stated')
 
+type Entry = ReturnType<typeof entryOf>
+
 /** What one audience sees of a constant, from the claims that are open to it. */
-function entryOf(claims: readonly ClaimRow[]) {
+function entryOf(claims: readonly ClaimStanding[]) {
   const entered = claims.filter((claim) => claim.signed)
-  const newest = entered.reduce<ClaimRow | null>((latest, claim) => (latest === null || claim.since > latest.since ? claim : latest), null)
+  const newest = entered.reduce<ClaimStanding | null>((latest, claim) => (latest === null || claim.since > latest.since ? claim : latest), null)
   return {
     groupId: newest?.group_id ?? null,
     state: furthest(claims),
@@ -39,6 +42,19 @@ function entryOf(claims: readonly ClaimRow[]) {
     inConflict: claims.some((claim) => claim.in_conflict),
     ...bestOf(claims),
   }
+}
+
+/** What everybody sees of a constant: audiences with the entry that they share; `null` where a constant is not open to readers without account. */
+export function entriesOf(claims: readonly ClaimStanding[], groups: readonly string[]): { audiences: string[]; entry: Entry | null }[] {
+  const published = claims.filter((claim) => claim.public && claim.signed)
+  const shared = entryOf(published)
+  // Groups without a claim of their own here all see the same.
+  const own = new Set(claims.map((claim) => claim.group_id))
+  return [
+    { audiences: [PUBLIC], entry: published.length > 0 ? shared : null },
+    { audiences: groups.filter((id) => !own.has(id)), entry: shared },
+    ...[...own].map((id) => ({ audiences: [id], entry: entryOf(claims.filter((claim) => claim.group_id === id || (claim.public && claim.signed))) })),
+  ]
 }
 
 /**
@@ -49,34 +65,28 @@ function entryOf(claims: readonly ClaimRow[]) {
 export async function refreshBest(transaction: Transaction, constantId: string): Promise<void> {
   // Two who change claims of one constant at once come one after the other here, and the second sees what the first has done.
   await select('SELECT id FROM constants WHERE id = $id FOR UPDATE', { id: constantId }, transaction)
-  const claims = await select<ClaimRow>(
+  const claims = await select<ClaimStanding>(
     `SELECT c.group_id, g.public, c.state, c.lo, c.hi, c.signed_at IS NOT NULL AS signed, c.since,
             EXISTS (SELECT 1 FROM conflicts x WHERE (x.claim_id = c.id OR x.signed_claim_id = c.id) AND x.closed_at IS NULL) AS in_conflict
      FROM claims c JOIN groups g ON g.id = c.group_id WHERE c.constant_id = $id AND c.other_constant_id IS NULL`,
     { id: constantId },
     transaction,
   )
-  const published = claims.filter((claim) => claim.public && claim.signed)
   const best = bestOf(claims)
   await change(
     'UPDATE constants SET best_lo = $lo, best_hi = $hi, best_digits = $truncated WHERE id = $id',
     { id: constantId, lo: best.lo, hi: best.hi, truncated: best.truncated },
     transaction,
   )
-  if (published.length > 0) await writeEntry(transaction, constantId, [PUBLIC], entryOf(published))
-  else await change('DELETE FROM register_entries WHERE constant_id = $id AND audience = $audience', { id: constantId, audience: PUBLIC }, transaction)
-
-  // Groups without a claim of their own here all see the same.
-  const own = new Set(claims.map((claim) => claim.group_id))
   const groups = await select<{ id: string }>('SELECT id FROM groups', {}, transaction)
-  await writeEntry(transaction, constantId, groups.map(({ id }) => id).filter((id) => !own.has(id)), entryOf(published))
-  for (const id of own) {
-    await writeEntry(transaction, constantId, [id], entryOf(claims.filter((claim) => claim.group_id === id || (claim.public && claim.signed))))
+  for (const { audiences, entry } of entriesOf(claims, groups.map(({ id }) => id))) {
+    if (entry) await writeEntry(transaction, constantId, audiences, entry)
+    else await change('DELETE FROM register_entries WHERE constant_id = $id AND audience = ANY($audiences::uuid[])', { id: constantId, audiences }, transaction)
   }
 }
 
 /** Writes what audiences see; the time of change moves only where something did change. */
-async function writeEntry(transaction: Transaction, constantId: string, audiences: string[], entry: ReturnType<typeof entryOf>): Promise<void> {
+async function writeEntry(transaction: Transaction, constantId: string, audiences: string[], entry: Entry): Promise<void> {
   if (audiences.length === 0) return
   await change(
     `INSERT INTO register_entries AS e (constant_id, audience, number, set_kind, k, exclude, power, log_power, group_id, state, entered_state, in_conflict, best_lo, best_hi, digits_truncated, digits_rounded)
