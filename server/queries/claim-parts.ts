@@ -67,7 +67,7 @@ export interface RecheckRow {
   id: string
   started_by: string
   starter_name: string
-  state: string
+  state: Claim['rechecks'][number]['state']
   progress: string
   method: Claim['rechecks'][number]['method']
   arithmetic: Claim['rechecks'][number]['arithmetic']
@@ -104,8 +104,8 @@ export interface ConflictRow {
 export const conflictsOfClaim = (claimId: string): Promise<ConflictRow[]> =>
   select(
     `SELECT other.id AS other_id, c.number, other.ordinal, k.opened_at, k.closed_at, other.signed_at IS NOT NULL AND g.public AS open, other.group_id AS other_group
-     FROM conflicts k JOIN claims other ON other.id IN (k.claim_id, k.signed_claim_id) AND other.id <> $claimId JOIN constants c ON c.id = other.constant_id JOIN groups g ON g.id = other.group_id
-     WHERE $claimId IN (k.claim_id, k.signed_claim_id) ORDER BY k.opened_at, k.id`,
+     FROM conflicts k JOIN claims other ON other.id = CASE WHEN k.claim_id = $claimId THEN k.signed_claim_id ELSE k.claim_id END JOIN constants c ON c.id = other.constant_id JOIN groups g ON g.id = other.group_id
+     WHERE k.claim_id = $claimId OR k.signed_claim_id = $claimId ORDER BY k.opened_at, k.id`,
     { claimId },
   )
 

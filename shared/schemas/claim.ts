@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import { constantNumber, decimalText, digest, enclosure, id, instant, longText, pageOf, pageQuery, personRef } from './common.ts'
 import { definitionView } from './definition.ts'
-import { arithmetic, method, outcome } from './run.ts'
+import { arithmetic, method, outcome, runState } from './run.ts'
 
 /** A claim in an address: its id, or its number as MST-0042-1. */
 export const claimReference = z.union([id, z.string().regex(/^MST-\d{4,9}-\d{1,6}$/, 'write the number of a claim such as MST-0042-1')])
@@ -118,7 +118,7 @@ export const recheckView = z.object({
   runId: id,
   /** Null for readers outside the review. */
   startedBy: personRef.nullable(),
-  state: z.string(),
+  state: runState,
   progress: z.number(),
   method,
   arithmetic,
@@ -203,5 +203,11 @@ export const deskItem = z.object({
   since: instant,
   text: z.string(),
 })
-export const desk = z.object({ researcher: z.array(deskItem), referee: z.array(deskItem), lead: z.array(deskItem) })
+export const desk = z.object({
+  researcher: z.array(deskItem),
+  referee: z.array(deskItem),
+  lead: z.array(deskItem),
+  /** How much waits in each part in all: the lists hold what has waited longest. */
+  total: z.object({ researcher: z.number().int(), referee: z.number().int(), lead: z.number().int() }),
+})
 export type Desk = z.infer<typeof desk>
