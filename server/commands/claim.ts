@@ -59,7 +59,7 @@ export async function resubmitClaim(member: SignedInMember, id: string, { versio
   await actOnClaim(member, id, 'resubmit', { version }, async (context) => {
     const { transaction, claim, tell } = context
     await renew(context, {})
-    await tell('answer-given', await refereesAtWork(claim.id, transaction), { author: member.name, text: remark })
+    await tell('claim-resubmitted', await refereesAtWork(claim.id, transaction), { author: member.name, remark })
     return { reason: remark }
   })
 }

@@ -8,6 +8,8 @@ export interface MailData {
   'referee-declined': ClaimMail & { referee: string; reason: string }
   'objection-raised': ClaimMail & { referee: string; text: string }
   'answer-given': ClaimMail & { author: string; text: string }
+  /** To the referees at work: a returned claim is theirs again. */
+  'claim-resubmitted': ClaimMail & { author: string; remark: string }
   /** To the leads: endorsed, please sign. */
   'sign-request': ClaimMail & { author: string; confirmations: number }
   'claim-signed': ClaimMail & { lead: string }

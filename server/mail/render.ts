@@ -1,6 +1,7 @@
 import type { MailData, MailTemplate } from './catalogue.ts'
 import { renderContent, type MailContent, type RenderedMail } from './layout.ts'
 import { answerGiven } from './templates/answer-given.ts'
+import { claimResubmitted } from './templates/claim-resubmitted.ts'
 import { claimReturned } from './templates/claim-returned.ts'
 import { claimSigned } from './templates/claim-signed.ts'
 import { claimSubmitted } from './templates/claim-submitted.ts'
@@ -22,6 +23,7 @@ const templates: { [T in MailTemplate]: (data: MailData[T]) => MailContent } = {
   'referee-declined': refereeDeclined,
   'objection-raised': objectionRaised,
   'answer-given': answerGiven,
+  'claim-resubmitted': claimResubmitted,
   'sign-request': signRequest,
   'claim-signed': claimSigned,
   'claim-returned': claimReturned,

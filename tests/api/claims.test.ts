@@ -144,6 +144,7 @@ describe('from draft to the register', () => {
     expect(await lastMailTo(cast.referee.email)).toMatchObject({ template: 'answer-given', text: expect.stringContaining('See the budget.') })
     const again = await act(author!, 'resubmit', { version: (await author!.get(`/api/v1/claims/${slug}`)).body.version, remark: 'answered' })
     expect(again.state).toBe('in-review')
+    expect(await lastMailTo(cast.referee.email)).toMatchObject({ template: 'claim-resubmitted', text: expect.stringContaining('answered') })
     const settled = await act(referee!, 'settle', { objectionId, outcome: 'settled', text: 'Fine.' })
     const confirmed = await act(referee!, 'confirm', { version: settled.version, remark: 'All checked.', checklist: [{ item: 'Bound R-1', checked: true }] })
     expect(confirmed).toMatchObject({ state: 'in-review', confirmations: { have: 1, need: 1, recheckNeeded: true, recheckDone: false }, next: 'a referee: recheck by other arithmetic or another method' })
