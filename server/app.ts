@@ -7,6 +7,8 @@ import { errorHandler, unknownAddress } from './middleware/error-handler.ts'
 import { rateLimit } from './middleware/rate-limit.ts'
 import { requestLog } from './middleware/request-log.ts'
 import { staticClient } from './middleware/static-client.ts'
+import { pages } from './pages/pages.ts'
+import { robots } from './pages/robots.ts'
 import { projectRoot } from './project-root.ts'
 import { api } from './routes/api.ts'
 import { health } from './routes/health.ts'
@@ -17,10 +19,12 @@ const JSON_LIMIT = '1mb'
 interface AppOptions {
   /** Requests a minute from one address. */
   ratePerMinute?: number
+  /** Where the built client lies. */
+  clientFolder?: string
 }
 
 /** Builds the web application; whoever calls it decides where it listens. */
-export function createApp({ ratePerMinute = env.RATE_LIMIT }: AppOptions = {}): Express {
+export function createApp({ ratePerMinute = env.RATE_LIMIT, clientFolder = join(projectRoot, 'dist', 'client') }: AppOptions = {}): Express {
   const app = express()
   app.disable('x-powered-by')
   app.set('trust proxy', env.TRUST_PROXY)
@@ -38,7 +42,7 @@ export function createApp({ ratePerMinute = env.RATE_LIMIT }: AppOptions = {}): 
   app.use('/health', health)
   app.use('/api/v1', rateLimit(ratePerMinute), csrf, express.json({ limit: JSON_LIMIT }), api())
   app.use('/api', unknownAddress)
-  app.use(staticClient(join(projectRoot, 'dist', 'client')))
+  app.use(robots, staticClient(clientFolder), pages(join(clientFolder, 'index.html'), ratePerMinute))
   app.use(unknownAddress)
   app.use(errorHandler)
   return app

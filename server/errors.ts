@@ -35,11 +35,16 @@ export class Problem extends Error {
     this.headers = more.headers ?? {}
   }
 
+  /** What kind of refusal it is, in words. */
+  get title(): string {
+    return TITLES[this.status] ?? 'Refused'
+  }
+
   /** The body that is sent. */
   body(requestId: string | undefined): ProblemBody {
     return {
       type: 'about:blank',
-      title: TITLES[this.status] ?? 'Refused',
+      title: this.title,
       status: this.status,
       code: this.code,
       detail: this.message,

@@ -2,6 +2,7 @@
 import { createRoot } from 'react-dom/client'
 import { createMemoryRouter, RouterProvider } from 'react-router-dom'
 import '../src/styles.css'
+import '../src/print.css'
 import { Masthead } from '../src/app/masthead.tsx'
 import { SkipLink } from '../src/app/skip-link.tsx'
 import { ComponentsPage } from './components.tsx'

@@ -5,9 +5,15 @@ import { sessionOfCookie } from '../auth/session-cookie.ts'
 import { tokenHash } from '../auth/tokens.ts'
 import { forbidden, Problem, unauthenticated } from '../errors.ts'
 import { readerBySession, readerByToken } from '../queries/reader.ts'
-import './request.ts'
+import type { SignedInMember } from './request.ts'
 
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS'])
+
+/** The member whose session a Cookie header names, if it stands. */
+export async function readerOfCookie(header: string | undefined): Promise<SignedInMember | undefined> {
+  const sessionId = sessionOfCookie(header)
+  return sessionId === undefined ? undefined : readerBySession(sessionId)
+}
 
 /** Finds out who asks and sets `req.reader`; a request without cookie or token is a reader without account. */
 export const authenticate: RequestHandler = async (req, _res, next) => {
@@ -23,8 +29,7 @@ export const authenticate: RequestHandler = async (req, _res, next) => {
     req.reader = bearer === undefined ? undefined : await readerByToken(tokenHash(bearer))
     if (!req.reader) throw new Problem(401, 'token_refused', 'This access token is unknown, expired or revoked. Make a new one on your account page.', { headers: { 'WWW-Authenticate': 'Bearer error="invalid_token"' } })
   } else {
-    const sessionId = sessionOfCookie(req.headers.cookie)
-    req.reader = sessionId === undefined ? undefined : await readerBySession(sessionId)
+    req.reader = await readerOfCookie(req.headers.cookie)
   }
   next()
 }

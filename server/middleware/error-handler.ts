@@ -26,7 +26,8 @@ function uploadProblem(error: MulterError): Problem {
 /** Sequelize wraps every lost or refused connection in one of these. */
 const isOutage = (error: unknown): boolean => error instanceof Error && /^SequelizeConnection|^SequelizeHostNotReachable/.test(error.name)
 
-function toProblem(error: unknown): Problem {
+/** What went wrong, in the words of a problem. */
+export function toProblem(error: unknown): Problem {
   if (error instanceof Problem) return error
   if (error instanceof MulterError) return uploadProblem(error)
   if (isOutage(error)) return unavailable('The database does not answer. Nothing was changed; try again shortly.')

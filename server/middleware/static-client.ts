@@ -13,16 +13,12 @@ const preferGzip = (folder: string): RequestHandler => (req, res, next) => {
   next()
 }
 
-/** Serves the built client: hashed assets for good, and its page under every address that is not a file, so that history routes work. */
+/** Serves the files of the built client, hashed assets for good. Its page is for pages/pages.ts to fill, and has no address of its own. */
 export function staticClient(folder: string): Router {
   const router = Router()
   const assets = join(folder, 'assets')
-  const page = join(folder, 'index.html')
   router.use('/assets', preferGzip(assets), express.static(assets, { immutable: true, maxAge: '1y', index: false, fallthrough: false }))
+  router.get('/index.html', (_req, _res, next) => next('router'))
   router.use(express.static(folder, { index: false, maxAge: 0 }))
-  router.get(/.*/, (req, res, next) => {
-    if (!req.accepts('html') || !existsSync(page)) return next()
-    res.set('Cache-Control', 'no-cache').sendFile(page)
-  })
   return router
 }

@@ -1,10 +1,14 @@
 import { z } from 'zod'
+import { parseClaimNumber } from '../constant-number.ts'
 import { constantNumber, decimalText, digest, enclosure, id, instant, longText, pageOf, pageQuery, personRef } from './common.ts'
 import { definitionView } from './definition.ts'
 import { arithmetic, method, outcome, runState } from './run.ts'
 
 /** A claim in an address: its id, or its number as MST-0042-1. */
-export const claimReference = z.union([id, z.string().regex(/^MST-\d{4,9}-\d{1,6}$/, 'write the number of a claim such as MST-0042-1')])
+export const claimReference = z.union([
+  id,
+  z.string().regex(/^MST-\d{4,9}-\d{1,6}$/, 'write the number of a claim such as MST-0042-1').refine((text) => parseClaimNumber(text) !== null, 'is not how the number of a claim is written, such as MST-0042-1'),
+])
 
 export const claimState = z.enum(['draft', 'submitted', 'in-review', 'returned', 'endorsed', 'signed', 'superseded', 'suspended', 'withdrawn'])
 export type ClaimState = z.infer<typeof claimState>

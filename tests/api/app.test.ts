@@ -2,12 +2,9 @@ import { mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { gzipSync } from 'node:zlib'
-import express from 'express'
 import request from 'supertest'
 import { afterAll, describe, expect, it } from 'vitest'
 import { createApp } from '../../server/app.ts'
-import { errorHandler, unknownAddress } from '../../server/middleware/error-handler.ts'
-import { staticClient } from '../../server/middleware/static-client.ts'
 
 describe('the web application', () => {
   const app = createApp()
@@ -43,16 +40,8 @@ describe('the built client', () => {
   writeFileSync(join(folder, 'assets', 'main-abc.js'), script)
   writeFileSync(join(folder, 'assets', 'main-abc.js.gz'), gzipSync(script))
   writeFileSync(join(folder, '.stamp'), 'not for readers')
-  const app = express().use(staticClient(folder), unknownAddress).use(errorHandler)
+  const app = createApp({ clientFolder: folder })
   afterAll(() => rmSync(folder, { recursive: true }))
-
-  it('is served under every address of a page, so that a shared link opens', async () => {
-    for (const path of ['/', '/constants/MST-0042', '/runs?page=2']) {
-      const response = await request(app).get(path).set('Accept', 'text/html').expect(200)
-      expect(response.text).toContain('<title>Merestone</title>')
-      expect(response.headers['cache-control']).toBe('no-cache')
-    }
-  })
 
   it('comes compressed to whoever takes that, and whole to whoever does not', async () => {
     const small = await request(app).get('/assets/main-abc.js').set('Accept-Encoding', 'gzip').expect(200)
