@@ -154,11 +154,13 @@ async function actOn(world: World, person: Person, blindly: boolean): Promise<vo
   await perform(world, person, act, id, claim)
 }
 
+const itemsOf = ({ researcher, referee, lead }: Desk) => [...researcher, ...referee, ...lead]
+
 /** A claim that waits for this person, or any of the crowd's. */
 async function chooseClaim(world: World, person: Person, blindly: boolean): Promise<string | undefined> {
   if (blindly || world.roll(3) === 0) return oneOf(world, world.claims)
   const { status, body } = await send(world, person, 'look at desk', 'GET', '/desk')
-  return status === 200 ? oneOf(world, Object.values(body as Desk).flat())?.claim.id : undefined
+  return status === 200 ? oneOf(world, itemsOf(body as Desk))?.claim.id : undefined
 }
 
 async function perform(world: World, person: Person, act: PersonAct, id: string, claim: Claim | undefined): Promise<void> {

@@ -33,8 +33,9 @@ export function deskText({ kind, count, who }: Pick<WaitingRow, 'kind' | 'count'
 
 export function presentDesk(waiting: readonly WaitingRow[], claims: readonly ClaimRow[]): Desk {
   const byId = new Map(claims.map((claim) => [claim.id, presentClaimSummary(claim)]))
-  const desk: Desk = { researcher: [], referee: [], lead: [] }
+  const desk: Desk = { researcher: [], referee: [], lead: [], total: { researcher: 0, referee: 0, lead: 0 } }
   for (const row of waiting) {
+    desk.total[row.part] = row.in_part
     const claim = byId.get(row.claim_id)
     if (claim) desk[row.part].push({ kind: row.kind, claim, since: row.since.toISOString(), text: deskText(row) })
   }

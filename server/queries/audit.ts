@@ -44,7 +44,8 @@ function where(groupId: string, filters: Filters): { clause: string; bind: Bind 
   if (filters.from !== undefined) add('at >= $from', 'from', filters.from)
   if (filters.to !== undefined) add('at < $to', 'to', filters.to)
   if (filters.text !== undefined && filters.text !== '') {
-    add('(subject_label ILIKE $text OR actor_name ILIKE $text OR reason ILIKE $text OR digest ILIKE $text)', 'text', `%${literal(filters.text)}%`)
+    add('(subject_label ILIKE $text OR actor_name ILIKE $text OR reason ILIKE $text OR digest LIKE $digest)', 'text', `%${literal(filters.text)}%`)
+    bind.digest = `${literal(filters.text.toLowerCase())}%`
   }
   return { clause: clauses.join(' AND '), bind }
 }

@@ -58,8 +58,8 @@ const FINISHED_RECHECKS = `
 
 const FACTS = `
   SELECT o.unanswered, o.unsettled, o.own_unsettled, a.own_confirmed, a.active_referees, a.confirmations, g.confirmations_needed, g.recheck_needed, x.*,
-    EXISTS (SELECT 1 FROM conflicts k JOIN claims other ON other.id IN (k.claim_id, k.signed_claim_id) AND other.id <> c.id
-            WHERE c.id IN (k.claim_id, k.signed_claim_id) AND k.closed_at IS NULL AND other.state IN ('signed', 'superseded')) AS contradicted,
+    EXISTS (SELECT 1 FROM conflicts k JOIN claims other ON other.id = CASE WHEN k.claim_id = c.id THEN k.signed_claim_id ELSE k.claim_id END
+            WHERE (k.claim_id = c.id OR k.signed_claim_id = c.id) AND k.closed_at IS NULL AND other.state IN ('signed', 'superseded')) AS contradicted,
     EXISTS (SELECT 1 FROM claims n WHERE n.constant_id = c.constant_id AND n.id <> c.id AND n.state = 'signed' AND n.lo >= c.lo AND n.hi <= c.hi AND n.hi - n.lo < c.hi - c.lo) AS narrower_signed
   FROM claims c JOIN groups g ON g.id = c.group_id
   CROSS JOIN LATERAL (

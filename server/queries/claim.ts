@@ -38,50 +38,64 @@ export interface ClaimRow {
 const COLUMNS = `cl.id, cl.kind, c.number, cl.ordinal, o.number AS other_number, CASE WHEN octet_length(c.definition::text) < 4000 THEN c.definition END AS definition,
   c.latex, c.text, c.aliases, cl.lo, cl.hi, cl.digits_truncated, cl.digits_rounded, cl.state, cl.repeated_here, cl.author_id, m.name AS author_name,
   cl.group_id, g.name AS group_name, cl.since, cl.signed_at, cl.since::text AS at,
-  EXISTS (SELECT 1 FROM conflicts x WHERE cl.id IN (x.claim_id, x.signed_claim_id) AND x.closed_at IS NULL) AS in_conflict`
+  EXISTS (SELECT 1 FROM conflicts x WHERE (x.claim_id = cl.id OR x.signed_claim_id = cl.id) AND x.closed_at IS NULL) AS in_conflict`
 const FROM = `FROM claims cl JOIN constants c ON c.id = cl.constant_id LEFT JOIN constants o ON o.id = cl.other_constant_id
   JOIN members m ON m.id = cl.author_id JOIN groups g ON g.id = cl.group_id`
 
-/** The claims that are open to a reader, as `viewOf` of policies/claim.ts says of one. */
-function openTo(reader: Reader): { condition: string; bind: Bind } {
-  if (!reader) return { condition: 'cl.signed_at IS NOT NULL AND g.public', bind: {} }
+/** Claims that were signed by groups that publish: open to everybody. */
+const PUBLISHED = 'cl.signed_at IS NOT NULL AND cl.group_id = ANY (ARRAY(SELECT id FROM groups WHERE public))'
+
+/** The ways in which claims are open to a reader, as `viewOf` of policies/claim.ts says of one. One claim can be open in several. */
+function waysOpen(reader: Reader): { ways: string[]; bind: Bind } {
+  if (!reader) return { ways: [PUBLISHED], bind: {} }
   const group = hasRight(reader.roles, 'group-work.read') ? 'cl.group_id = $group' : 'cl.group_id = $group AND cl.signed_at IS NOT NULL'
-  const assigned = `EXISTS (SELECT 1 FROM assignments s WHERE s.claim_id = cl.id AND s.referee_id = $me AND s.state <> 'declined')`
-  return { condition: `(${group} OR cl.signed_at IS NOT NULL AND g.public OR cl.author_id = $me OR ${assigned})`, bind: { me: reader.id, group: reader.groupId } }
+  const assigned = `cl.id IN (SELECT claim_id FROM assignments WHERE referee_id = $me AND state <> 'declined')`
+  return { ways: [PUBLISHED, group, 'cl.author_id = $me', assigned], bind: { me: reader.id, group: reader.groupId } }
 }
 
 /** Claims open to the reader, those that changed their state last first. */
 export async function listClaims(reader: Reader, { cursor, limit, ...query }: z.output<typeof claimQuery>): Promise<{ rows: ClaimRow[]; next: string | null }> {
+  if (query.mine && !reader) return { rows: [], next: null }
   const mark = { list: 'claims', reader: reader?.id ?? null, ...query }
-  const { condition, bind } = openTo(reader)
-  const where = [condition]
-  if (query.mine) where.push(reader ? 'cl.author_id = $me' : 'false')
+  const { ways, bind } = waysOpen(reader)
+  const where: string[] = []
   if (query.state) {
     where.push('cl.state = $state')
     bind.state = query.state
   }
   if (query.constant) {
-    where.push('$number IN (c.number, o.number)')
-    bind.number = parseConstantNumber(query.constant) ?? 0
+    where.push('(cl.constant_id = $constant OR cl.other_constant_id = $constant)')
+    bind.constant = await constantIdOf(query.constant)
   }
   if (cursor !== undefined) {
     const [at, id] = readCursor(mark, cursor)
     where.push('(cl.since, cl.id) < ($at::timestamptz, $id::uuid)')
     Object.assign(bind, { at, id })
   }
-  const rows = await select<ClaimRow>(`SELECT ${COLUMNS} ${FROM} WHERE ${where.join(' AND ')} ORDER BY cl.since DESC, cl.id DESC LIMIT $limit`, { ...bind, limit: limit + 1 })
+  // Each way has an index in the order of the list; so no more of each is read than the page can hold.
+  const pages = (query.mine ? ['cl.author_id = $me'] : ways).map((way) => `(SELECT cl.id, cl.since FROM claims cl WHERE ${[way, ...where].join(' AND ')} ORDER BY cl.since DESC, cl.id DESC LIMIT $limit)`)
+  const rows = await select<ClaimRow>(
+    `SELECT ${COLUMNS} ${FROM} WHERE cl.id IN (SELECT id FROM (${pages.join(' UNION ')}) open ORDER BY since DESC, id DESC LIMIT $limit) ORDER BY cl.since DESC, cl.id DESC`,
+    { ...bind, limit: limit + 1 },
+  )
   const page = rows.slice(0, limit)
   const last = page.at(-1)
   return { rows: page, next: rows.length > limit && last ? writeCursor(mark, [last.at, last.id]) : null }
 }
 
+/** The id of a constant by its number, or null. */
+async function constantIdOf(text: string): Promise<string | null> {
+  const row = await selectOne<{ id: string }>('SELECT id FROM constants WHERE number = $number', { number: parseConstantNumber(text) ?? 0 })
+  return row?.id ?? null
+}
+
 /** Claims of a constant that are open to the reader, orders that it is part of among them, by number. */
 export async function claimsOfConstant(reader: Reader, constantId: string): Promise<ClaimRow[]> {
-  const { condition, bind } = openTo(reader)
-  return select<ClaimRow>(`SELECT ${COLUMNS} ${FROM} WHERE ${condition} AND $constantId IN (cl.constant_id, cl.other_constant_id) ORDER BY c.number, cl.ordinal NULLS LAST, cl.created_at`, {
-    ...bind,
-    constantId,
-  })
+  const { ways, bind } = waysOpen(reader)
+  return select<ClaimRow>(
+    `SELECT ${COLUMNS} ${FROM} WHERE (${ways.join(' OR ')}) AND (cl.constant_id = $constantId OR cl.other_constant_id = $constantId) ORDER BY c.number, cl.ordinal NULLS LAST, cl.created_at`,
+    { ...bind, constantId },
+  )
 }
 
 /** Claims by id, whoever may read them. */

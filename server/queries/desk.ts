@@ -1,9 +1,9 @@
 import { hasRight } from '../../shared/permissions.ts'
 import type { Desk } from '../../shared/schemas/claim.ts'
-import { select } from '../db.ts'
+import { select, selectOne } from '../db.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 
-type Part = keyof Desk
+type Part = keyof Desk['total']
 type Kind = Desk[Part][number]['kind']
 
 /** Something that waits for a member: on which claim, since when, and a name or a number for its wording. */
@@ -14,7 +14,12 @@ export interface WaitingRow {
   since: Date
   who: string | null
   count: number
+  /** How much waits in this part in all. */
+  in_part: number
 }
+
+/** Items of one part that a desk shows: those that have waited longest. */
+export const MOST_ON_DESK = 100
 
 /** What an author is to do: finish drafts, answer objections, resubmit. */
 const RESEARCHER = `
@@ -51,24 +56,39 @@ const LEAD = [
    GROUP BY c.id`,
   `SELECT 'lead', 'sign', c.id, c.since, NULL, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'endorsed' AND c.author_id <> $me
      AND NOT EXISTS (SELECT 1 FROM assignments s WHERE s.claim_id = c.id AND s.referee_id = $me AND (s.state <> 'declined' OR s.verdict IS NOT NULL))`,
-  `SELECT 'lead', 'conflict', c.id, min(k.opened_at), NULL, count(*)::int FROM conflicts k JOIN claims c ON c.id IN (k.claim_id, k.signed_claim_id)
+  `SELECT 'lead', 'conflict', c.id, min(k.opened_at), NULL, count(*)::int FROM conflicts k CROSS JOIN LATERAL unnest(ARRAY[k.claim_id, k.signed_claim_id]) AS side (id) JOIN claims c ON c.id = side.id
    WHERE c.group_id = $group AND k.closed_at IS NULL GROUP BY c.id`,
   `SELECT 'lead', 'decide', c.id, c.since, NULL, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'suspended'`,
 ]
 
-/** Everything that waits for a member, by the rights of their roles, longest waiting first. */
-export async function waitingFor(member: Pick<SignedInMember, 'id' | 'groupId' | 'roles'>): Promise<WaitingRow[]> {
+/** What waits for a member, by the rights of their roles, as SQL; null where their roles make nothing wait. */
+function waitingSql(roles: SignedInMember['roles']): string | null {
   const parts = [
-    ...(hasRight(member.roles, 'research') ? [RESEARCHER] : []),
-    ...(hasRight(member.roles, 'referee') ? [REFEREE] : []),
-    ...(hasRight(member.roles, 'claims.decide') ? LEAD : []),
+    ...(hasRight(roles, 'research') ? [RESEARCHER] : []),
+    ...(hasRight(roles, 'referee') ? [REFEREE] : []),
+    ...(hasRight(roles, 'claims.decide') ? LEAD : []),
   ]
-  if (parts.length === 0) return []
+  if (parts.length === 0) return null
   const named = `SELECT NULL AS part, NULL AS kind, NULL::uuid AS claim_id, NULL::timestamptz AS since, NULL AS who, 0 AS count WHERE $me::uuid IS NULL OR $group::uuid IS NULL`
-  return select<WaitingRow>(`SELECT * FROM (${[named, ...parts].join(' UNION ALL ')}) w ORDER BY since, claim_id, kind`, { me: member.id, group: member.groupId })
+  return [named, ...parts].join(' UNION ALL ')
+}
+
+/** What waits for a member, longest waiting first, up to `most` items a part. */
+export async function waitingFor(member: Pick<SignedInMember, 'id' | 'groupId' | 'roles'>, most = Number.MAX_SAFE_INTEGER): Promise<WaitingRow[]> {
+  const waiting = waitingSql(member.roles)
+  if (waiting === null) return []
+  return select<WaitingRow>(
+    `SELECT part, kind, claim_id, since, who, count, in_part
+     FROM (SELECT w.*, count(*) OVER (PARTITION BY part)::int AS in_part, row_number() OVER (PARTITION BY part ORDER BY since, claim_id, kind) AS place FROM (${waiting}) w) placed
+     WHERE place <= $most ORDER BY since, claim_id, kind`,
+    { me: member.id, group: member.groupId, most },
+  )
 }
 
 /** How much waits for a member; drafts of one's own press nobody and do not count. */
 export async function deskCount(member: Pick<SignedInMember, 'id' | 'groupId' | 'roles'>): Promise<number> {
-  return (await waitingFor(member)).filter(({ kind }) => kind !== 'finish-draft').length
+  const waiting = waitingSql(member.roles)
+  if (waiting === null) return 0
+  const row = await selectOne<{ count: number }>(`SELECT count(*)::int AS count FROM (${waiting}) w WHERE kind <> 'finish-draft'`, { me: member.id, group: member.groupId })
+  return row?.count ?? 0
 }

@@ -13,17 +13,14 @@ export interface EstimateUseRow {
 /** Signed claims open to this reader whose certificates rest on one of these estimates: of each the newest, up to `most`. */
 export async function usesOfEstimates(reader: Reader, ids: string[], most: number): Promise<EstimateUseRow[]> {
   return select<EstimateUseRow>(
-    `WITH used AS MATERIALIZED (
-       SELECT r.id, u->>'id' AS estimate, u->>'usedAt' AS used_at
-       FROM runs r CROSS JOIN LATERAL jsonb_array_elements(r.outcome->'estimates') AS u
-       WHERE r.state = 'done' AND r.estimates && $ids::text[] AND u->>'id' = ANY ($ids::text[])
-     ), ranked AS (
-       SELECT used.estimate, cl.constant_id, cl.ordinal, used.used_at, cl.signed_at,
-              count(*) OVER (PARTITION BY used.estimate) AS uses, row_number() OVER (PARTITION BY used.estimate ORDER BY cl.signed_at DESC, cl.id) AS place
-       FROM used JOIN claims cl ON cl.run_id = used.id AND cl.state = 'signed' JOIN groups g ON g.id = cl.group_id AND (g.public OR g.id = $audience)
-     )
-     SELECT ranked.estimate, c.number, ranked.ordinal, ranked.used_at, ranked.uses::int
-     FROM ranked JOIN constants c ON c.id = ranked.constant_id WHERE place <= $most ORDER BY ranked.signed_at DESC, c.number`,
+    `WITH open AS MATERIALIZED (SELECT id FROM groups WHERE public OR id = $audience),
+     counted AS MATERIALIZED (
+       SELECT estimate, count(*)::int AS uses FROM estimate_uses WHERE group_id = ANY (ARRAY(SELECT id FROM open)) AND estimate = ANY ($ids::text[]) GROUP BY estimate)
+     SELECT counted.estimate, c.number, cl.ordinal, newest.used_at, counted.uses
+     FROM counted
+     CROSS JOIN LATERAL (
+       SELECT u.claim_id, u.used_at, u.signed_at FROM estimate_uses u WHERE u.estimate = counted.estimate AND u.group_id = ANY (ARRAY(SELECT id FROM open)) ORDER BY u.signed_at DESC, u.claim_id LIMIT $most) newest
+     JOIN claims cl ON cl.id = newest.claim_id JOIN constants c ON c.id = cl.constant_id ORDER BY newest.signed_at DESC, c.number`,
     { ids, audience: audienceOf(reader), most },
   )
 }

@@ -34,8 +34,10 @@ describe('the desk', () => {
     expect([author.referee, author.lead]).toEqual([[], []])
     expect(kinds((await deskOf(cast.referee)).referee)).toEqual([['review', review.id]])
     expect(kinds((await deskOf(cast.lead)).lead)).toEqual([['assign', submitted.id], ['sign', endorsed.id]])
-    expect(await deskOf(cast.colleague)).toEqual({ researcher: [], referee: [], lead: [] })
-    expect(await deskOf((await makeCast()).lead)).toEqual({ researcher: [], referee: [], lead: [] })
+    expect(author.total).toEqual({ researcher: 3, referee: 0, lead: 0 })
+    const empty = { researcher: [], referee: [], lead: [], total: { researcher: 0, referee: 0, lead: 0 } }
+    expect(await deskOf(cast.colleague)).toEqual(empty)
+    expect(await deskOf((await makeCast()).lead)).toEqual(empty)
 
     await act(cast.author, objected.id, 'answer', { objectionId: (await select<{ id: string }>('SELECT id FROM objections WHERE claim_id = $id', { id: objected.id }))[0]!.id, text: 'because' })
     expect(kinds((await deskOf(cast.author)).researcher)).toContainEqual(['resubmit', objected.id])

@@ -144,4 +144,5 @@ export const desk: Desk = {
   lead: [{ kind: 'sign', claim: { ...claimSummary, state: 'endorsed' }, since: '2026-05-05T09:00:00Z', text: 'Sign MST-0003/1' }, { kind: 'assign', claim: { ...claimSummary, id: id(43), number: 'MST-0002/1', constant: 'MST-0002', enclosure: VALUES[1] ?? null, state: 'submitted' }, since: '2026-05-01T09:00:00Z', text: 'Ask a referee for MST-0002/1' }],
   referee: [],
   researcher: [{ kind: 'answer', claim: { ...claimSummary, state: 'returned' }, since: '2026-05-05T09:00:00Z', text: 'Answer the objection to MST-0003/1' }],
+  total: { lead: 2, referee: 0, researcher: 1 },
 }

@@ -234,7 +234,7 @@ describe('desk', () => {
     expect(screen.getByText(/Nothing to referee/)).toBeInTheDocument()
   })
   test('an empty desk says what comes here', async () => {
-    await show(<DeskView desk={{ lead: [], referee: [], researcher: [] }} error={null} onRetry={nothing} roles={['researcher']} />)
+    await show(<DeskView desk={{ lead: [], referee: [], researcher: [], total: { lead: 0, referee: 0, researcher: 0 } }} error={null} onRetry={nothing} roles={['researcher']} />)
     expect(screen.getByText('Nothing waits for you.')).toBeInTheDocument()
     expect(screen.getByRole('link', { name: 'New run' })).toHaveAttribute('href', '/runs/new')
   })

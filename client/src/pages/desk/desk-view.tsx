@@ -57,7 +57,7 @@ export function DeskView({ desk, error, onRetry, roles }: DeskViewProps) {
       ) : (
         parts.map((part) => (
           <Section key={part.role} title={part.title}>
-            {desk[part.role].length === 0 ? <p className="text-soft">{part.nothing}</p> : <DeskTable caption={part.title} items={desk[part.role]} />}
+            {desk[part.role].length === 0 ? <p className="text-soft">{part.nothing}</p> : <DeskTable caption={part.title} items={desk[part.role]} total={desk.total[part.role]} />}
           </Section>
         ))
       )}
@@ -65,20 +65,23 @@ export function DeskView({ desk, error, onRetry, roles }: DeskViewProps) {
   )
 }
 
-function DeskTable({ caption, items }: { caption: string; items: Desk[Role] }) {
+function DeskTable({ caption, items, total }: { caption: string; items: Desk[Role]; total: number }) {
   return (
-    <Table
-      caption={caption}
-      rows={[...items].sort((one, other) => Date.parse(one.since) - Date.parse(other.since))}
-      rowKey={(item) => `${item.kind} ${item.claim.id}`}
-      columns={[
-        { key: 'what', header: 'What to do', plain: true, cell: (item) => <TextLink to={paths.claim(item.claim)}>{item.text}</TextLink> },
-        { key: 'claim', header: 'Claim', cell: (item) => <span className="whitespace-nowrap">{claimName(item.claim)}</span> },
-        { key: 'value', header: 'Asserts', plain: true, cell: (item) => <ClaimValue claim={item.claim} limit={20} /> },
-        { key: 'state', header: 'State', cell: (item) => <StateMark state={item.claim.state} /> },
-        { key: 'author', header: 'Author', cell: (item) => item.claim.author.name },
-        { key: 'since', header: 'Waiting', cell: (item) => <Waiting since={item.since} /> },
-      ]}
-    />
+    <>
+      {total > items.length && <p className="text-soft">The {items.length} that have waited longest, of {total.toLocaleString('en')}.</p>}
+      <Table
+        caption={caption}
+        rows={[...items].sort((one, other) => Date.parse(one.since) - Date.parse(other.since))}
+        rowKey={(item) => `${item.kind} ${item.claim.id}`}
+        columns={[
+          { key: 'what', header: 'What to do', plain: true, cell: (item) => <TextLink to={paths.claim(item.claim)}>{item.text}</TextLink> },
+          { key: 'claim', header: 'Claim', cell: (item) => <span className="whitespace-nowrap">{claimName(item.claim)}</span> },
+          { key: 'value', header: 'Asserts', plain: true, cell: (item) => <ClaimValue claim={item.claim} limit={20} /> },
+          { key: 'state', header: 'State', cell: (item) => <StateMark state={item.claim.state} /> },
+          { key: 'author', header: 'Author', cell: (item) => item.claim.author.name },
+          { key: 'since', header: 'Waiting', cell: (item) => <Waiting since={item.since} /> },
+        ]}
+      />
+    </>
   )
 }
