@@ -11,9 +11,9 @@ const PAUSE_MS = 250
 
 /**
  * Tells a client by server-sent events how a run goes: at once how it stands, then each change, and as the last event the state
- * in which it ended. Ends earlier when the client leaves.
+ * in which it ended. Ends earlier when the client leaves, and when `mayFollow` denies it: who has signed out hears nothing more.
  */
-export async function followRun(runId: string, session: Session): Promise<void> {
+export async function followRun(runId: string, session: Session, mayFollow: () => Promise<boolean>): Promise<void> {
   const gone = new AbortController()
   session.on('disconnected', () => gone.abort())
   let wake: () => void = () => undefined
@@ -32,7 +32,7 @@ export async function followRun(runId: string, session: Session): Promise<void> 
     for (let said = ''; !gone.signal.aborted; ) {
       news.come = false
       const row = await runEventOf(runId)
-      if (!row) return
+      if (!row || !(await mayFollow())) return
       const event = presentRunEvent(row)
       const text = JSON.stringify(event)
       if (text !== said) session.push(event, 'progress')

@@ -1,4 +1,4 @@
-import type { RequestHandler } from 'express'
+import type { Request, RequestHandler } from 'express'
 import { hasRight, type Right } from '../../shared/permissions.ts'
 import type { TokenScope } from '../../shared/schemas/session.ts'
 import { sessionOfCookie } from '../auth/session-cookie.ts'
@@ -9,9 +9,13 @@ import type { SignedInMember } from './request.ts'
 
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS'])
 
-/** The member whose session a Cookie header names, if it stands. */
-export async function readerOfCookie(header: string | undefined): Promise<SignedInMember | undefined> {
-  const sessionId = sessionOfCookie(header)
+/** The member whose access token or session cookie a request carries, as things stand at this moment. */
+export async function readerOf({ headers }: Request): Promise<SignedInMember | undefined> {
+  if (headers.authorization !== undefined) {
+    const bearer = /^Bearer +(\S+)$/i.exec(headers.authorization)?.[1]
+    return bearer === undefined ? undefined : readerByToken(tokenHash(bearer))
+  }
+  const sessionId = sessionOfCookie(headers.cookie)
   return sessionId === undefined ? undefined : readerBySession(sessionId)
 }
 
@@ -24,12 +28,9 @@ export const authenticate: RequestHandler = async (req, _res, next) => {
       return req.reader
     },
   })
-  const bearer = /^Bearer +(\S+)$/i.exec(req.headers.authorization ?? '')?.[1]
-  if (req.headers.authorization !== undefined) {
-    req.reader = bearer === undefined ? undefined : await readerByToken(tokenHash(bearer))
-    if (!req.reader) throw new Problem(401, 'token_refused', 'This access token is unknown, expired or revoked. Make a new one on your account page.', { headers: { 'WWW-Authenticate': 'Bearer error="invalid_token"' } })
-  } else {
-    req.reader = await readerOfCookie(req.headers.cookie)
+  req.reader = await readerOf(req)
+  if (!req.reader && req.headers.authorization !== undefined) {
+    throw new Problem(401, 'token_refused', 'This access token is unknown, expired or revoked. Make a new one on your account page.', { headers: { 'WWW-Authenticate': 'Bearer error="invalid_token"' } })
   }
   next()
 }

@@ -6,7 +6,7 @@ import { claimReference } from '../../shared/schemas/claim.ts'
 import { constantQuery } from '../../shared/schemas/constant.ts'
 import { notFound } from '../errors.ts'
 import { log } from '../log.ts'
-import { readerOfCookie } from '../middleware/authenticate.ts'
+import { readerOf } from '../middleware/authenticate.ts'
 import { toProblem } from '../middleware/error-handler.ts'
 import { rateLimit } from '../middleware/rate-limit.ts'
 import type { SignedInMember } from '../middleware/request.ts'
@@ -99,6 +99,6 @@ export function pages(index: string, ratePerMinute: number): Router {
 /** Refuses in the same words what does not exist and what is not open to whoever asks. */
 async function requireOpen(shown: Shown | undefined, req: Request, res: Response): Promise<void> {
   res.vary('Cookie').set('Cache-Control', 'private, no-cache')
-  const member = shown?.isOpenTo && (await readerOfCookie(req.headers.cookie))
+  const member = shown?.isOpenTo && (await readerOf(req))
   if (!member || !(await shown.isOpenTo?.(member, req))) throw notFound()
 }

@@ -6,11 +6,11 @@ import { runInput, runQuery } from '../../shared/schemas/run.ts'
 import { resumeRun, startRun, stopRun } from '../commands/run.ts'
 import { conflict } from '../errors.ts'
 import { followRun } from '../jobs/run-events.ts'
-import { may, signedIn, signedInFor } from '../middleware/authenticate.ts'
+import { may, readerOf, signedIn, signedInFor } from '../middleware/authenticate.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 import { validate, type Validated } from '../middleware/validate.ts'
 import { Run } from '../models/run.ts'
-import { assertCanReadRun } from '../policies/run.ts'
+import { assertCanReadRun, canReadRun } from '../policies/run.ts'
 import { presentRun, presentRunSummary } from '../presenters/run.ts'
 import { claimsOfRun, findRun, listRuns } from '../queries/run.ts'
 
@@ -49,7 +49,12 @@ run.get('/:id', signedIn, validate(one), async (req: Validated<typeof one>, res)
 run.get('/:id/events', signedIn, validate(one), async (req: Validated<typeof one>, res) => {
   await readable(req.member, req.input.id)
   const session = await createSession(req, res, { keepAlive: 15_000, headers: { 'X-Accel-Buffering': 'no' } })
-  await followRun(req.input.id, session)
+  // A stream outlives the request that asked for it: whether it may still be heard is asked before each word.
+  await followRun(req.input.id, session, async () => {
+    const reader = await readerOf(req)
+    const row = await Run.findByPk(req.input.id, { attributes: ['groupId', 'startedBy', 'state', 'purpose'] })
+    return reader !== undefined && row !== null && canReadRun(reader, row)
+  })
   res.end()
 })
 
