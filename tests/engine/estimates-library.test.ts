@@ -47,6 +47,16 @@ describe('the library of estimates', () => {
     expect(results.map(({ lastViolation }) => lastViolation)).toEqual(['1427-', '113'])
   })
 
+  it('the check sees what is false of one class, and where: the extreme mod 8', () => {
+    const sharp = estimateById('theta-class-ramare-rumely-1996-thm-2')!
+    const within = (moduli: [number, number], coefficient: string): Estimate => ({
+      ...sharp, id: coefficient, claim: { ...sharp.claim, moduli, ...twoSided(sum(term(coefficient, '1/2', '0'))) },
+    })
+    // A separate program in C, fed by primesieve, finds the largest quotient by sqrt(x) mod 8 up to 10^10 just before 11257: 1.817556.
+    const results = checkEstimates(20_000, [within([8, 8], '1.817555'), within([8, 8], '1.817557')])
+    expect(results.map(({ violations, lastViolation }) => [violations, lastViolation])).toEqual([[1, '11257-'], [0, null]])
+  })
+
   it('turns a bound into its negative', () => {
     expect(negated(sum(term('1.5', '1', '0'), term('-2', '0', '0')))).toEqual(sum(term('-1.5', '1', '0'), term('2', '0', '0')))
     expect(twoSided({ form: 'decay', coefficient: '3', logPower: '1', base: '1', rate: '1', r: '1' }).lower).toMatchObject({ coefficient: '-3' })
@@ -63,6 +73,14 @@ describe('the envelope of theta', () => {
     }
     // Section 6 of the design's table: Büthe to 10^19, partial verification of the Riemann hypothesis to 1.1e26, then Table 15.
     expect(envelope.lower.map(({ estimate }) => estimate.id)).toEqual(['theta-buthe-2018-b', 'theta-johnston-2022', 'theta-bklnw-2021-e55-k1'])
+  })
+
+  it('of a class uses what is stated for its modulus, beyond its range what is stated there', () => {
+    const ids = (cutoff: number, modulus: number) => thetaEnvelope(arithmetic, cutoff, unconditional, weight, modulus)?.lower.map(({ estimate }) => estimate.id)
+    expect(ids(1e6, 4)).toEqual(['theta-class-ramare-rumely-1996-thm-2', 'theta-class-bennett-2018-thm-1.2'])
+    expect(ids(1e6, 97)).toBeUndefined()
+    expect(ids(8e9, 97)).toEqual(['theta-class-bennett-2018-thm-1.2'])
+    expect(estimatesUsed(arithmetic, [1e6], unconditional, [weight], 97).map(({ claim }) => claim.quantity)).not.toContain('theta-class')
   })
 
   it('is nothing where no estimate reaches', () => {

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { createBallArithmetic } from '../../shared/engine/arithmetic/ball.ts'
 import { parseDecimal, upperDecimal } from '../../shared/engine/arithmetic/decimal.ts'
 import { primesUpTo } from '../../shared/engine/arithmetic/primes.ts'
-import { type Rational, compare, dyadic, parseRational, rational, subtract } from '../../shared/engine/arithmetic/rational.ts'
+import { type Rational, add, compare, dyadic, parseRational, rational, subtract } from '../../shared/engine/arithmetic/rational.ts'
 import { computeAll } from '../../shared/engine/engine.ts'
 import { primeTail } from '../../shared/engine/estimates/prime-tail.ts'
 import { ESTIMATES } from '../../shared/engine/estimates/library.ts'
@@ -135,12 +135,48 @@ describe('partial sums over the primes with their tail', () => {
     expect(both[1].enclosure).toEqual(alone.enclosure)
   })
 
-  it('meets a sum over a residue class, whose tail is only known to be part of the whole', async () => {
-    const [outcome] = await run([series({ kind: 'residue-class', modulus: 4, residue: 1, exclude: [] }, '2', '1')], { cutoff: '100000' })
+  // PARI/GP 2.15: its intnum over t of P(s0+t;q,a), made of its lfun at every character mod q.
+  it.each<[residue: number, modulus: number, power: string, logPower: string, value: string, radius: number]>([
+    [1, 4, '1', '1', '0.3221104046414303445458', 5e-5],
+    [1, 3, '1', '1', '0.2661086355567139974178', 5e-5],
+    [2, 5, '1', '2', '1.096617911728876578962', 4e-6],
+    [5, 8, '3/2', '1/2', '0.09567825375596397601678', 3e-7],
+  ])('%i mod %i, power %s, log power %s: the tail by the class\'s own estimates', async (residue, modulus, power, logPower, value, radius) => {
+    const [outcome] = await run([series({ kind: 'residue-class', modulus, residue, exclude: [] }, power, logPower)], { cutoff: '300000' })
+    expect(meets(outcome.enclosure, value)).toBe(true)
+    for (const point of outcome.convergence) expect(meets(point, value)).toBe(true)
+    expect(Number(outcome.radius)).toBeLessThan(radius)
+    expect(outcome.estimates.map(({ id }) => id)).toEqual(['theta-class-ramare-rumely-1996-thm-2', 'theta-class-bennett-2018-thm-1.2'])
+  })
+
+  it('the primes of all classes add up, exclusions and the primes that divide the modulus apart', async () => {
+    const parts = await Promise.all([1, 5, 7, 11].map((residue) => run([series({ kind: 'residue-class', modulus: 12, residue, exclude: [] })], { cutoff: '100000' })))
+    const [whole] = await run([series({ kind: 'primes', exclude: [2, 3] })], { cutoff: '100000' })
+    const ends = (side: 'lo' | 'hi') => parts.reduce((total, [{ enclosure }]) => add(total, parseDecimal(enclosure[side])!), rational(0))
+    expect(compare(ends('lo'), parseDecimal(whole.enclosure.hi)!)).toBe(-1)
+    expect(compare(parseDecimal(whole.enclosure.lo)!, ends('hi'))).toBe(-1)
+    const [all] = await run([series({ kind: 'residue-class', modulus: 4, residue: 1, exclude: [] })], { cutoff: '20000' })
+    const [without] = await run([series({ kind: 'residue-class', modulus: 4, residue: 1, exclude: [13, 17] })], { cutoff: '20000' })
+    const left = 1 / (13 * Math.log(13)) + 1 / (17 * Math.log(17))
+    expect(Number(all.enclosure.lo) - Number(without.enclosure.lo)).toBeCloseTo(left, 6)
+  })
+
+  it('of a class that no estimate of its own reaches is only known to be part of the whole tail', async () => {
+    const [outcome] = await run([series({ kind: 'residue-class', modulus: 97, residue: 3, exclude: [] }, '2', '1')], { cutoff: '100000' })
     let sum = 0
-    for (const p of primesUpTo(100_000)) if (p % 4 === 1) sum += 1 / (p * p * Math.log(p))
+    for (const p of primesUpTo(100_000)) if (p % 97 === 3) sum += 1 / (p * p * Math.log(p))
     expect(Number(outcome.enclosure.lo)).toBeCloseTo(sum, 6)
     expect(Number(outcome.enclosure.hi)).toBeGreaterThan(sum)
+    expect(outcome.estimates.some(({ id }) => id.startsWith('theta-class'))).toBe(false)
+  })
+
+  it('of a class is repeated from a certificate that names only estimates of theta over all primes', async () => {
+    const definition = series({ kind: 'residue-class', modulus: 4, residue: 1, exclude: [] })
+    const [outcome] = await run([definition], { cutoff: '20000' })
+    const [wide] = await run([definition], { cutoff: '20000' }, { parameters: { ...outcome.parameters, estimates: 'theta-dusart-2018-k2-2' } })
+    expect(wide.estimates.map(({ id }) => id)).toEqual(['theta-dusart-2018-k2-2'])
+    expect(compare(parseDecimal(wide.enclosure.lo)!, parseDecimal(outcome.enclosure.lo)!)).toBe(-1)
+    expect(compare(parseDecimal(outcome.enclosure.hi)!, parseDecimal(wide.enclosure.hi)!)).toBe(-1)
   })
 })
 

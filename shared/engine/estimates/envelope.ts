@@ -2,9 +2,9 @@ import { type Arithmetic, certainlyLess } from '../arithmetic/arithmetic.ts'
 import { steadyExp, steadyLog } from '../arithmetic/steady.ts'
 import { type Rational, compare, floorScaled, parseRational } from '../arithmetic/rational.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
-import type { Bound, Estimate, Point, Term } from './estimate.ts'
+import type { Bound, Claim, Estimate, Point, Term } from './estimate.ts'
 
-/** One estimate of theta(t) - t, a sum of terms, used for log t in [from, to]; `to` null: for ever. */
+/** One estimate of what theta differs from its main term by, a sum of terms, used for log t in [from, to]; `to` null: for ever. */
 export interface Piece<N> {
   estimate: Estimate
   terms: readonly Term[]
@@ -49,9 +49,15 @@ function markOf<N>(arithmetic: Arithmetic<N>, point: Point): Mark<N> {
   }
 }
 
+/** Whether it speaks of theta, or for a modulus above 1 of theta over each class prime to it. */
+function speaksOf({ quantity, moduli }: Claim, modulus: number): boolean {
+  if (modulus === 1) return quantity === 'theta'
+  return quantity === 'theta-class' && moduli !== undefined && moduli[0] <= modulus && modulus <= moduli[1]
+}
+
 /**
- * Lower and upper bounds of theta(t) - t for all t >= cutoff, each from as few estimates as serve; null where none is valid
- * somewhere. `weight` only helps to choose.
+ * Lower and upper bounds of theta(t) - t, or with a modulus q > 1 of theta(t;q,a) - t/phi(q), for all t >= cutoff, each from as few
+ * estimates as serve; null where none is valid somewhere. `weight` only helps to choose.
  * *Claim*: each piece's estimate is stated for all of the piece, and the pieces of each side cover the half-line.
  * *Valid for*: cutoff >= 2. *Bound*: S-5.
  */
@@ -60,11 +66,12 @@ export function thetaEnvelope<N>(
   cutoff: number,
   estimates: readonly Estimate[],
   weight: RationalWeight,
+  modulus = 1,
 ): Envelope<N> | null {
   const start = markOf(arithmetic, { x: String(cutoff) })
   const before = (a: Mark<N>, b: Mark<N>): boolean => a.key === b.key || certainlyLess(arithmetic, a.log, b.log)
   const ranges = estimates
-    .filter(({ claim }) => claim.quantity === 'theta')
+    .filter(({ claim }) => speaksOf(claim, modulus))
     .map((estimate) => ({ estimate, from: markOf(arithmetic, estimate.claim.from), to: estimate.claim.to && markOf(arithmetic, estimate.claim.to) }))
     .filter(({ to }) => to === null || before(start, to))
 
@@ -97,18 +104,22 @@ export function thetaEnvelope<N>(
 
 /**
  * The estimates out of those given that the envelopes beyond the cut-offs use, so few that with these alone they are made of
- * them all again: what a certificate records.
+ * them all again: what a certificate records. For a class where none of its own covers what lies beyond, those over all primes.
  */
 export function estimatesUsed<N>(
   arithmetic: Arithmetic<N>,
   cutoffs: readonly number[],
   estimates: readonly Estimate[],
   weights: readonly RationalWeight[],
+  modulus = 1,
 ): Estimate[] {
   let allowed = [...estimates]
   for (;;) {
     const used = new Set<Estimate>()
-    const envelopes = weights.flatMap((weight) => cutoffs.map((cutoff) => thetaEnvelope(arithmetic, cutoff, allowed, weight)))
+    const envelopes = weights.flatMap((weight) => cutoffs.map((cutoff) => {
+      const ofClass = modulus > 1 ? thetaEnvelope(arithmetic, cutoff, allowed, weight, modulus) : null
+      return ofClass ?? thetaEnvelope(arithmetic, cutoff, allowed, weight)
+    }))
     for (const envelope of envelopes) {
       for (const { estimate } of [...(envelope?.lower ?? []), ...(envelope?.upper ?? [])]) used.add(estimate)
     }

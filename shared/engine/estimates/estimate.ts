@@ -21,13 +21,16 @@ export interface Estimate {
 
 /**
  * theta, psi: Chebyshev's functions less x. pi: the number of primes. pi-li: that less li(x). reciprocals: the sum of 1/p over
- * p <= x, less log log x + B. log-ratios: the sum of log(p)/p, less log x + E.
+ * p <= x, less log log x + B. log-ratios: the sum of log(p)/p, less log x + E. theta-class: the sum of log p over the primes p <= x
+ * of one class prime to a modulus q, less x/phi(q), for each such class.
  */
-export type Quantity = 'theta' | 'psi' | 'pi' | 'pi-li' | 'reciprocals' | 'log-ratios'
+export type Quantity = 'theta' | 'theta-class' | 'psi' | 'pi' | 'pi-li' | 'reciprocals' | 'log-ratios'
 
 /** lower(x) <= quantity(x) <= upper(x) for all x in the range; either may be missing. */
 export interface Claim {
   quantity: Quantity
+  /** Of theta-class: the least and the greatest modulus. */
+  moduli?: readonly [number, number]
   from: Point
   /** null: for all larger x. */
   to: Point | null

@@ -1,7 +1,8 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
-import { ONE, type Rational, ZERO, add, compare, negate, parseRational, rational, subtract } from '../arithmetic/rational.ts'
+import { ONE, type Rational, ZERO, add, compare, multiply as times, negate, parseRational, rational, subtract } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
 import type { EstimateUse } from '../methods/computation.ts'
+import { units } from '../series/characters.ts'
 import { type RationalWeight, negativePower, weightAt } from '../sieve/weight.ts'
 import { type Envelope, type Piece, thetaEnvelope } from './envelope.ts'
 import type { Estimate, Term } from './estimate.ts'
@@ -21,40 +22,68 @@ export interface Tail {
   uses: EstimateUse[]
 }
 
+/** What theta is summed over, and what is known of it at the cut-off. */
+export interface ThetaAt {
+  /** Contains theta(x), or theta(x;q,a); null where it is not known and the estimates serve for it, too. */
+  value: Interval | null
+  /** q; 1 for all primes. */
+  modulus: number
+}
+
 /**
  * The sum of w(p) = p^-s (log p)^-b over the primes p > x. With h = w/log and E(t) = theta(t) - t it is
  *   integral of h from x on  -  h(x) E(x)  +  integral of E (-h') from x on,
  * where E(x) is known from the sieve, and E beyond x is known to lie between the bounds of the estimates.
  *
  * *Claim*: the interval contains it, if the estimates used are true. *Valid for*: x >= 2, s >= 1, b > 0 where s = 1, `theta`
- * containing theta(x), or null where it is not known and the estimates serve for it, too; s log x + b + 1 > 0, else refused,
- * as is a cut-off below every estimate. *Bound*: S-5.
+ * containing theta(x) or null; s log x + b + 1 > 0, else refused, as is a cut-off below every estimate. *Bound*: S-5.
  */
-export function primeTail<N>(
+export function primeTail<N>(arithmetic: Arithmetic<N>, weight: RationalWeight, x: number, theta: Interval | null, estimates: readonly Estimate[]): Tail {
+  const tail = tailFrom(arithmetic, weight, x, { value: theta, modulus: 1 }, estimates)
+  if (tail) return tail
+  throw new EngineRefusal('cutoff_too_small', 'cutoff', 'No estimate of theta covers all that lies beyond this cut-off.')
+}
+
+/**
+ * The same over the primes p > x of one class prime to `modulus`, `theta` containing theta(x;q,a). Where no estimate for the class
+ * covers what lies beyond, its sum is taken to be between 0 and that over all primes.
+ * *Claim*, *Valid for*, *Bound*: as primeTail.
+ */
+export function classTail<N>(
   arithmetic: Arithmetic<N>,
   weight: RationalWeight,
   x: number,
-  theta: Interval | null,
+  theta: Interval,
+  modulus: number,
   estimates: readonly Estimate[],
 ): Tail {
+  const own = tailFrom(arithmetic, weight, x, { value: theta, modulus }, estimates)
+  if (own) return own
+  const all = primeTail(arithmetic, weight, x, null, estimates)
+  return { sum: { lo: ZERO, hi: all.sum.hi }, uncertainty: all.sum.hi, uses: all.uses }
+}
+
+/** Null where no estimate covers all that lies beyond. */
+function tailFrom<N>(arithmetic: Arithmetic<N>, weight: RationalWeight, x: number, theta: ThetaAt, estimates: readonly Estimate[]): Tail | null {
   let uses: EstimateUse[] = []
   const ends = arithmetic.frame(() => {
-    const { add: plus, multiply: times, scale } = arithmetic
+    const { add: plus, scale } = arithmetic
     const { power: s, logPower: b } = weight
     const slope = add(b, ONE)
     const logX = arithmetic.log(arithmetic.rational(rational(x)))
     if (compare(arithmetic.lower(plus(scale(logX, s), arithmetic.rational(slope))), ZERO) <= 0) {
       throw new EngineRefusal('cutoff_too_small', 'cutoff', 'The weight does not decrease yet at this cut-off: choose a larger one.')
     }
-    const envelope = thetaEnvelope(arithmetic, x, estimates, weight)
-    if (!envelope) throw new EngineRefusal('cutoff_too_small', 'cutoff', 'No estimate of theta covers all that lies beyond this cut-off.')
+    const envelope = thetaEnvelope(arithmetic, x, estimates, weight, theta.modulus)
+    if (!envelope) return null
     uses = usesOf(envelope)
 
-    const main = logPowerIntegral(arithmetic, s, slope, logX, null)
-    const excess = theta
-      ? arithmetic.subtract(arithmetic.between(theta.lo, theta.hi), arithmetic.rational(rational(x)))
+    const share = rational(1, units(theta.modulus).length)
+    const main = scale(logPowerIntegral(arithmetic, s, slope, logX, null), share)
+    const excess = theta.value
+      ? arithmetic.subtract(arithmetic.between(theta.value.lo, theta.value.hi), arithmetic.rational(times(rational(x), share)))
       : hull(arithmetic, boundAt(arithmetic, envelope.lower[0].terms, logX), boundAt(arithmetic, envelope.upper[0].terms, logX))
-    const atX = times(weightAt(arithmetic, { power: s, logPower: slope }, x, logX), excess)
+    const atX = arithmetic.multiply(weightAt(arithmetic, { power: s, logPower: slope }, x, logX), excess)
     const known = arithmetic.subtract(main, atX)
 
     const total = (pieces: readonly Piece<N>[]): N =>
@@ -66,7 +95,7 @@ export function primeTail<N>(
       uncertainty: subtract(arithmetic.upper(high), arithmetic.lower(low)),
     }
   })
-  return { sum: { lo: ends.lo, hi: ends.hi }, uncertainty: ends.uncertainty, uses }
+  return ends && { sum: { lo: ends.lo, hi: ends.hi }, uncertainty: ends.uncertainty, uses }
 }
 
 /** The integral of bound(t) (-h'(t)), -h' = s t^(-s-1) L^(-b-1) + (b+1) t^(-s-1) L^(-b-2), L = log t, over one piece. */

@@ -85,3 +85,15 @@ export function primeTailRadius({ power, logPower }: RationalWeight, cutoff: num
   const far = 1e19 ** (0.5 - s) * 43.7 ** (1 - b) / 13
   return near + far
 }
+
+/** About the same for the primes of a class: 2.072 sqrt(t) up to 10^10 for moduli up to 72, then t/(840 log t). heuristic: affects choice only */
+export function classTailRadius(weight: RationalWeight, modulus: number, cutoff: number): number {
+  const [s, b] = [approximate(weight.power), approximate(weight.logPower)]
+  const l = Math.log(cutoff) // heuristic: affects speed only
+  if (modulus > 72 && cutoff < 8e9) return (s === 1 ? l ** -b / b : (cutoff ** (1 - s) * l ** (-b - 1)) / (s - 1)) / 2
+  const near = cutoff < 1e10 ? ((2.072 * s) / (s - 0.5)) * cutoff ** (0.5 - s) * l ** (-b - 1) : 0
+  const start = Math.max(cutoff, 1e10)
+  const v = Math.log(start) // heuristic: affects speed only
+  const far = s === 1 ? v ** (-b - 1) / (b + 1) : (start ** (1 - s) * v ** (-b - 2) * s) / (s - 1)
+  return near + far / 840
+}

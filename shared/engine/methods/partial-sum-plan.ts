@@ -3,7 +3,7 @@ import { EngineRefusal } from '../errors.ts'
 import type { Definition, SeriesDefinition, SetOfIntegers } from '../sets/definition.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
 import { type FactorSet, LARGEST_INTEGER_CUTOFF, integerTailRadius } from './partial-sum-integers.ts'
-import { approximate, primeTailRadius } from './partial-sum-parameters.ts'
+import { approximate, classTailRadius, primeTailRadius } from './partial-sum-parameters.ts'
 
 /** What the method can do for one definition, and how well. */
 export interface Plan {
@@ -49,7 +49,7 @@ export function planFor(definition: Definition): Plan {
     case 'squarefree':
       return integerPlan(set, weight)
     case 'residue-class':
-      return { weight, radiusAt: (cutoff) => wholeTail(weight, cutoff) / 2, secondsAt: primeSeconds }
+      return { weight, radiusAt: (cutoff) => classTailRadius(weight, set.modulus, cutoff), secondsAt: primeSeconds }
     default:
       return misfit('The method of partial sums has no bound for what lies beyond the cut-off over this set.')
   }
@@ -64,13 +64,6 @@ function integerPlan(set: FactorSet, weight: RationalWeight): Plan {
     radiusAt: (cutoff) => integerTailRadius(set, s, b, cutoff),
     secondsAt: (cutoff) => 0.4 + 1.2e-8 * cutoff,
   }
-}
-
-/** About the sum over all primes beyond a cut-off. heuristic: affects choice only */
-function wholeTail({ power, logPower }: RationalWeight, cutoff: number): number {
-  const [s, b] = [approximate(power), approximate(logPower)]
-  const l = Math.log(cutoff) // heuristic: affects speed only
-  return s === 1 ? l ** -b / b : (cutoff ** (1 - s) * l ** (-b - 1)) / (s - 1)
 }
 
 /** About the radius of a sum over products of k primes: the uncertainty of P(s) times what multiplies it. heuristic: affects choice only */

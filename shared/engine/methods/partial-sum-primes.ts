@@ -1,7 +1,7 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
 import { ZERO, add, dyadic, rational, subtract } from '../arithmetic/rational.ts'
-import { type Interval, type Tail, primeTail } from '../estimates/prime-tail.ts'
+import { type Interval, type Tail, classTail, primeTail } from '../estimates/prime-tail.ts'
 import { sumBatch } from '../sieve/block-sums.ts'
 import { HIGHEST_ORDER, primeMoments } from '../sieve/prime-moments.ts'
 import { type RationalWeight, type WeightExpansion, expandWeight, weightAt } from '../sieve/weight.ts'
@@ -112,11 +112,10 @@ export class PrimePartialSum implements Computation {
     return this.made
   }
 
-  /** Over a residue class only that the tail is positive and part of the whole tail is used: theta is then not known. */
   private tail(arithmetic: Arithmetic<AnyNumber>, { weight }: PrimeSumTask, cutoff: number, theta: Interval): Tail {
-    if (!this.residueClass) return primeTail(arithmetic, weight, cutoff, theta, this.chosen.estimates)
-    const all = primeTail(arithmetic, weight, cutoff, null, this.chosen.estimates)
-    return { sum: { lo: ZERO, hi: all.sum.hi }, uncertainty: all.sum.hi, uses: all.uses }
+    const { estimates } = this.chosen
+    if (!this.residueClass) return primeTail(arithmetic, weight, cutoff, theta, estimates)
+    return classTail(arithmetic, weight, cutoff, theta, this.residueClass.modulus, estimates)
   }
 
   private excludedSum(arithmetic: Arithmetic<AnyNumber>, { weight, exclude }: PrimeSumTask): Interval {

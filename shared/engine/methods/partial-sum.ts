@@ -22,9 +22,9 @@ function parametersFor(plan: Plan, goal: Goal): PartialSumParameters {
 }
 
 /** Only the estimates that the tail will use. */
-function withUsedEstimates(chosen: PartialSumParameters, weights: readonly RationalWeight[]): PartialSumParameters {
+function withUsedEstimates(chosen: PartialSumParameters, weights: readonly RationalWeight[], modulus = 1): PartialSumParameters {
   const cutoffs = cutIntoRanges(chosen.cutoff).flatMap(({ hi, mark }) => (mark ? [hi] : []))
-  return { ...chosen, estimates: estimatesUsed(createBallArithmetic(chosen.precision), cutoffs, chosen.estimates, weights) }
+  return { ...chosen, estimates: estimatesUsed(createBallArithmetic(chosen.precision), cutoffs, chosen.estimates, weights, modulus) }
 }
 
 /** Sums the terms up to a cut-off from first principles and bounds the rest by published estimates. */
@@ -61,9 +61,12 @@ const RECIPROCAL: RationalWeight = { power: ONE, logPower: ZERO }
 
 function primeSum(request: ComputationRequest, definitions: readonly SeriesDefinition[], plans: readonly Plan[]): Computation {
   const weights = plans.map(({ weight }) => weight)
-  const chosen = request.parameters ? readPartialSumParameters(request.parameters) : withUsedEstimates(parametersFor(plans[0], request.goal), weights)
   const tasks = definitions.map(({ set }, i) => ({ weight: weights[i], exclude: 'exclude' in set ? set.exclude : [] }))
   const { set } = definitions[0]
+  const ofModulus = set.kind === 'residue-class' ? set.modulus : 1
+  const chosen = request.parameters
+    ? readPartialSumParameters(request.parameters)
+    : withUsedEstimates(parametersFor(plans[0], request.goal), weights, ofModulus)
   if (set.kind !== 'residue-class') return new PrimePartialSum(request, chosen, tasks)
   const { modulus, residue } = set
   if (definitions.some(({ set: other }) => other.kind !== set.kind || other.modulus !== modulus || other.residue !== residue)) {
