@@ -14,6 +14,8 @@ export const up: Migration['up'] = async (query) => {
     CREATE INDEX register_entries_within ON register_entries USING gist (audience, numrange(best_lo, best_hi, '[]')) WHERE best_lo IS NOT NULL;
     CREATE INDEX register_entries_width ON register_entries (audience, (best_hi - best_lo)) WHERE best_lo IS NOT NULL;
 
+    CREATE STATISTICS register_entries_range ON (numrange(best_lo, best_hi, '[]')) FROM register_entries;
+
     -- What was signed, for those who read nothing else; the work of a group, of a person.
     DROP INDEX claims_state, claims_group_state, claims_author;
     CREATE INDEX claims_entered ON claims (since DESC, id DESC) WHERE signed_at IS NOT NULL;
@@ -34,11 +36,11 @@ export const up: Migration['up'] = async (query) => {
     CREATE INDEX outbox_group ON outbox (group_id, created_at DESC, id DESC);
     CREATE INDEX outbox_group_state ON outbox (group_id, state, created_at DESC, id DESC);
 
-    CREATE INDEX audit_entries_act ON audit_entries (group_id, act text_pattern_ops, seq DESC);
-    CREATE INDEX audit_entries_actor ON audit_entries (group_id, actor_id, seq DESC);
-    CREATE INDEX audit_entries_kind ON audit_entries (group_id, subject_kind, seq DESC);
-    CREATE INDEX audit_entries_subject_id ON audit_entries (subject_id, seq DESC);
-    CREATE INDEX audit_entries_at ON audit_entries (group_id, at);
+    CREATE INDEX audit_entries_act ON audit_entries (group_id, act text_pattern_ops, at DESC, seq DESC);
+    CREATE INDEX audit_entries_actor ON audit_entries (group_id, actor_id, at DESC, seq DESC);
+    CREATE INDEX audit_entries_kind ON audit_entries (group_id, subject_kind, at DESC, seq DESC);
+    CREATE INDEX audit_entries_subject_id ON audit_entries (subject_id, at DESC, seq DESC);
+    CREATE INDEX audit_entries_at ON audit_entries (group_id, at DESC, seq DESC);
     CREATE INDEX audit_entries_digest ON audit_entries (digest text_pattern_ops) WHERE digest IS NOT NULL;
     CREATE INDEX audit_entries_words ON audit_entries USING gin (subject_label gin_trgm_ops, actor_name gin_trgm_ops, reason gin_trgm_ops);
   `)
@@ -56,6 +58,7 @@ export const down: Migration['down'] = async (query) => {
     CREATE INDEX claims_state ON claims (state, since DESC, id DESC);
     CREATE INDEX claims_group_state ON claims (group_id, state);
     CREATE INDEX claims_author ON claims (author_id, since DESC, id DESC);
+    DROP STATISTICS register_entries_range;
     DROP INDEX register_entries_within, register_entries_width;
     CREATE INDEX register_entries_within ON register_entries USING gist (numrange(best_lo, best_hi, '[]')) WHERE best_lo IS NOT NULL;
     DROP EXTENSION pg_trgm, btree_gist;

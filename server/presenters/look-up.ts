@@ -4,8 +4,8 @@ import { plainDecimal, type ReadNumber } from '../../shared/digit-reading.ts'
 import { scaleEnclosure } from '../../shared/digits.ts'
 import type { lookUpResult } from '../../shared/schemas/constant.ts'
 import type { ConstantRow } from '../queries/constant.ts'
+import type { NearRow } from '../queries/look-up.ts'
 import { presentConstantSummary } from './constant.ts'
-import { bestOf } from './constant-value.ts'
 
 type Found = z.infer<typeof lookUpResult>['items'][number]
 
@@ -27,18 +27,19 @@ function compareScaled(a: bigint, p: number, b: bigint, q: number): number {
   return x < y ? -1 : x > y ? 1 : 0
 }
 
+/** A constant beside the digits, and the place up to which they fit no number of its best enclosure any more, or null. */
+interface Placed {
+  id: string
+  ruledOutAt: number | null
+}
+
 /**
  * Constants beside pasted digits: those that the digits can stand for first, the narrowest enclosure in front, then those that are
- * ruled out, the nearest in front.
+ * ruled out, the nearest in front; as many as are shown.
  */
-export function presentLookUp(number: ReadNumber, reading: PrintedAs, rows: readonly ConstantRow[]): Found[] {
+export function placeBeside(number: ReadNumber, reading: PrintedAs, rows: readonly NearRow[]): Placed[] {
   const value = plainDecimal(number)
-  const found = rows.flatMap((row) => {
-    const best = bestOf(row)
-    if (!best) return []
-    const check = checkDigits(number, reading, best.lo, best.hi)
-    return [{ row, ruledOutAt: check.firstWrong, ...nearness(value, best.lo, best.hi) }]
-  })
+  const found = rows.map((row) => ({ row, ruledOutAt: checkDigits(number, reading, row.best_lo, row.best_hi).firstWrong, ...nearness(value, row.best_lo, row.best_hi) }))
   found.sort((a, b) => {
     const out = Number(a.ruledOutAt !== null) - Number(b.ruledOutAt !== null)
     if (out !== 0) return out
@@ -46,9 +47,14 @@ export function presentLookUp(number: ReadNumber, reading: PrintedAs, rows: read
     const byWidth = compareScaled(a.width, a.places, b.width, b.places)
     return (a.ruledOutAt === null ? byWidth || byGap : byGap || byWidth) || a.row.number - b.row.number
   })
-  return found.slice(0, SHOWN).map(({ row, ruledOutAt }) => ({
-    constant: presentConstantSummary(row),
-    compatibleTo: ruledOutAt === null ? number.fraction.length : Math.max(0, ruledOutAt - 1),
-    ruledOutAt,
-  }))
+  return found.slice(0, SHOWN).map(({ row, ruledOutAt }) => ({ id: row.id, ruledOutAt }))
+}
+
+/** The constants that were placed, in their order, as the register shows them. */
+export function presentLookUp(number: ReadNumber, placed: readonly Placed[], rows: readonly ConstantRow[]): Found[] {
+  const byId = new Map(rows.map((row) => [row.id, row]))
+  return placed.flatMap(({ id, ruledOutAt }) => {
+    const row = byId.get(id)
+    return row ? [{ constant: presentConstantSummary(row), compatibleTo: ruledOutAt === null ? number.fraction.length : Math.max(0, ruledOutAt - 1), ruledOutAt }] : []
+  })
 }

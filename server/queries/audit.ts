@@ -55,14 +55,15 @@ export async function listAudit(groupId: string, query: z.output<typeof auditQue
   const { cursor, limit, ...filters } = query
   const { clause, bind } = where(groupId, filters)
   const mark = { list: 'audit', groupId, filters }
-  const before = cursor === undefined ? null : readCursor(mark, cursor)[0]
+  const [at, seq] = cursor === undefined ? [] : readCursor(mark, cursor)
+  // By time first: it is the order of the chain, unless the clock was put back, and a stretch of time is then read as it lies in the index.
   const rows = await select<AuditRow>(
-    `SELECT * FROM audit_entries WHERE ${clause} ${before === null ? '' : 'AND seq < $before'} ORDER BY seq DESC LIMIT $limit`,
-    { ...bind, limit: limit + 1, ...(before !== null && { before }) },
+    `SELECT * FROM audit_entries WHERE ${clause} ${cursor === undefined ? '' : 'AND (at, seq) < ($at::timestamptz, $seq::bigint)'} ORDER BY at DESC, seq DESC LIMIT $limit`,
+    { ...bind, limit: limit + 1, ...(cursor !== undefined && { at, seq }) },
   )
   const page = rows.slice(0, limit)
   const last = page.at(-1)
-  return { items: page.map(presentAuditEntry), next: rows.length > limit && last ? writeCursor(mark, [Number(last.seq)]) : null }
+  return { items: page.map(presentAuditEntry), next: rows.length > limit && last ? writeCursor(mark, [last.at.toISOString(), Number(last.seq)]) : null }
 }
 
 const BATCH = 1_000

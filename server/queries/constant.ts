@@ -8,6 +8,7 @@ import { audienceOf, stateColumn, type Reader } from './audience.ts'
 import { readTextQuery } from './constant-text.ts'
 import { readCursor, writeCursor, type CursorKey } from './cursor.ts'
 import { leadingDigits } from './leading-digits.ts'
+import { FEW_FROM_DECIMALS, MEETS } from './look-up.ts'
 
 export type ConstantQuery = Omit<z.output<typeof constantQuery>, 'cursor' | 'limit'>
 
@@ -97,9 +98,9 @@ function textFilter(text: string, add: (condition: string, values: Bind) => void
   if (asked.exclude) add('e.exclude = $textExclude', { textExclude: asked.exclude.join(',') })
   if (asked.digits !== undefined) {
     const [lo, hi] = leadingDigits(asked.digits)
-    const meets = `best_lo IS NOT NULL AND numrange(best_lo, best_hi, '[]') && numrange($digitsLo::numeric, $digitsHi::numeric, '[]')`
+    const meets = MEETS('$digitsLo', '$digitsHi')
     // Many digits mean few constants, which the index on ranges finds first; of few digits a walk in order soon has a page.
-    const few = (asked.digits.split('.')[1]?.length ?? 0) >= 3
+    const few = (asked.digits.split('.')[1]?.length ?? 0) >= FEW_FROM_DECIMALS
     add(few ? `e.constant_id = ANY (ARRAY(SELECT constant_id FROM register_entries WHERE audience = $audience AND ${meets}))` : meets, { digitsLo: lo, digitsHi: hi })
   }
   if (asked.words.length > 0) add(`e.constant_id IN (SELECT id FROM constants WHERE search @@ to_tsquery('simple', $words))`, { words: asked.words.map((word) => `${word}:*`).join(' & ') })
@@ -138,28 +139,26 @@ export async function listConstants(
     conditions.push(`(${key}, e.number) ${query.order === 'asc' ? '>' : '<'} (${position}, $afterNumber::int)`)
     Object.assign(bind, query.sort === 'value' ? { afterNumber: number } : { after, afterNumber: number })
   }
-  const rows = await select<ConstantRow>(
-    rowsSql(reader, { key, order: query.order, conditions, limit: '$limit' }),
-    { ...bind, limit: limit + 1 },
-  )
+  const asked = select<ConstantRow>(rowsSql(reader, { key, order: query.order, conditions, limit: '$limit' }), { ...bind, limit: limit + 1 })
+  const [rows, total] = await Promise.all([asked, cursor === undefined ? countConstants(reader, where, bind) : undefined])
   const page = rows.slice(0, limit)
   const last = page.at(-1)
   const after: CursorKey | null = rows.length > limit && last ? [query.sort === 'value' ? null : last.sort_key, last.number] : null
-  const total = cursor === undefined ? await countConstants(where, bind) : undefined
   return { rows: page, next: after && writeCursor(mark, after), ...(total !== undefined && { total }) }
 }
 
 /** Most that is counted of a filtered list, so that counting never costs more than listing. */
-const MOST_COUNTED = 2_000
+const MOST_COUNTED = 1_000
 
-async function countConstants(where: string[], bind: Bind): Promise<number | undefined> {
-  const plain = where.length === 1
-  const sql = plain
-    ? 'SELECT count(*)::int AS total FROM register_entries e WHERE e.audience = $audience'
-    : `SELECT count(*)::int AS total FROM (SELECT 1 FROM register_entries e WHERE ${where.join(' AND ')} LIMIT ${MOST_COUNTED + 1}) AS counted`
-  const row = await selectOne<{ total: number }>(sql, bind)
-  return row && (plain || row.total <= MOST_COUNTED) ? row.total : undefined
+async function countConstants(reader: Reader, where: string[], bind: Bind): Promise<number | undefined> {
+  const unfiltered = where.length === 1
+  const row = await selectOne<{ total: number }>(unfiltered ? countAllSql(reader) : `SELECT count(*)::int AS total FROM (SELECT 1 FROM register_entries e WHERE ${where.join(' AND ')} LIMIT ${MOST_COUNTED + 1}) AS counted`, bind)
+  return row && (unfiltered || row.total <= MOST_COUNTED) ? row.total : undefined
 }
+
+/** The whole register: to members every constant is known, and numbers have no gaps. */
+const countAllSql = (reader: Reader): string =>
+  reader ? 'SELECT coalesce(max(number), 0) AS total FROM register_entries WHERE audience = $audience' : 'SELECT count(*)::int AS total FROM register_entries WHERE audience = $audience'
 
 /** Every row of a query, for an export, up to `most`. */
 export async function allConstants(reader: Reader, query: ConstantQuery, most: number): Promise<ConstantRow[]> {
