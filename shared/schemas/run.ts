@@ -2,14 +2,14 @@ import { z } from 'zod'
 import { decimalText, enclosure, id, instant, pageOf, pageQuery, personRef, constantNumber } from './common.ts'
 import { definitionInput, definitionView } from './definition.ts'
 import { ARITHMETIC_NAMES, ERROR_SOURCES, METHOD_NAMES } from '../engine/methods/computation.ts'
-import { WIDTH_HINT, parseWidth } from '../engine/methods/goal.ts'
+import { WIDTH_HINT, WIDTH_PATTERN, parseWidth } from '../engine/methods/goal.ts'
 import { LIMITS } from '../limits.ts'
 
 export const method = z.enum(METHOD_NAMES)
 export const arithmetic = z.enum(ARITHMETIC_NAMES)
 export const goal = z.union([
   z.object({ digits: z.number().int().min(1, 'at least one digit').max(LIMITS.digits, `at most ${LIMITS.digits} digits`) }),
-  z.object({ width: z.string().refine((text) => parseWidth(text) !== null, `write ${WIDTH_HINT}`) }),
+  z.object({ width: z.string().regex(WIDTH_PATTERN, `write ${WIDTH_HINT}`).refine((text) => parseWidth(text) !== null, `write ${WIDTH_HINT}`) }),
   z.object({ cutoff: z.string().regex(/^[1-9]\d{0,17}$/, 'write a whole number') }),
 ])
 

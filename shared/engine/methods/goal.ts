@@ -14,7 +14,8 @@ export function goalText(goal: Goal): string {
   return 'width' in goal ? `width at most ${goal.width}` : `${goal.digits} digit${goal.digits === 1 ? '' : 's'}`
 }
 
-const WIDTH_PATTERN = /^\d{1,40}(\.\d{1,1100})?([eE]-\d{1,4})?$/
+/** How a width is written. */
+export const WIDTH_PATTERN = /^\d{1,40}(\.\d{1,1100})?([eE]-\d{1,4})?$/
 
 /** The width that a text names, exactly; null where it is none that can be asked for. */
 export function parseWidth(text: string): Rational | null {
