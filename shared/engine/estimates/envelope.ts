@@ -102,6 +102,12 @@ export function thetaEnvelope<N>(
   return lower && upper && { lower, upper }
 }
 
+/** The same, for a class by estimates of theta over all primes where none of its own covers what lies beyond. */
+export function envelopeBeyond<N>(arithmetic: Arithmetic<N>, cutoff: number, estimates: readonly Estimate[], weight: RationalWeight, modulus: number): Envelope<N> | null {
+  const ofClass = modulus > 1 ? thetaEnvelope(arithmetic, cutoff, estimates, weight, modulus) : null
+  return ofClass ?? thetaEnvelope(arithmetic, cutoff, estimates, weight)
+}
+
 /**
  * The estimates out of those given that the envelopes beyond the cut-offs use, so few that with these alone they are made of
  * them all again: what a certificate records. For a class where none of its own covers what lies beyond, those over all primes.
@@ -116,10 +122,7 @@ export function estimatesUsed<N>(
   let allowed = [...estimates]
   for (;;) {
     const used = new Set<Estimate>()
-    const envelopes = weights.flatMap((weight) => cutoffs.map((cutoff) => {
-      const ofClass = modulus > 1 ? thetaEnvelope(arithmetic, cutoff, allowed, weight, modulus) : null
-      return ofClass ?? thetaEnvelope(arithmetic, cutoff, allowed, weight)
-    }))
+    const envelopes = weights.flatMap((weight) => cutoffs.map((cutoff) => envelopeBeyond(arithmetic, cutoff, allowed, weight, modulus)))
     for (const envelope of envelopes) {
       for (const { estimate } of [...(envelope?.lower ?? []), ...(envelope?.upper ?? [])]) used.add(estimate)
     }

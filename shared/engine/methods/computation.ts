@@ -16,6 +16,8 @@ export interface ComputationRequest {
   method: Method
   arithmetic: ArithmeticName
   goal: Goal
+  /** Ids of published estimates that nothing may rest on, as while they are in doubt. What is chosen leaves them out. */
+  without?: readonly string[]
   /**
    * Everything that `prepare` would otherwise choose (precision in bits, step, node range, …), as a certificate records it.
    * Given, the computation repeats exactly; a value that is not sound is refused, never trusted.

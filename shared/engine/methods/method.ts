@@ -10,8 +10,11 @@ export type Forecast =
 /** One way of enclosing a constant. Each method is one file that exports one of these. */
 export interface MethodModule {
   readonly name: Method
-  /** Cheap: used while a form is filled in. `speed` is the machine's calibration (1 = the reference machine). */
-  forecast(definition: Definition, goal: Goal, arithmetic: ComputationRequest['arithmetic'], speed: number): Forecast
+  /**
+   * Cheap: used while a form is filled in. `speed` is the machine's calibration (1 = the reference machine), `without` names
+   * estimates that may not be used.
+   */
+  forecast(definition: Definition, goal: Goal, arithmetic: ComputationRequest['arithmetic'], speed: number, without?: readonly string[]): Forecast
   /** Chooses what the request leaves open, checks everything, and cuts the work. Throws EngineRefusal. */
   prepare(request: ComputationRequest): Promise<Computation>
 }

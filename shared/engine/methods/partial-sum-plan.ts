@@ -1,5 +1,6 @@
 import { parseRational } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
+import type { Estimate } from '../estimates/estimate.ts'
 import type { Definition, SeriesDefinition, SetOfIntegers } from '../sets/definition.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
 import { type FactorSet, LARGEST_INTEGER_CUTOFF, integerTailRadius } from './partial-sum-integers.ts'
@@ -10,6 +11,10 @@ export interface Plan {
   weight: RationalWeight
   /** Whether integers are sorted by their prime factors, and not primes summed. */
   byFactors?: true
+  /** What the tail may use, where that is not every estimate without a condition. */
+  estimates?: readonly Estimate[]
+  /** Of a residue class, whose tail has estimates of its own. */
+  modulus?: number
   /** The largest cut-off, where it is below the method's. */
   most?: number
   /** About the radius at a cut-off. heuristic: affects choice only */

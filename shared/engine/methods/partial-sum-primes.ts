@@ -1,6 +1,7 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
 import { ZERO, add, dyadic, rational, subtract } from '../arithmetic/rational.ts'
+import { envelopeBeyond } from '../estimates/envelope.ts'
 import { type Interval, type Tail, classTail, primeTail } from '../estimates/prime-tail.ts'
 import { sumBatch } from '../sieve/block-sums.ts'
 import { HIGHEST_ORDER, primeMoments } from '../sieve/prime-moments.ts'
@@ -85,7 +86,7 @@ export class PrimePartialSum implements Computation {
         }
         return { total, tail }
       }
-      const marks = this.ranges.flatMap((range, shard) => (range.mark ? [shard] : []))
+      const marks = this.ranges.flatMap((range, shard) => (shard === this.ranges.length - 1 || (range.mark && this.isBounded(arithmetic, range.hi)) ? [shard] : []))
       const { total, tail } = enclose(this.ranges.length - 1)
       const half = { num: tail.uncertainty.num, den: tail.uncertainty.den * 2n }
       return {
@@ -116,6 +117,11 @@ export class PrimePartialSum implements Computation {
     const { estimates } = this.chosen
     if (!this.residueClass) return primeTail(arithmetic, weight, cutoff, theta, estimates)
     return classTail(arithmetic, weight, cutoff, theta, this.residueClass.modulus, estimates)
+  }
+
+  /** Whether the estimates bound what lies beyond a cut-off: without some of them they may do so from a later one only. */
+  private isBounded(arithmetic: Arithmetic<AnyNumber>, cutoff: number): boolean {
+    return envelopeBeyond(arithmetic, cutoff, this.chosen.estimates, this.tasks[0].weight, this.residueClass?.modulus ?? 1) !== null
   }
 
   private excludedSum(arithmetic: Arithmetic<AnyNumber>, { weight, exclude }: PrimeSumTask): Interval {

@@ -2,6 +2,7 @@ import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { type AnyNumber, createArithmetic } from '../arithmetic/choose.ts'
 import { ONE, type Rational, ZERO, add, compare, dyadic, multiply, parseRational, rational, subtract, toText } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
+import { envelopeBeyond } from '../estimates/envelope.ts'
 import { PrimePowerTail } from '../estimates/prime-power-tail.ts'
 import type { DirichletSeries } from '../series/dirichlet.ts'
 import { reciprocalGamma } from '../series/gamma.ts'
@@ -17,6 +18,9 @@ import { PartialPrimePoint, type PrimeKnowledge, type ProductSet, logsOfSmallPri
 import { type Range, cutIntoRanges } from './partial-sum-ranges.ts'
 import { discretisationUpper, truncationAboveUpper, truncationBelowUpper } from './trapezoid-bounds.ts'
 import { chooseParameters } from './trapezoid-parameters.ts'
+
+/** As this weight does the sums of p^-s use theta. */
+const RECIPROCAL = { power: ONE, logPower: ZERO }
 
 /** The quadrature is made finer than any cut-off can be. heuristic: affects width only */
 const DIGITS = 9
@@ -110,7 +114,9 @@ export class ProductPartialSum implements Computation {
     this.ranges.forEach(({ hi, mark }, shard) => {
       knowledge.add(results[shard] as unknown as ShardText)
       const final = shard === this.ranges.length - 1
-      if (!final && !(mark && isDecade(hi) && hi >= this.chosen.cutoff / 5_000)) return
+      const shown = mark && isDecade(hi) && hi >= this.chosen.cutoff / 5_000
+      // Without some of the estimates what lies beyond may be bounded from a later cut-off only.
+      if (!final && !(shown && envelopeBeyond(arithmetic, hi, this.chosen.estimates, RECIPROCAL, 1))) return
       last = arithmetic.frame(() => this.enclose(arithmetic, bounds, knowledge, hi, final ? 1 : 2))
       last.forEach((one, index) => convergence[index].push({ at: String(hi), ...decimalEnclosure(one.lo, one.hi) }))
     })

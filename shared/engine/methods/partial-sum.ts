@@ -1,3 +1,4 @@
+import { LIMITS } from '../../limits.ts'
 import { createBallArithmetic } from '../arithmetic/ball.ts'
 import { ONE, ZERO } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
@@ -12,12 +13,14 @@ import { type PartialSumParameters, choosePartialSumParameters, readPartialSumPa
 import { IntegerPartialSum, LARGEST_INTEGER_CUTOFF } from './partial-sum-integers.ts'
 import { type Plan, familyOf, misfit, planFor, seriesOf } from './partial-sum-plan.ts'
 import { PrimePartialSum } from './partial-sum-primes.ts'
+import { estimatesLeft, planWithout } from './partial-sum-without.ts'
 import { ProductPartialSum, chooseProductParameters, readProductParameters } from './partial-sum-products.ts'
 import { cutIntoRanges } from './partial-sum-ranges.ts'
 
 function parametersFor(plan: Plan, goal: Goal): PartialSumParameters {
   const chosen = choosePartialSumParameters(goal, (cutoff) => plan.radiusAt(cutoff), plan.most)
-  if (chosen) return chosen
+  if (chosen) return plan.estimates ? { ...chosen, estimates: estimatesLeft(plan, chosen.cutoff) } : chosen
+  if (plan.estimates) estimatesLeft(plan, LIMITS.cutoff)
   throw new EngineRefusal('too_many_digits', 'width' in goal ? 'width' : 'digits', 'A partial sum cannot come so close: ask for less, or choose the transform.')
 }
 
@@ -31,9 +34,9 @@ function withUsedEstimates(chosen: PartialSumParameters, weights: readonly Ratio
 export const partialSum: MethodModule = {
   name: 'partial-sum',
 
-  forecast(definition, goal, arithmetic, speed): Forecast {
+  forecast(definition, goal, arithmetic, speed, without = []): Forecast {
     try {
-      const plan = planFor(definition)
+      const plan = planWithout(planFor(definition), definition, without)
       const { cutoff } = parametersFor(plan, goal)
       const seconds = (plan.secondsAt(cutoff) * (arithmetic === 'mpfr' ? 2 : 1)) / speed
       return { possible: true, radius: plan.radiusAt(cutoff).toExponential(1), seconds }
@@ -45,7 +48,7 @@ export const partialSum: MethodModule = {
 
   async prepare(request) {
     const definitions = request.definitions.map(seriesOf)
-    const plans = definitions.map(planFor)
+    const plans = definitions.map((definition) => planWithout(planFor(definition), definition, request.parameters ? [] : (request.without ?? [])))
     const { set } = definitions[0]
     if (definitions.some((one) => familyOf(one.set) !== familyOf(set))) misfit('One run of partial sums serves sets of one kind: ask for others in runs of their own.')
     if (plans.some(({ byFactors }) => byFactors)) return integerSum(request, definitions, plans)
