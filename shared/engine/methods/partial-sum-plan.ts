@@ -1,9 +1,12 @@
 import { parseRational } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
-import type { Estimate } from '../estimates/estimate.ts'
 import type { Definition, SeriesDefinition, SetOfIntegers } from '../sets/definition.ts'
+import type { Estimate } from '../estimates/estimate.ts'
+import { smoothTailRadius } from '../estimates/smooth-tail.ts'
+import { MOST_SMOOTH, countSmooth } from '../sets/enumerate-products.ts'
 import type { RationalWeight } from '../sieve/weight.ts'
 import { type FactorSet, LARGEST_INTEGER_CUTOFF, integerTailRadius } from './partial-sum-integers.ts'
+import { type SmoothSet, membersWithin, primesOf } from './partial-sum-smooth.ts'
 import { approximate, classTailRadius, primeTailRadius } from './partial-sum-parameters.ts'
 
 /** What the method can do for one definition, and how well. */
@@ -55,6 +58,8 @@ export function planFor(definition: Definition): Plan {
       return integerPlan(set, weight)
     case 'residue-class':
       return { weight, radiusAt: (cutoff) => classTailRadius(weight, set.modulus, cutoff), secondsAt: primeSeconds }
+    case 'smooth':
+      return smoothPlan(set, weight)
     default:
       return misfit('The method of partial sums has no bound for what lies beyond the cut-off over this set.')
   }
@@ -68,6 +73,20 @@ function integerPlan(set: FactorSet, weight: RationalWeight): Plan {
     most: LARGEST_INTEGER_CUTOFF,
     radiusAt: (cutoff) => integerTailRadius(set, s, b, cutoff),
     secondsAt: (cutoff) => 0.4 + 1.2e-8 * cutoff,
+  }
+}
+
+function smoothPlan(set: SmoothSet, weight: RationalWeight): Plan {
+  const rough = { power: approximate(weight.power), logPower: approximate(weight.logPower) }
+  const primes = primesOf(set)
+  let tooFar = Infinity
+  return {
+    weight,
+    radiusAt: (cutoff) => {
+      if (cutoff < tooFar && countSmooth(set.y, set.exclude, cutoff) > MOST_SMOOTH) tooFar = cutoff
+      return cutoff < tooFar ? smoothTailRadius(rough, cutoff, primes) : Infinity
+    },
+    secondsAt: (cutoff) => 0.15 + 6.5e-6 * membersWithin(set, cutoff),
   }
 }
 

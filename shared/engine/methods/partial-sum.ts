@@ -15,6 +15,7 @@ import { type Plan, familyOf, misfit, planFor, seriesOf } from './partial-sum-pl
 import { PrimePartialSum } from './partial-sum-primes.ts'
 import { estimatesLeft, planWithout } from './partial-sum-without.ts'
 import { ProductPartialSum, chooseProductParameters, readProductParameters } from './partial-sum-products.ts'
+import { type SmoothSet, SmoothPartialSum, chooseSmoothParameters, readSmoothParameters } from './partial-sum-smooth.ts'
 import { cutIntoRanges } from './partial-sum-ranges.ts'
 
 function parametersFor(plan: Plan, goal: Goal): PartialSumParameters {
@@ -52,6 +53,7 @@ export const partialSum: MethodModule = {
     const { set } = definitions[0]
     if (definitions.some((one) => familyOf(one.set) !== familyOf(set))) misfit('One run of partial sums serves sets of one kind: ask for others in runs of their own.')
     if (plans.some(({ byFactors }) => byFactors)) return integerSum(request, definitions, plans)
+    if (set.kind === 'smooth') return smoothSum(request, definitions, plans, set)
     if (set.kind === 'primes' || set.kind === 'residue-class') return primeSum(request, definitions, plans)
     const chosen = request.parameters ? null : withUsedEstimates(parametersFor(plans[0], request.goal), [RECIPROCAL])
     const task = mellinTask(definitions)
@@ -76,6 +78,16 @@ function primeSum(request: ComputationRequest, definitions: readonly SeriesDefin
     misfit('One run of partial sums serves one residue class.')
   }
   return new PrimePartialSum(request, chosen, tasks, { modulus, residue })
+}
+
+function smoothSum(request: ComputationRequest, definitions: readonly SeriesDefinition[], plans: readonly Plan[], set: SmoothSet): Computation {
+  if (!definitions.every(({ set: other }) => other.kind === 'smooth' && other.y === set.y && other.exclude.join() === set.exclude.join())) {
+    misfit('One run of partial sums over smooth integers serves one set.')
+  }
+  const weights = plans.map(({ weight }) => weight)
+  const { parameters, goal } = request
+  const chosen = parameters ? readSmoothParameters(parameters, weights) : chooseSmoothParameters(parametersFor(plans[0], goal), weights)
+  return new SmoothPartialSum(request, chosen, set, weights)
 }
 
 function integerSum(request: ComputationRequest, definitions: readonly SeriesDefinition[], plans: readonly Plan[]): Computation {

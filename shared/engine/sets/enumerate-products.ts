@@ -3,7 +3,22 @@ import type { SetOfIntegers } from './definition.ts'
 
 export type ProductOfPrimes = Extract<SetOfIntegers, { kind: 'almost-primes' | 'squarefree-almost-primes' | 'distinct-prime-factors' | 'smooth' }>
 
-/** The y-smooth integers 2 <= n <= upTo coprime to the excluded primes, ascending. */
+/** Most smooth integers that are added up one by one. */
+export const MOST_SMOOTH = 1_000_000
+
+/** How many integers smoothUpTo lists, or some number above MOST_SMOOTH where there are more. */
+export function countSmooth(y: number, exclude: readonly number[], upTo: number): number {
+  const primes = primesUpTo(y).filter((p) => !exclude.includes(p))
+  /** Products of n with the primes from the i-th on, itself included. */
+  const count = (n: number, i: number, most: number): number => {
+    let total = 1
+    for (let j = i; j < primes.length && n <= upTo / primes[j] && total <= most; j++) total += count(n * primes[j], j, most - total)
+    return total
+  }
+  return count(1, 0, MOST_SMOOTH + 1) - 1
+}
+
+/** The y-smooth integers 2 <= n <= upTo coprime to the excluded primes, ascending; upTo < 2^52. *Claim*: exact. *Bound*: S-11. */
 export function smoothUpTo(y: number, exclude: readonly number[], upTo: number): number[] {
   let members = [1]
   for (const p of primesUpTo(y)) {
