@@ -42,10 +42,10 @@ type ClaimWords = Pick<ClaimSummary, 'number' | 'kind' | 'constant' | 'otherCons
 export function claimHead(claim: ClaimWords): PageHead {
   const { number, enclosure, state, author, group, signedAt } = claim
   const what = assertionWords(claim)
-  const signed = signedAt === null ? '' : `, signed ${signedAt.slice(0, 10)}`
+  const standing = [...(signedAt === null ? [] : [`signed ${signedAt.slice(0, 10)}`]), ...(state === 'signed' ? [] : [STATE_WORDS[state]])].join(', ')
   return {
     title: `${number ?? `Draft for ${claim.constant}`}: ${shortened(what, 120)}`,
-    description: `${sentence(shortened(what, 160))} ${enclosure ? `${sentence(valueWords(enclosure))} ` : ''}By ${author.name}, ${group.name}${signed}; ${STATE_WORDS[state]}.`,
+    description: `${sentence(shortened(what, 160))} ${enclosure ? `${sentence(valueWords(enclosure))} ` : ''}By ${author.name}, ${group.name}; ${standing}.`,
     canonical: number !== null && signedAt !== null ? `/claims/${number.replace('/', '-')}` : null,
   }
 }

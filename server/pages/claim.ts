@@ -1,10 +1,9 @@
 import { claimSlug, parseClaimNumber } from '../../shared/constant-number.ts'
 import { claimHead } from '../../shared/page-head.ts'
-import { printedText } from '../../shared/printed-text.ts'
 import type { Claim } from '../../shared/schemas/claim.ts'
 import { cautionWords, digitsWords, KIND_WORDS, METHOD_WORDS, pastWords, SOURCE_WORDS, STATE_WORDS } from '../../shared/words.ts'
 import { html, type Html } from '../html.ts'
-import { cite, claimLink, constantLink, day, definitionOf, digits, facts, link, magnitude, table, textPage } from './parts.ts'
+import { cite, claimLink, constantLink, day, definitionOf, digits, facts, link, magnitude, printed, table, textPage } from './parts.ts'
 import type { PageContent } from './template.ts'
 
 /** The page of a claim, as everybody may read it. */
@@ -75,16 +74,16 @@ function grounds({ budget, radius, estimates, parameters }: NonNullable<Claim['o
       { header: 'Source', cell: ({ source }) => SOURCE_WORDS[source] },
       { header: 'At most', cell: (item) => magnitude(item.magnitude) },
       { header: 'Bound', cell: ({ bound }) => html`<code>${bound}</code>` },
-      { header: 'What the bound says', cell: ({ statement }) => printedText(statement) },
+      { header: 'What the bound says', cell: ({ statement }) => printed(statement) },
     ])}
     <p>Radius, half the width of the enclosure: at most ${magnitude(radius)}.</p>
     <h2>Estimates used</h2>
     ${estimates.length === 0
       ? html`<p>No published estimate was used: every bound is proven with the engine, and the budget above names each.</p>`
       : table(estimates, [
-          { header: 'Estimate', cell: ({ id, title }) => link(`/estimates/${id}`, printedText(title)) },
-          { header: 'Used at', cell: ({ usedAt }) => printedText(usedAt) },
-          { header: 'Holds for', cell: ({ validFor }) => printedText(validFor) },
+          { header: 'Estimate', cell: ({ id, title }) => link(`/estimates/${id}`, printed(title)) },
+          { header: 'Used at', cell: ({ usedAt }) => printed(usedAt) },
+          { header: 'Holds for', cell: ({ validFor }) => printed(validFor) },
           { header: 'Rests on a conjecture', cell: ({ conditional }) => (conditional ? 'conditional' : 'no') },
         ])}
     <h2>Parameters</h2>${facts(Object.entries(parameters).map(([name, value]) => [name, String(value)]))}`

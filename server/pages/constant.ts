@@ -1,9 +1,8 @@
 import { constantHead } from '../../shared/page-head.ts'
-import { printedText } from '../../shared/printed-text.ts'
 import type { Constant } from '../../shared/schemas/constant.ts'
 import { STATE_WORDS } from '../../shared/words.ts'
 import { html } from '../html.ts'
-import { cite, claimLink, day, definitionOf, digits, facts, link, table, textPage } from './parts.ts'
+import { cite, claimLink, day, definitionOf, digits, facts, link, printed, table, textPage } from './parts.ts'
 import type { PageContent } from './template.ts'
 
 /** The page of a constant, as everybody may read it. */
@@ -32,12 +31,12 @@ export const constantPage = (constant: Constant): PageContent => ({
       { header: 'Signed', cell: ({ signedAt }) => (signedAt === null ? '' : day(signedAt)) },
     ])}
     <h2>What is summed</h2>
-    <p>${printedText(constant.convergence)}</p>
+    <p>${printed(constant.convergence)}</p>
     ${constant.firstMembers.length > 0 && html`<p>The set begins with ${constant.firstMembers.join(', ')}, …</p>`}
     <h2>Rests on</h2>
     ${constant.restsOn.length === 0
       ? html`<p>${constant.best ? 'No published estimate: every bound is proven in the engine.' : 'Nothing yet.'}</p>`
-      : html`<ul>${constant.restsOn.map(({ estimate, title, conditional }) => html`<li>${link(`/estimates/${estimate}`, printedText(title))}${conditional && ' (conditional)'}</li>`)}</ul>`}
+      : html`<ul>${constant.restsOn.map(({ estimate, title, conditional }) => html`<li>${link(`/estimates/${estimate}`, printed(title))}${conditional && ' (conditional)'}</li>`)}</ul>`}
     ${constant.usedBy.length > 0 && html`<h2>Used by</h2><ul>${constant.usedBy.map(({ claimNumber, text }) => html`<li>${claimLink(claimNumber)}: ${text}</li>`)}</ul>`}
     ${cite(constant.cite)}`),
 })

@@ -1,5 +1,6 @@
 import katex from 'katex'
 import { certifiedTruncated, groupDigits } from '../../shared/digits.ts'
+import { fitsOneLine, printedParts } from '../../shared/printed-text.ts'
 import type { DefinitionView } from '../../shared/schemas/definition.ts'
 import { html, Html } from '../html.ts'
 
@@ -17,10 +18,16 @@ export function day(instant: string): Html {
   return html`<time datetime="${instant}">${words}</time>`
 }
 
+/** Plain text with its mathematics as it is printed. */
+export const printed = (text: string): Html =>
+  html`${printedParts(text).map(({ place, text: part }) => (place === 'line' ? part : place === 'raised' ? html`<sup>${part}</sup>` : html`<sub>${part}</sub>`))}`
+
+const NO_BREAK = '\u00a0'
+
 /** "3.1e-42" as it is printed. */
 export function magnitude(text: string): Html {
   const [mantissa = '', exponent] = text.toLowerCase().split('e')
-  return exponent === undefined || Number(exponent) === 0 ? html`${mantissa}` : html`${mantissa} · 10<sup>${String(Number(exponent)).replace('-', '−')}</sup>`
+  return exponent === undefined || Number(exponent) === 0 ? html`${mantissa}` : html`${mantissa}${NO_BREAK}·${NO_BREAK}10<sup>${String(Number(exponent)).replace('-', '−')}</sup>`
 }
 
 /** A formula as MathML, which browsers set by themselves; KaTeX escapes its input, and without `trust` no command loads anything. */
@@ -28,7 +35,7 @@ const formula = (latex: string): Html => new Html(katex.renderToString(latex, { 
 
 /** What is meant, typeset, in words and as TeX. */
 export const definitionOf = ({ latex, text, aliases }: DefinitionView): Html => html`
-  ${formula(latex)}
+  ${fitsOneLine(latex) && formula(latex)}
   <p>${text.charAt(0).toUpperCase()}${text.slice(1)}${aliases.length > 0 && ` (also: ${aliases.join(', ')})`}.</p>
   <p class="fine">TeX: <code>${latex}</code></p>`
 

@@ -83,7 +83,7 @@ describe('what a page says of itself', () => {
       expect(canonical).toBe(`${ADDRESS}/claims/${slug}`)
       expect(noindex).toBe(false)
       expect(description).toContain('1.6366163233512…, certified to 13 digits after the point.')
-      expect(description).toContain(`By ${open.author.name}, ${open.group.name}, signed 20`)
+      expect(description).toContain(`By ${open.author.name}, ${open.group.name}; signed 20`)
       expect(text).toContain(`<meta property="og:url" content="${ADDRESS}/claims/${slug}"`)
       expect(text).toContain(`<meta property="og:title" content="${title.replace(' · Merestone', '')}"`)
       expect(text).toContain(`<html lang="en" data-address="${ADDRESS}">`)

@@ -16,7 +16,8 @@ interface MastheadProps {
   words: NavigationWord[]
   /** Null for a reader without an account. */
   person: { name: string; group: string } | null
-  onSearch: (text: string) => void
+  /** Null on the page that has this search among its filters. */
+  onSearch: ((text: string) => void) | null
   onAccount: () => void
   onSignOut: () => void
 }
@@ -26,7 +27,7 @@ export function Masthead({ words, person, onSearch, onAccount, onSignOut }: Mast
   const search = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault()
     const text = new FormData(event.currentTarget).get('text')
-    onSearch(typeof text === 'string' ? text.trim() : '')
+    onSearch?.(typeof text === 'string' ? text.trim() : '')
   }
   return (
     <header className="mx-auto w-full max-w-[84rem] px-5 pt-4 sm:px-8 print:hidden">
@@ -38,22 +39,24 @@ export function Masthead({ words, person, onSearch, onAccount, onSignOut }: Mast
           </svg>
           Merestone
         </Link>
-        <form role="search" onSubmit={search} className="order-last flex w-full min-w-0 sm:order-none sm:ml-auto sm:w-80">
-          <label htmlFor="masthead-search" className="sr-only">
-            Find a constant
-          </label>
-          <input
-            id="masthead-search"
-            name="text"
-            type="search"
-            placeholder="Digits, number or words"
-            className="min-w-0 flex-1 rounded-slight border border-edge bg-leaf px-2.5 py-1 placeholder:text-soft"
-          />
-          <button type="submit" className="ml-2 text-certain underline underline-offset-[0.2em] hover:text-ink">
-            Find
-          </button>
-        </form>
-        <div className="ml-auto sm:ml-0">
+        {onSearch && (
+          <form role="search" onSubmit={search} className="order-last flex w-full min-w-0 sm:order-none sm:ml-auto sm:w-80">
+            <label htmlFor="masthead-search" className="sr-only">
+              Find a constant
+            </label>
+            <input
+              id="masthead-search"
+              name="text"
+              type="search"
+              placeholder="Digits, number or words"
+              className="min-w-0 flex-1 rounded-slight border border-edge bg-leaf px-2.5 py-1 placeholder:text-soft"
+            />
+            <button type="submit" className="ml-2 text-certain underline underline-offset-[0.2em] hover:text-ink">
+              Find
+            </button>
+          </form>
+        )}
+        <div className={classNames('ml-auto', onSearch && 'sm:ml-0')}>
           {person ? (
             <Menu
               label={person.name}

@@ -31,7 +31,7 @@ export function Shell() {
       <Masthead
         words={navigationWords(session)}
         person={session?.member ? { name: session.member.name, group: session.member.group.name } : null}
-        onSearch={(text) => void navigate(paths.register({ text }))}
+        onSearch={location.pathname === paths.register() ? null : (text) => void navigate(paths.register({ text }))}
         onAccount={() => void navigate(paths.account())}
         onSignOut={leave}
       />

@@ -1,6 +1,7 @@
 import { useEffect } from 'react'
 import { documentTitle, headTags } from '../../../shared/page-head.ts'
 import type { PageHead } from '../../../shared/page-head.ts'
+import { publicAddress } from './public-address.ts'
 
 /** Marks what belongs to the page at hand; the server marks the tags that it has written in the same way. */
 const MARK = 'data-page'
@@ -10,7 +11,7 @@ export function useDocumentHead({ title, description, canonical }: PageHead): vo
   useEffect(() => {
     const head = { title, description, canonical }
     document.title = documentTitle(head)
-    const tags = headTags(head, document.documentElement.dataset.address || window.location.origin).map(({ name, attributes }) => {
+    const tags = headTags(head, publicAddress()).map(({ name, attributes }) => {
       const element = document.createElement(name)
       for (const [key, value] of Object.entries({ ...attributes, [MARK]: '' })) element.setAttribute(key, value)
       return element

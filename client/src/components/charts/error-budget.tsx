@@ -23,6 +23,17 @@ export function Magnitude({ text }: { text: string }) {
   return exponent && Number(exponent) !== 0 ? <Power factor={mantissa ?? ''} exponent={Number(exponent)} /> : <span className="whitespace-nowrap">{mantissa}</span>
 }
 
+/** What a bound says, its name before the colon; on paper the name alone, which with the id finds the rest. */
+function Statement({ text }: { text: string }) {
+  const [name = '', ...rest] = text.split(': ')
+  return (
+    <>
+      <Printed text={name} />
+      {rest.length > 0 && <span className="print:hidden">: <Printed text={rest.join(': ')} /></span>}
+    </>
+  )
+}
+
 interface ErrorBudgetProps {
   items: BudgetLine[]
   /** Half the width of the enclosure, rounded up. */
@@ -54,7 +65,7 @@ function BudgetTable({ items, radius }: ErrorBudgetProps) {
         { key: 'source', header: 'Source', cell: (row) => (row.source ? SOURCE_WORDS[row.source] : <strong className="font-semibold">Radius</strong>) },
         { key: 'magnitude', header: 'At most', align: 'right', cell: (row) => <Magnitude text={row.magnitude} /> },
         { key: 'bound', header: 'Bound', cell: (row) => row.bound && <code className="whitespace-nowrap">{row.bound}</code> },
-        { key: 'statement', header: 'What the bound says', cell: (row) => <Printed text={row.statement} /> },
+        { key: 'statement', header: 'What the bound says', cell: (row) => <Statement text={row.statement} /> },
       ]}
     />
   )

@@ -150,7 +150,7 @@ function ClaimMatter({ claim, mayReadRuns, onAct, onUpload, onRemoveEvidence, re
           {repetition}
         </Section>
       )}
-      <Section title="Evidence">
+      <Section title="Evidence" className={claim.evidence.length === 0 ? 'print:hidden' : undefined}>
         <EvidenceList claim={claim} onUpload={onUpload} onRemove={onRemoveEvidence} />
       </Section>
       {outcome && (

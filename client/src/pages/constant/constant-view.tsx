@@ -5,6 +5,7 @@ import { paths } from '../../app/paths.ts'
 import { Narrowing } from '../../components/charts/narrowing.tsx'
 import { Nest } from '../../components/charts/nest.tsx'
 import { DigitLine } from '../../components/digit-line/digit-line.tsx'
+import { EndsOnPaper } from '../../components/digit-line/ends-on-paper.tsx'
 import { Formula } from '../../components/formula/formula.tsx'
 import { Printed } from '../../components/formula/printed.tsx'
 import { StateMark } from '../../components/state-mark/state-mark.tsx'
@@ -51,6 +52,7 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
         {constant.best ? (
           <div className="mt-3">
             <DigitLine lo={constant.best.lo} hi={constant.best.hi} size="large" copy />
+            <EndsOnPaper lo={constant.best.lo} hi={constant.best.hi} />
           </div>
         ) : (
           <p className="mt-3 text-soft italic">No enclosure of it is signed yet.</p>

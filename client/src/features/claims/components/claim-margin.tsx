@@ -5,6 +5,7 @@ import { files, paths } from '../../../app/paths.ts'
 import { FileLink, TextLink } from '../../../components/ui/link.tsx'
 import { Facts, MarginNote } from '../../../components/ui/page.tsx'
 import { Time } from '../../../components/ui/time.tsx'
+import { publicAddress } from '../../../lib/public-address.ts'
 import { CiteNote } from '../../constants/components/constant-margin.tsx'
 
 /** Who says so, by what certificate, how to cite it, and how it came to stand where it stands. */
@@ -34,6 +35,7 @@ export function ClaimMargin({ claim, mayReadRuns }: { claim: Claim; mayReadRuns:
               Download the certificate
             </FileLink>
           </p>
+          <p className="hidden break-all print:block">{publicAddress() + files.claimCertificate(claim.number?.replace('/', '-') ?? claim.id)}</p>
           <p className="mt-1 text-soft">{claim.certificate.signed ? `Signed with the key ${claim.certificate.keyId ?? ''} of this installation.` : 'Not signed yet.'}</p>
           <p className="mt-1 text-soft">
             SHA-256 <code className="break-all">{claim.certificate.digest}</code>

@@ -2,6 +2,7 @@ import type { Claim } from '../../../../../shared/schemas/claim.ts'
 import { cautionWords, digitsWords } from '../../../../../shared/words.ts'
 import { paths } from '../../../app/paths.ts'
 import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
+import { EndsOnPaper } from '../../../components/digit-line/ends-on-paper.tsx'
 import { Formula } from '../../../components/formula/formula.tsx'
 import { TextLink } from '../../../components/ui/link.tsx'
 import { Notice } from '../../../components/ui/notice.tsx'
@@ -15,12 +16,7 @@ export function ClaimSubject({ claim }: { claim: Claim }) {
         {claim.enclosure && (
           <div className="mt-3">
             <DigitLine lo={claim.enclosure.lo} hi={claim.enclosure.hi} size="large" copy />
-            <dl className="mt-2 hidden grid-cols-[auto_1fr] gap-x-4 text-[0.92rem] print:grid">
-              <dt>Upper end</dt>
-              <dd className="break-all">{claim.enclosure.hi}</dd>
-              <dt>Lower end</dt>
-              <dd className="break-all">{claim.enclosure.lo}</dd>
-            </dl>
+            <EndsOnPaper {...claim.enclosure} />
           </div>
         )}
         {claim.digits && <p className="mt-2 text-[0.92rem] text-soft">{digitsWords(claim)}</p>}

@@ -4,6 +4,7 @@ import type { OutcomeView, Run } from '../../../../../shared/schemas/run.ts'
 import { Convergence } from '../../../components/charts/convergence.tsx'
 import { ErrorBudget, Magnitude } from '../../../components/charts/error-budget.tsx'
 import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
+import { Printed } from '../../../components/formula/printed.tsx'
 import { Section } from '../../../components/ui/page.tsx'
 import { Table } from '../../../components/ui/table.tsx'
 import { convergenceUnit } from '../run-words.ts'
@@ -65,9 +66,9 @@ export function EstimateUses({ uses }: { uses: OutcomeView['estimates'] }) {
       rows={uses}
       rowKey={(use) => `${use.id} ${use.usedAt}`}
       columns={[
-        { key: 'title', header: 'Estimate', plain: true, cell: (use) => use.title },
-        { key: 'usedAt', header: 'Used at', cell: (use) => use.usedAt },
-        { key: 'validFor', header: 'Holds for', cell: (use) => use.validFor },
+        { key: 'title', header: 'Estimate', plain: true, cell: (use) => <Printed text={use.title} /> },
+        { key: 'usedAt', header: 'Used at', cell: (use) => <Printed text={use.usedAt} /> },
+        { key: 'validFor', header: 'Holds for', cell: (use) => <Printed text={use.validFor} /> },
         { key: 'conditional', header: 'Rests on a conjecture', cell: (use) => (use.conditional ? <span className="text-undecided">conditional</span> : 'no') },
       ]}
     />
