@@ -1,4 +1,4 @@
-import { randomBytes } from 'node:crypto'
+import { createSecretKey, randomBytes } from 'node:crypto'
 import type { Response } from 'express'
 import jwt from 'jsonwebtoken'
 import { dataPath, secretFile } from '../data-folder.ts'
@@ -7,7 +7,8 @@ import { env } from '../env.ts'
 /** The prefix makes browsers insist on a secure cookie of this very host. */
 export const COOKIE = env.secureCookies ? '__Host-merestone' : 'merestone'
 
-const secret = env.SESSION_SECRET ?? secretFile(dataPath('session-secret'), () => randomBytes(48).toString('base64url'))
+// A key object, made once: from a text the key would be made anew, and guessed at, with every request.
+const secret = createSecretKey(Buffer.from(env.SESSION_SECRET ?? secretFile(dataPath('session-secret'), () => randomBytes(48).toString('base64url'))))
 
 const options = { httpOnly: true, sameSite: 'lax', secure: env.secureCookies, path: '/' } as const
 

@@ -4,7 +4,7 @@ import { hasRight, type Role } from '../../shared/permissions.ts'
 import { pick, type Roll } from './load-definitions.ts'
 import type { Facts } from './load-facts.ts'
 import { PASSWORD, type LoadGroup, type LoadMember } from './load-people.ts'
-import { DEEP_LISTS, VISITS, type Asked, type Own, type Visit } from './load-visits.ts'
+import { DEEP_LISTS, LARGE_FILES, VISITS, type Asked, type Own, type Visit } from './load-visits.ts'
 
 interface Reader {
   cookie: string
@@ -53,7 +53,7 @@ function send(address: string, cookie: string, { path, body }: Asked): Promise<A
 /** Half of the readers have no account; the others are members of all roles and of every group in turn. */
 export async function gatherCrowd(address: string, facts: Facts, groups: readonly LoadGroup[], count: number, deep: number): Promise<Crowd> {
   const members = Array.from({ length: Math.floor(count / 2) }, (_, index) => groups[index % groups.length]!.members[Math.floor(index / groups.length) + (index % 2 === 0 ? 0 : 4)]!)
-  const crowd: Crowd = { address, facts, readers: [], measured: new Map(VISITS.map((visit) => [visit, { visit, milliseconds: [] }])), faults: [] }
+  const crowd: Crowd = { address, facts, readers: [], measured: new Map([...VISITS, ...LARGE_FILES].map((visit) => [visit, { visit, milliseconds: [] }])), faults: [] }
   const anonymous: Reader = { cookie: '', roles: undefined, own: { name: '', runs: [], claims: [], cursors: new Map() } }
   await findDeepPages(crowd, anonymous, deep)
   crowd.readers = await Promise.all(members.map((member) => signIn(crowd, member, deep)))
@@ -110,9 +110,9 @@ async function readOn(crowd: Crowd, reader: Reader, over: number, thinkMs: numbe
   }
 }
 
-/** Asks each way of each route once, by the first reader who may: for the plans, and to warm up. */
-export async function askEverythingOnce(crowd: Crowd, roll: Roll, between: (visit: Visit) => void = () => undefined): Promise<void> {
-  for (const visit of VISITS) {
+/** Asks for each thing once, by the first reader who may: everything for the plans and to warm up, and the large files. */
+export async function askOnce(crowd: Crowd, visits: readonly Visit[], roll: Roll, between: (visit: Visit) => void = () => undefined): Promise<void> {
+  for (const visit of visits) {
     const reader = crowd.readers.find((one) => mayAsk(one, visit.by) && canAsk(one, { what: visit.what, path: visit.ask(crowd.facts, one.own, roll).path }))
     if (reader) await pay(crowd, reader, visit, roll)
     else crowd.faults.push(`nobody can ask ${visit.route}, ${visit.what}`)
@@ -128,6 +128,9 @@ async function pay(crowd: Crowd, reader: Reader, visit: Visit, roll: Roll): Prom
   crowd.measured.get(visit)!.milliseconds.push(performance.now() - begun)
   if (status !== 200) crowd.faults.push(`${visit.route}, ${visit.what} (${asked.path}) was answered with ${status}: ${text.slice(0, 200)}`)
 }
+
+/** What was measured of some ways of asking. */
+export const measuredOf = (crowd: Crowd, visits: readonly Visit[]): Measured[] => visits.map((visit) => crowd.measured.get(visit)!)
 
 /** Forgets what was measured so far. */
 export function resetMeasured(crowd: Crowd): void {

@@ -13,27 +13,20 @@ export interface Line {
   median: number
   p99: number
   most: number
-  file: boolean
 }
 
-const lineOf = (name: string, milliseconds: readonly number[], file: boolean): Line => {
+const lineOf = (name: string, milliseconds: readonly number[]): Line => {
   const sorted = [...milliseconds].sort((a, b) => a - b)
-  return { name, requests: sorted.length, median: quantile(sorted, 0.5), p99: quantile(sorted, 0.99), most: sorted.at(-1) ?? 0, file }
+  return { name, requests: sorted.length, median: quantile(sorted, 0.5), p99: quantile(sorted, 0.99), most: sorted.at(-1) ?? 0 }
 }
 
-/** One line a way of asking, then lists and files as wholes. */
-export function linesOf(measured: Iterable<Measured>): Line[] {
-  const all = [...measured]
-  const together = (file: boolean) => all.filter(({ visit }) => (visit.file ?? false) === file).flatMap(({ milliseconds }) => milliseconds)
-  return [
-    ...all.map(({ visit, milliseconds }) => lineOf(`${visit.route}  ${visit.what}`, milliseconds, visit.file ?? false)),
-    lineOf('all lists, pages and look-ups', together(false), false),
-    lineOf('all files of many rows', together(true), true),
-  ]
-}
+/** One line a way of asking. */
+export const linesOf = (measured: Iterable<Measured>): Line[] => [...measured].map(({ visit, milliseconds }) => lineOf(`${visit.route}  ${visit.what}`, milliseconds))
 
-/** Lines that are too slow. Files of many rows are held to nothing here: how long they take depends on how many rows are asked for. */
-export const tooSlow = (lines: readonly Line[]): Line[] => lines.filter(({ median, p99, file }) => !file && (median > MEDIAN_MS || p99 > P99_MS))
+/** All ways of asking as one. */
+export const together = (measured: Iterable<Measured>): Line => lineOf('all of these', [...measured].flatMap(({ milliseconds }) => milliseconds))
+
+export const tooSlow = (lines: readonly Line[]): Line[] => lines.filter(({ median, p99 }) => median > MEDIAN_MS || p99 > P99_MS)
 
 export function table(lines: readonly Line[]): string {
   const width = Math.max(...lines.map(({ name }) => name.length))

@@ -23,8 +23,6 @@ export interface Visit {
   what: string
   /** Who asks: everybody, those who are signed in, or those with a right. */
   by: 'anyone' | 'member' | Right
-  /** Files of many rows have a line of their own and another measure. */
-  file?: true
   ask: (facts: Facts, own: Own, roll: Roll) => Asked
 }
 
@@ -79,8 +77,13 @@ const REGISTER: [what: string, query: string | ((facts: Facts, roll: Roll) => st
   ['text: digits and a word', 'text=1.00,+odd,+squarefree'],
 ]
 
-const get = (route: string, what: string, by: Visit['by'], ask: (facts: Facts, own: Own, roll: Roll) => string, file?: true): Visit => ({ route: `GET ${route}`, what, by, ask: (...given) => ({ path: ask(...given) }), ...(file && { file }) })
+const get = (route: string, what: string, by: Visit['by'], ask: (facts: Facts, own: Own, roll: Roll) => string): Visit => ({ route: `GET ${route}`, what, by, ask: (...given) => ({ path: ask(...given) }) })
 const lookUp = (what: string, text: (facts: Facts, roll: Roll) => string): Visit => ({ route: 'POST /look-ups', what, by: 'anyone', ask: (facts, _own, roll) => ({ path: '/look-ups', body: { text: text(facts, roll), reading: pick(roll, ['truncated', 'rounded']) } }) })
+
+const someWeek = (roll: Roll): string => {
+  const month = `202${1 + roll(4)}-0${1 + roll(9)}`
+  return `from=${month}-01T00:00:00Z&to=${month}-08T00:00:00Z`
+}
 
 /** Every list, filter, page and look-up that the routes offer. */
 export const VISITS: readonly Visit[] = [
@@ -126,14 +129,19 @@ export const VISITS: readonly Visit[] = [
   ...['claim', 'claim.sign', 'constant.state'].map((act) => get('/audit', `act ${act}`, 'audit.read', () => `/audit?act=${act}`)),
   get('/audit', 'subject kind', 'audit.read', () => '/audit?subjectKind=constant'),
   get('/audit', 'of a claim', 'audit.read', (_facts, { claims }, roll) => `/audit?subjectKind=claim&subjectId=${pick(roll, claims)}`),
-  get('/audit', 'a week long ago', 'audit.read', (_facts, _own, roll) => `/audit?from=202${1 + roll(4)}-03-01T00:00:00Z&to=202${5}-03-08T00:00:00Z`),
+  get('/audit', 'a week long ago', 'audit.read', (_facts, _own, roll) => `/audit?${someWeek(roll)}`),
   get('/audit', 'before a day', 'audit.read', (_facts, _own, roll) => `/audit?to=202${2 + roll(3)}-0${1 + roll(9)}-08T00:00:00Z`),
   get('/audit', 'text: a number', 'audit.read', ({ claims }, _own, roll) => `/audit?text=${pick(roll, claims).slice(0, -2)}`),
   get('/audit', 'text: a name', 'audit.read', (_facts, { name }) => `/audit?text=${encodeURIComponent(name)}`),
   get('/audit', 'text: nothing fits', 'audit.read', () => '/audit?text=unheard+of'),
-  ...(['csv', 'json', 'bibtex', 'latex'] as const).map((format) => get('/constants/export', `some hundred rows, ${format}`, 'anyone', (_facts, _own, roll) => `/constants/export?format=${format}&set=squarefree-almost-primes&k=${2 + roll(11)}&minDigits=40`, true)),
-  get('/constants/export', '10,000 rows, csv', 'anyone', () => '/constants/export?format=csv', true),
-  get('/audit/export', 'one act of the group', 'audit.read', (_facts, _own, roll) => `/audit/export?act=${pick(roll, ['claim.sign', 'constant.state'])}&format=${pick(roll, ['csv', 'jsonl'])}`, true),
+  ...(['csv', 'json', 'bibtex', 'latex'] as const).map((format) => get('/constants/export', `some hundred rows, ${format}`, 'anyone', (_facts, _own, roll) => `/constants/export?format=${format}&set=squarefree-almost-primes&k=${2 + roll(11)}&minDigits=40`)),
+  get('/audit/export', 'a week', 'audit.read', (_facts, _own, roll) => `/audit/export?${someWeek(roll)}&format=${pick(roll, ['csv', 'jsonl'])}`),
+]
+
+/** Files as large as they come. Nobody reads them while others wait for a list, so they are asked for one at a time, after the readers. */
+export const LARGE_FILES: readonly Visit[] = [
+  ...(['csv', 'json', 'bibtex', 'latex'] as const).map((format) => get('/constants/export', `10,000 rows, ${format}`, 'anyone', () => `/constants/export?format=${format}`)),
+  get('/audit/export', 'all that a group has stated', 'audit.read', () => '/audit/export?act=constant.state&format=csv'),
 ]
 
 /** Routes that no reader of this run asks, with the reason. */

@@ -22,6 +22,8 @@ if (!constants || !readers || !seconds || think === undefined || seed === undefi
 }
 
 const GROUPS = 6
+/** How often each of the large files is asked for. */
+const ROUNDS = 3
 /** Rows before a list's deep page. */
 const DEEP = 2_000
 const installation = await makeThrowawayInstallation()
@@ -32,8 +34,9 @@ try {
   const { makePeople } = await import('./load-people.ts')
   const { fill, withoutIndexes } = await import('./load-fill.ts')
   const { checkPlans, prepareFacts } = await import('./load-run.ts')
-  const { askEverythingOnce, gatherCrowd, letRead, resetMeasured } = await import('./load-readers.ts')
-  const { linesOf, table, tooSlow } = await import('./load-report.ts')
+  const { askOnce, gatherCrowd, letRead, measuredOf, resetMeasured } = await import('./load-readers.ts')
+  const { LARGE_FILES, VISITS } = await import('./load-visits.ts')
+  const { linesOf, table, together, tooSlow } = await import('./load-report.ts')
 
   const groups = await makePeople(GROUPS)
   const filled = await withoutIndexes(installation.urls.owner, () => fill(dice(seed), constants, groups, (done) => done % 20_000 === 0 && say(`${done} constants written`)))
@@ -45,15 +48,18 @@ try {
 
   const web = await installation.start('web')
   const crowd = await gatherCrowd(web.address, facts, groups, readers, DEEP)
-  await askEverythingOnce(crowd, dice(seed))
+  await askOnce(crowd, VISITS, dice(seed))
   resetMeasured(crowd)
   say(`${readers} readers at once, ${think === 0 ? 'each asking again as soon as it is answered' : `each thinking ${think} ms on average`}; load of the machine before: ${loadavg()[0]!.toFixed(1)} on ${cpus().length} cores`)
   const elapsed = await letRead(crowd, seconds, think, dice(seed + 1))
+  for (let round = 0; round < ROUNDS; round += 1) await askOnce(crowd, LARGE_FILES, dice(seed))
   await end(web.child, 'SIGTERM')
 
-  const lines = linesOf(crowd.measured.values())
-  const requests = [...crowd.measured.values()].reduce((sum, { milliseconds }) => sum + milliseconds.length, 0)
+  const measured = measuredOf(crowd, VISITS)
+  const lines = [...linesOf(measured), together(measured)]
+  const { requests } = lines.at(-1)!
   console.log(`\n${table(lines)}\n\n${requests} requests in ${elapsed.toFixed(0)} s (${(requests / elapsed).toFixed(0)} a second)`)
+  console.log(`\nLarge files, one at a time after the readers:\n${table(linesOf(measuredOf(crowd, LARGE_FILES)))}\n`)
   const faults = [...plans.faults, ...crowd.faults, ...tooSlow(lines).map(({ name }) => `too slow: ${name}`)]
   for (const fault of faults.slice(0, 50)) console.log(`FAULT ${fault}`)
   console.log(faults.length === 0 ? 'Everything in time, by indexes.' : `${faults.length} faults.`)

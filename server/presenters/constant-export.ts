@@ -18,20 +18,36 @@ const TYPES: Record<ExportFormat, { type: string; extension: string }> = {
   latex: { type: 'application/x-latex; charset=utf-8', extension: 'tex' },
 }
 
-/** The register's rows as a file. Every number is rounded outward where it is not whole. */
-export function exportConstants(rows: readonly ConstantRow[], format: ExportFormat): { text: string; type: string; name: string } {
-  const writers = { csv, json, bibtex, latex } satisfies Record<ExportFormat, (rows: readonly ConstantRow[]) => string>
-  const { type, extension } = TYPES[format]
-  return { text: writers[format](rows), type, name: `merestone-register.${extension}` }
+/** A file by its parts: what stands before the rows, each row (told whether it is the first), and what stands after them. */
+interface Writer {
+  head: string
+  row: (row: ConstantRow, first: boolean) => string
+  tail: string
 }
 
-function csv(rows: readonly ConstantRow[]): string {
-  const head = ['number', 'definition', 'lo', 'hi', 'digits_truncated', 'digits_rounded', 'state', 'in_conflict', 'group', 'changed', 'address']
-  const lines = rows.map((row) => [
+/** Under which name and as what a file is sent. */
+export const exportFile = (format: ExportFormat): { type: string; name: string } => ({ type: TYPES[format].type, name: `merestone-register.${TYPES[format].extension}` })
+
+/** Rows that are written in one go. */
+const PIECE = 200
+
+/** The register's rows as a file, piece by piece. Every number is rounded outward where it is not whole. */
+export function* exportConstants(rows: readonly ConstantRow[], format: ExportFormat): Generator<string> {
+  const { head, row, tail } = WRITERS[format]
+  yield head
+  for (let from = 0; from < rows.length; from += PIECE) yield rows.slice(from, from + PIECE).map((one, index) => row(one, from + index === 0)).join('')
+  yield tail
+}
+
+const csvLine = (cells: readonly (string | number)[]): string => cells.map(csvField).join(',') + '\r\n'
+
+const csv: Writer = {
+  head: csvLine(['number', 'definition', 'lo', 'hi', 'digits_truncated', 'digits_rounded', 'state', 'in_conflict', 'group', 'changed', 'address']),
+  row: (row) => csvLine([
     constantNumberText(row.number), row.text, row.best_lo ?? '', row.best_hi ?? '', row.digits_truncated ?? '', row.digits_rounded ?? '',
     row.state, row.in_conflict ? 'yes' : 'no', row.group_name, row.changed_at.toISOString(), constantAddress(row.number),
-  ])
-  return [head, ...lines].map((line) => line.map(csvField).join(',') + '\r\n').join('')
+  ]),
+  tail: '',
 }
 
 /** Quoted where it must be (RFC 4180). A name that a spreadsheet would run as a formula is made plain text; numbers stay numbers. */
@@ -41,29 +57,26 @@ function csvField(value: string | number): string {
   return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe
 }
 
-const json = (rows: readonly ConstantRow[]): string => JSON.stringify({ items: rows.map((row) => ({ ...presentConstantSummary(row), address: constantAddress(row.number) })) }, null, 2) + '\n'
+const json: Writer = {
+  head: '{\n  "items": [',
+  row: (row, first) => `${first ? '' : ','}\n    ${JSON.stringify({ ...presentConstantSummary(row), address: constantAddress(row.number) })}`,
+  tail: '\n  ]\n}\n',
+}
 
-const bibtex = (rows: readonly ConstantRow[]): string => rows.map((row) => citeConstant(row).bibtex + '\n').join('\n')
+const bibtex: Writer = { head: '', row: (row, first) => `${first ? '' : '\n'}${citeConstant(row).bibtex}\n`, tail: '' }
 
 /** A table for the package booktabs. */
-function latex(rows: readonly ConstantRow[]): string {
-  const lines = rows.map((row) => {
+const latex: Writer = {
+  head: ['% \\usepackage{amsmath,booktabs}', '\\begin{tabular}{llll}', '  \\toprule', '  Number & Definition & Value & Digits \\\\', '  \\midrule', ''].join('\n'),
+  row: (row) => {
     const best = bestOf(row)
     const value = best ? `$${printed(best.lo, best.hi)}$` : '--'
-    return `  ${constantNumberText(row.number)} & $\\displaystyle ${row.latex}$ & ${value} & ${best ? best.digits.truncated : '--'} \\\\`
-  })
-  return [
-    '% \\usepackage{amsmath,booktabs}',
-    '\\begin{tabular}{llll}',
-    '  \\toprule',
-    '  Number & Definition & Value & Digits \\\\',
-    '  \\midrule',
-    ...lines,
-    '  \\bottomrule',
-    '\\end{tabular}',
-    '',
-  ].join('\n')
+    return `  ${constantNumberText(row.number)} & $\\displaystyle ${row.latex}$ & ${value} & ${best ? best.digits.truncated : '--'} \\\\\n`
+  },
+  tail: '  \\bottomrule\n\\end{tabular}\n',
 }
+
+const WRITERS: Record<ExportFormat, Writer> = { csv, json, bibtex, latex }
 
 /** The certified digits with dots, cut where they are many; the interval, cut outward, where there are too few of them. */
 function printed(lo: string, hi: string): string {

@@ -1,3 +1,4 @@
+import { setImmediate as nextTurn } from 'node:timers/promises'
 import { Router } from 'express'
 import { z } from 'zod'
 import { parseConstantNumber } from '../../shared/constant-number.ts'
@@ -9,7 +10,7 @@ import { readDefinition } from '../engine/definition.ts'
 import { notFound } from '../errors.ts'
 import { may, signedInFor } from '../middleware/authenticate.ts'
 import { validate, type Validated } from '../middleware/validate.ts'
-import { exportConstants } from '../presenters/constant-export.ts'
+import { exportConstants, exportFile } from '../presenters/constant-export.ts'
 import { presentConstantSummary } from '../presenters/constant.ts'
 import { allConstants, listConstants } from '../queries/constant.ts'
 import { constantDetail } from '../queries/constant-page.ts'
@@ -32,8 +33,15 @@ constant.get('/', validate(list), async (req: Validated<typeof list>, res) => {
 
 constant.get('/export', validate(file), async (req: Validated<typeof file>, res) => {
   const { format, ...query } = req.input
-  const { text, type, name } = exportConstants(await allConstants(req.reader, query, MOST_EXPORTED), format)
-  res.set({ 'Content-Type': type, 'Content-Disposition': `attachment; filename="${name}"`, 'Cache-Control': 'no-cache' }).send(text)
+  const rows = await allConstants(req.reader, query, MOST_EXPORTED)
+  const { type, name } = exportFile(format)
+  res.set({ 'Content-Type': type, 'Content-Disposition': `attachment; filename="${name}"`, 'Cache-Control': 'no-cache' })
+  for (const piece of exportConstants(rows, format)) {
+    res.write(piece)
+    // Others are answered in between.
+    await nextTurn()
+  }
+  res.end()
 })
 
 constant.post('/', signedInFor('draft'), may('research'), validate(creation), async (req: Validated<typeof creation>, res) => {

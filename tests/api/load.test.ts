@@ -8,10 +8,10 @@ import type { Facts } from '../../server/cli/load-facts.ts'
 import { fill, withoutIndexes } from '../../server/cli/load-fill.ts'
 import { makePeople, type LoadGroup } from '../../server/cli/load-people.ts'
 import { checkPlansOf } from '../../server/cli/load-plans.ts'
-import { askEverythingOnce, gatherCrowd, letRead, type Crowd } from '../../server/cli/load-readers.ts'
-import { linesOf, table, tooSlow } from '../../server/cli/load-report.ts'
+import { askOnce, gatherCrowd, letRead, measuredOf, type Crowd } from '../../server/cli/load-readers.ts'
+import { linesOf, table, together, tooSlow } from '../../server/cli/load-report.ts'
 import { checkPlans, prepareFacts } from '../../server/cli/load-run.ts'
-import { LEFT_OUT, VISITS } from '../../server/cli/load-visits.ts'
+import { LARGE_FILES, LEFT_OUT, VISITS } from '../../server/cli/load-visits.ts'
 import { refreshBest } from '../../server/commands/constant-best.ts'
 import { inTransaction, select } from '../../server/db.ts'
 import { operationsOf } from '../../server/openapi/operations.ts'
@@ -71,12 +71,12 @@ describe('the readers', () => {
   })
 
   it('are answered, each way of asking, and go on asking until the time is over', async () => {
-    await askEverythingOnce(crowd, dice(7))
+    await askOnce(crowd, [...VISITS, ...LARGE_FILES], dice(7))
     await letRead(crowd, 2, 0, dice(8))
     expect(crowd.faults).toEqual([])
     const lines = linesOf(crowd.measured.values())
     expect(lines.filter(({ requests }) => requests === 0)).toEqual([])
-    expect(table(lines)).toMatch(/GET \/constants {2}k, by value +\d+ +\d+ +\d+ +\d+/)
+    expect(table([...lines, together(measuredOf(crowd, VISITS))])).toMatch(/GET \/constants {2}k, by value +\d+ +\d+ +\d+ +\d+/)
   })
 
   it('are told apart by half of all and all but one of a hundred', () => {
