@@ -11,7 +11,7 @@ import { constantNumberText } from '../../shared/constant-number.ts'
 import { ESTIMATES } from '../../shared/engine/estimates/library.ts'
 import { PAGES } from '../../shared/pages.ts'
 import { printedText } from '../../shared/printed-text.ts'
-import { acting, claimIn, draft, freshConstant, makeCast, numberOf, takeTo, type Cast } from '../support/claims.ts'
+import { acting, claimIn, draft, finishedRun, freshConstant, makeCast, numberOf, takeTo, type Cast } from '../support/claims.ts'
 import { makeMember, signedInAs } from '../support/people.ts'
 import { databaseUrls } from '../support/test-database.ts'
 
@@ -110,10 +110,19 @@ describe('the text of a page, for whoever reads it without JavaScript', () => {
     const noscript = /<noscript>([^]*)<\/noscript>/.exec(text)![1]!
     for (const part of [
       `<h1>${number}</h1>`, '<strong>signed</strong>', '<math', 'TeX: <code>\\sum', 'Sum over primes p of', '1.25001', '1.25002', '<span>2500</span>', 'transform, trapezoid', 'R-1',
-      '1.0 · 10<sup>−20</sup>', 'No published estimate was used', 'they meet', open.author.name, open.secondLead.name, `/api/v1/claims/${number.replace('/', '-')}/certificate`, claim.certificateDigest,
+      '1.0\u00a0·\u00a010<sup>−20</sup>', 'No published estimate was used', 'they meet', open.author.name, open.secondLead.name, `/api/v1/claims/${number.replace('/', '-')}/certificate`, claim.certificateDigest,
       '@misc{', 'should repeat it from the certificate.',
     ]) expect(noscript).toContain(part)
     await request(app).get(/\/api\/v1\/claims\/[\w-]+\/certificate/.exec(noscript)![0]).expect(200)
+  })
+
+  it('marks an estimate that is conditional', async () => {
+    const { id, title } = ESTIMATES.find(({ conditional }) => conditional)!
+    const run = await finishedRun(open.author, await freshConstant(open.author), { lo: '1.5', hi: '1.6', method: 'partial-sum' })
+    await run.update({ outcome: { ...run.outcome!, estimates: [{ id, usedAt: 'x >= 10^6', validFor: 'x >= 599', conditional: true }] } })
+    const claim = await takeTo('signed', await draftClaim(acting(open.author), { kind: 'enclosure', runId: run.id, remark: '' }), open)
+    const { text } = await read(`/claims/${claim.id}`)
+    for (const part of [`<a href="/estimates/${id}">${printedText(title)}</a>`, 'x\u00a0≥\u00a010<sup>6</sup>', 'x\u00a0≥\u00a0599', '<div>conditional</div>', 'uses 1 published estimate, 1 of them conditional']) expect(text).toContain(part)
   })
 
   it('a constant with its claims, and the register with its pages', async () => {
