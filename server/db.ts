@@ -10,14 +10,15 @@ export const sequelize = new Sequelize(env.DATABASE_URL, {
   logging: false,
   pool: { max: 10, min: 0, idle: 10_000, acquire: 20_000 },
   define: { underscored: true, timestamps: false },
-  // The tables that lists are read from stay in memory: an index is no dearer there than a scan, and compiling a query takes longer than any of ours.
+  // Short questions of many readers: compiling one, or giving it more processes, takes longer than answering it; and the tables that
+  // lists are read from stay in memory, where an index is no dearer than a scan.
   // A process that hangs within a transaction must not keep the others from the rows and from the audit trail.
   dialectOptions: {
     application_name: 'merestone',
     connectionTimeoutMillis: 10_000,
     statement_timeout: 60_000,
     idle_in_transaction_session_timeout: 60_000,
-    options: '-c jit=off -c random_page_cost=1.1',
+    options: '-c jit=off -c max_parallel_workers_per_gather=0 -c random_page_cost=1.1',
   },
 })
 

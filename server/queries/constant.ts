@@ -8,7 +8,7 @@ import { audienceOf, stateColumn, type Reader } from './audience.ts'
 import { readTextQuery } from './constant-text.ts'
 import { readCursor, writeCursor, type CursorKey } from './cursor.ts'
 import { leadingDigits } from './leading-digits.ts'
-import { FEW_FROM_DECIMALS, MEETS } from './look-up.ts'
+import { MEETS } from './look-up.ts'
 
 export type ConstantQuery = Omit<z.output<typeof constantQuery>, 'cursor' | 'limit'>
 
@@ -147,8 +147,11 @@ export async function listConstants(
   return { rows: page, next: after && writeCursor(mark, after), ...(total !== undefined && { total }) }
 }
 
+/** Decimals from which on digits mean few constants. */
+const FEW_FROM_DECIMALS = 3
+
 /** Most that is counted of a filtered list, so that counting never costs more than listing. */
-const MOST_COUNTED = 1_000
+const MOST_COUNTED = 500
 
 async function countConstants(reader: Reader, where: string[], bind: Bind): Promise<number | undefined> {
   const unfiltered = where.length === 1

@@ -5,10 +5,7 @@ import { audienceOf, type Reader } from './audience.ts'
 const NEIGHBOURS = 25
 const AROUND = 75
 
-/** From so many decimals on few constants meet the digits, and the index on ranges finds them first. */
-export const FEW_FROM_DECIMALS = 3
-
-/** Constants whose best enclosures meet [$lo, $hi]. */
+/** Constants whose best enclosures meet an interval, as a condition that the index on ranges serves. */
 export const MEETS = (lo: string, hi: string): string => `best_lo IS NOT NULL AND numrange(best_lo, best_hi, '[]') && numrange(${lo}::numeric, ${hi}::numeric, '[]')`
 
 export interface NearRow {
@@ -18,20 +15,26 @@ export interface NearRow {
   best_hi: string
 }
 
+/** Enclosures that meet the digits are all looked at up to so many; where there are more, they are walked by their width. */
+const MANY = 2_000
+
 /**
  * The constants whose best enclosures meet [lo, hi], the narrowest where there are very many, and those next to it on both sides.
- * `lo` and `hi` are the numbers that pasted digits can stand for, `decimals` how many of the digits stand after the point.
+ * `lo` and `hi` are the numbers that pasted digits can stand for.
  */
-export async function constantsNear(reader: Reader, lo: string, hi: string, decimals: number): Promise<NearRow[]> {
+export async function constantsNear(reader: Reader, lo: string, hi: string): Promise<NearRow[]> {
   const columns = 'constant_id AS id, number, best_lo, best_hi'
-  // OFFSET 0 keeps the planner from walking all enclosures by their width where few meet.
-  const fence = decimals >= FEW_FROM_DECIMALS ? 'OFFSET 0' : ''
+  const mine = 'FROM register_entries WHERE audience = $audience'
   return select<NearRow>(
-    `(SELECT * FROM (SELECT ${columns} FROM register_entries WHERE audience = $audience AND ${MEETS('$lo', '$hi')} ${fence}) meeting ORDER BY best_hi - best_lo LIMIT ${AROUND})
+    `WITH meeting AS MATERIALIZED (SELECT ${columns} ${mine} AND ${MEETS('$lo', '$hi')} LIMIT ${MANY + 1}),
+          met AS MATERIALIZED (SELECT count(*) AS count FROM meeting)
+     (SELECT * FROM meeting WHERE (SELECT count FROM met) <= ${MANY} ORDER BY best_hi - best_lo LIMIT ${AROUND})
      UNION
-     (SELECT ${columns} FROM register_entries WHERE audience = $audience AND best_lo <= $lo::numeric ORDER BY best_lo DESC LIMIT ${NEIGHBOURS})
+     (SELECT ${columns} ${mine} AND ${MEETS('$lo', '$hi')} AND (SELECT count FROM met) > ${MANY} ORDER BY best_hi - best_lo LIMIT ${AROUND})
      UNION
-     (SELECT ${columns} FROM register_entries WHERE audience = $audience AND best_lo > $lo::numeric ORDER BY best_lo LIMIT ${NEIGHBOURS})`,
+     (SELECT ${columns} ${mine} AND best_lo <= $lo::numeric ORDER BY best_lo DESC LIMIT ${NEIGHBOURS})
+     UNION
+     (SELECT ${columns} ${mine} AND best_lo > $lo::numeric ORDER BY best_lo LIMIT ${NEIGHBOURS})`,
     { audience: audienceOf(reader), lo, hi },
   )
 }

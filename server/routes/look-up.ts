@@ -17,6 +17,6 @@ lookUp.post('/', validate(asked), async (req: Validated<typeof asked>, res) => {
   const read = readDigits(req.input.text)
   if (!read.ok) throw invalidField('text', read.reason)
   const [lo, hi] = leadingDigits(plainDecimal(read.number))
-  const placed = placeBeside(read.number, req.input.reading, await constantsNear(req.reader, lo, hi, read.number.fraction.length))
+  const placed = placeBeside(read.number, req.input.reading, await constantsNear(req.reader, lo, hi))
   res.json({ items: presentLookUp(read.number, placed, await constantsById(req.reader, placed.map(({ id }) => id))) })
 })
