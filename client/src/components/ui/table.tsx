@@ -86,7 +86,7 @@ export function Table<Row>({ caption, columns, rows, rowKey, sorting, onTurn, bu
         {rows.map((row) => (
           <tr key={rowKey(row)} role="row">
             {columns.map((column) => (
-              <td key={column.key} role="cell" data-label={column.plain ? undefined : column.header} className={classNames(column.align === 'right' && 'sm:text-right', column.className)}>
+              <td key={column.key} role="cell" data-label={column.plain ? undefined : column.header} className={classNames(column.align === 'right' && 'md:text-right print:text-right', column.className)}>
                 <div className="min-w-0">{column.cell(row)}</div>
               </td>
             ))}

@@ -27,7 +27,7 @@ export function AuditTable({ entries, onTurn, busy }: AuditTableProps) {
         { key: 'at', header: 'When', cell: ({ at }) => <Time at={at} precise /> },
         { key: 'who', header: 'Who', cell: ({ actor }) => actor?.name ?? <span className="text-soft italic">Merestone</span> },
         { key: 'what', header: 'Did what', cell: (entry) => <Deed entry={entry} /> },
-        { key: 'chain', header: 'Chain', className: 'sm:w-[22%]', cell: (entry) => <ChainDetail entry={entry} /> },
+        { key: 'chain', header: 'Chain', className: 'md:w-[22%]', cell: (entry) => <ChainDetail entry={entry} /> },
       ]}
     />
   )

@@ -8,6 +8,9 @@ import { Table } from '../../../components/ui/table.tsx'
 import type { Column, Sorting } from '../../../components/ui/table.tsx'
 import { Time } from '../../../components/ui/time.tsx'
 
+/** Columns for which a window of half a screen has no room; the constant's own page has them. */
+const HALF_WIDTH = 'md:max-wide:hidden print:table-cell'
+
 const COLUMNS: Column<ConstantSummary>[] = [
   { key: 'number', header: 'Number', sortable: true, plain: true, cell: (row) => <TextLink to={paths.constant(row.number)} className="whitespace-nowrap">{row.number}</TextLink> },
   { key: 'k', header: 'Definition', sortable: true, plain: true, cell: (row) => <Formula latex={row.definition.latex} text={row.definition.text} /> },
@@ -23,8 +26,8 @@ const COLUMNS: Column<ConstantSummary>[] = [
       </>
     ),
   },
-  { key: 'group', header: 'Group', cell: (row) => row.group.name },
-  { key: 'changed', header: 'Changed', sortable: true, cell: (row) => <Time at={row.changedAt} /> },
+  { key: 'group', header: 'Group', className: HALF_WIDTH, cell: (row) => row.group.name },
+  { key: 'changed', header: 'Changed', sortable: true, className: HALF_WIDTH, cell: (row) => <Time at={row.changedAt} /> },
 ]
 
 interface ConstantTableProps {

@@ -15,12 +15,12 @@ export function EstimateTable({ estimates }: { estimates: Estimate[] }) {
       rows={estimates}
       rowKey={({ id }) => id}
       columns={[
-        { key: 'title', header: 'Estimate', plain: true, className: 'sm:w-[28%]', cell: ({ id, title }) => <TextLink to={paths.estimate(id)}><Printed text={shortTitle(title)} /></TextLink> },
-        { key: 'statement', header: 'Statement', plain: true, cell: ({ statementLatex, statement }) => <span className="block overflow-x-auto overflow-y-hidden"><Formula latex={statementLatex} text={statement} /></span> },
+        { key: 'title', header: 'Estimate', plain: true, className: 'md:w-[24%] print:w-[24%]', cell: ({ id, title }) => <TextLink to={paths.estimate(id)}><Printed text={shortTitle(title)} /></TextLink> },
+        { key: 'statement', header: 'Statement', plain: true, cell: ({ statementLatex, statement }) => <Formula latex={statementLatex} text={statement} /> },
         { key: 'range', header: 'Holds for', cell: ({ validFor }) => <Printed text={validFor} /> },
         { key: 'condition', header: 'Conditional', cell: ({ conditional, condition }) => (conditional ? <span className="text-undecided">on {condition ?? 'an unproved hypothesis'}</span> : 'no') },
-        { key: 'state', header: 'State', className: 'sm:whitespace-nowrap', cell: (estimate) => <EstimateState estimate={estimate} /> },
-        { key: 'used', header: 'Used by', className: 'sm:whitespace-nowrap', cell: ({ uses }) => (uses === 0 ? <span className="text-soft">none</span> : `${uses} signed`) },
+        { key: 'state', header: 'State', className: 'lg:whitespace-nowrap', cell: (estimate) => <EstimateState estimate={estimate} /> },
+        { key: 'used', header: 'Used by', className: 'lg:whitespace-nowrap', cell: ({ uses }) => (uses === 0 ? <span className="text-soft">none</span> : `${uses} signed`) },
       ]}
     />
   )

@@ -45,7 +45,7 @@ export function OutboxTable({ items, onResend, onTurn, busy }: OutboxTableProps)
         onTurn={onTurn}
         busy={busy}
         columns={[
-          { key: 'subject', header: 'Mail', plain: true, className: 'sm:w-[30%]', cell: ({ subject }) => subject },
+          { key: 'subject', header: 'Mail', plain: true, className: 'md:w-[30%]', cell: ({ subject }) => subject },
           { key: 'to', header: 'To', cell: ({ recipient }) => <>{recipient.name} <span className="block text-[0.92rem] wrap-anywhere text-soft">{recipient.email}</span></> },
           { key: 'written', header: 'Written', cell: ({ createdAt }) => <Time at={createdAt} precise /> },
           { key: 'fate', header: 'Fate', cell: (item) => <Fate item={item} /> },
