@@ -1,5 +1,6 @@
 import type { Certificate } from '../../../../../shared/engine/certificate/certificate.ts'
 import { readDefinition } from '../../../../../shared/engine/sets/typeset.ts'
+import { goalText } from '../../../../../shared/engine/methods/goal.ts'
 import { SOURCE_WORDS } from '../../../../../shared/words.ts'
 import { Printed } from '../../../components/formula/printed.tsx'
 import { paths } from '../../../app/paths.ts'
@@ -29,7 +30,7 @@ export function CertificateFacts({ certificate: { method, arithmetic, goal, radi
     <Facts
       facts={[
         ['Method', `${method}, ${arithmetic}`],
-        ['Goal', 'digits' in goal ? `${goal.digits} digits` : <Printed key="goal" text={`terms up to ${goal.cutoff}`} />],
+        ['Goal', <Printed key="goal" text={goalText(goal)} />],
         ['Radius', <Magnitude key="radius" text={radius} />],
         ['Digits', `${Math.max(0, digits.truncated)} truncated, ${Math.max(0, digits.rounded)} rounded`],
         ['Engine', `release ${engine.version}`],

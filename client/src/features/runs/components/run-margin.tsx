@@ -1,12 +1,12 @@
 import type { ReactNode } from 'react'
 import type { Run } from '../../../../../shared/schemas/run.ts'
+import { goalText } from '../../../../../shared/engine/methods/goal.ts'
 import { METHOD_WORDS, STATE_WORDS } from '../../../../../shared/words.ts'
 import { files, paths } from '../../../app/paths.ts'
 import type { MarkedState } from '../../../components/state-mark/state-mark.tsx'
 import { FileLink, TextLink } from '../../../components/ui/link.tsx'
 import { Facts, MarginNote } from '../../../components/ui/page.tsx'
 import { secondsInWords, Time } from '../../../components/ui/time.tsx'
-import { goalWords } from '../run-words.ts'
 
 /** How a run was asked for, its certificate, and what was made of it. */
 export function RunMargin({ run }: { run: Run }) {
@@ -15,7 +15,7 @@ export function RunMargin({ run }: { run: Run }) {
       <MarginNote title="As asked for">
         <Facts
           facts={[
-            ['Goal', goalWords(run.goal)],
+            ['Goal', goalText(run.goal)],
             ['Method', METHOD_WORDS[run.method]],
             ['Arithmetic', run.arithmetic],
             ['Started by', run.startedBy.name],
