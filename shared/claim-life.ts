@@ -56,6 +56,8 @@ export interface Facts {
   contradicted: boolean
   /** A narrower enclosure of the same constant is signed. */
   narrowerSigned: boolean
+  /** The claim's group holds a published estimate in doubt that the claim rests on. */
+  estimateInDoubt: boolean
   /** The objection that an act is about, if it is about one. */
   objection?: { state: 'open' | 'answered' | 'settled' | 'upheld'; own: boolean; refereeGone: boolean }
   /** Whether the assignment that an act is about still waits for its referee. */
@@ -81,6 +83,7 @@ const CONDITIONS = {
   'referee-gone': { holds: (f) => f.objection === undefined || f.objection.refereeGone, code: 'objection_of_another', says: 'Whoever raised an objection settles it; a lead does so only where that referee has left the review.', personal: true },
   'assignment-waits': { holds: (f) => f.assignmentWaits !== false, code: 'nothing_to_remind', says: 'This referee has nothing to do at present.' },
   'not-contradicted': { holds: (f) => !f.contradicted, code: 'in_conflict', says: 'A signed enclosure of this constant does not meet this one. Suspend or withdraw one of the two first.' },
+  'not-in-doubt': { holds: (f) => !f.estimateInDoubt, code: 'estimate_in_doubt', says: 'An estimate that this claim rests on is in doubt in its group. Lift the doubt first, or put the claim on a run without that estimate.' },
   complete: { holds: (f) => missingForEndorsement(f).length === 0, code: 'review_incomplete', says: 'The review is not complete.' },
   'nobody-left': { holds: (f) => f.activeReferees === 0, code: 'referees_left', says: 'A referee is at work.' },
   'narrower-signed': { holds: (f) => f.narrowerSigned, code: 'none_narrower', says: 'No narrower enclosure is signed.' },
@@ -112,9 +115,9 @@ export const LIFE: readonly Move[] = [
   { act: 'assign', by: 'lead', moves: { ...to('in-review', 'submitted'), ...stays('in-review', 'returned', 'endorsed') } },
   { act: 'remind', by: 'lead', moves: stays('in-review', 'returned', 'endorsed'), when: ['assignment-waits'] },
   { act: 'return', by: 'lead', moves: to('returned', 'submitted', 'in-review', 'endorsed') },
-  { act: 'sign', by: 'signatory', moves: to('signed', 'endorsed'), when: ['not-contradicted'] },
+  { act: 'sign', by: 'signatory', moves: to('signed', 'endorsed'), when: ['not-in-doubt', 'not-contradicted'] },
   { act: 'suspend', by: 'lead', moves: to('suspended', 'signed', 'superseded') },
-  { act: 'reinstate', by: 'lead', moves: to('signed', 'suspended'), when: ['not-contradicted'] },
+  { act: 'reinstate', by: 'lead', moves: to('signed', 'suspended'), when: ['not-in-doubt', 'not-contradicted'] },
   { act: 'withdraw', by: 'lead', moves: to('withdrawn', 'submitted', 'in-review', 'returned', 'endorsed', 'signed', 'superseded', 'suspended') },
   { act: 'settle', by: 'lead', moves: stays('in-review', 'returned'), when: ['referee-gone', 'is-answered'] },
 
@@ -162,12 +165,13 @@ export function partiesOf(standing: Standing): Party[] {
 }
 
 /** What is still missing before a claim in review is endorsed. */
-export function missingForEndorsement(facts: Facts): ('confirmation' | 'objection' | 'recheck' | 'recheck-disjoint')[] {
+export function missingForEndorsement(facts: Facts): ('confirmation' | 'objection' | 'recheck' | 'recheck-disjoint' | 'estimate')[] {
   const missing: ReturnType<typeof missingForEndorsement> = []
   if (facts.confirmations < facts.confirmationsNeeded) missing.push('confirmation')
   if (facts.unsettled > 0) missing.push('objection')
   if (facts.recheckNeeded && !facts.recheckMeets) missing.push('recheck')
   if (facts.recheckDisjoint) missing.push('recheck-disjoint')
+  if (facts.estimateInDoubt) missing.push('estimate')
   return missing
 }
 

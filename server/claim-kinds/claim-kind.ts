@@ -32,6 +32,13 @@ export interface ContentPatch {
   runId?: string | undefined
 }
 
+/** A published estimate that a group has in doubt. */
+export interface EstimateDoubt {
+  estimate: string
+  /** The group's name. */
+  group: string
+}
+
 /** One thing for a referee to check. */
 export interface ChecklistItem {
   item: string
@@ -51,6 +58,6 @@ export interface ClaimKind<Input> {
   renew(transaction: Transaction, claimant: Claimant, claim: Claim, patch: ContentPatch): Promise<ClaimContent>
   /** Refuses a signature where what the claim rests on no longer stands. */
   beforeSigning(transaction: Transaction, claim: Claim): Promise<void>
-  /** What a referee has to look at, from the certificate. */
-  checklist(claim: { basis: { [key: string]: Json }; source: string | null }, outcome: Outcome | null): ChecklistItem[]
+  /** What a referee has to look at, from the certificate; `doubts` are open ones about estimates that the claim rests on. */
+  checklist(claim: { basis: { [key: string]: Json }; source: string | null }, outcome: Outcome | null, doubts: readonly EstimateDoubt[]): ChecklistItem[]
 }

@@ -16,13 +16,13 @@ export const enclosure: ClaimKind<{ runId: string }> = {
     if (run?.state !== 'done' || run.certificateDigest !== claim.certificateDigest) throw conflict('basis_fallen', 'The run that this claim rests on is not there any more.')
   },
 
-  checklist(_claim, outcome) {
+  checklist(_claim, outcome, doubts) {
     if (!outcome) return []
     const bounds = outcome.budget.map(({ bound, magnitude, source }) => ({
       item: `Bound ${bound}`,
       detail: `${boundTitle(bound)}; brings ${magnitude.replace('e', ' · 10^')} to the radius (${source.replace('-', ' ')})`,
     }))
-    return [...outcome.estimates.map(estimateItem), ...bounds]
+    return [...outcome.estimates.map((use) => estimateItem(use, doubts)), ...bounds]
   },
 }
 

@@ -6,7 +6,7 @@ import type { Json } from '../audit/canonical.ts'
 import { select } from '../db.ts'
 import { conflict, invalidField, unprocessable } from '../errors.ts'
 import { Constant } from '../models/constant.ts'
-import type { ClaimContent, ClaimKind, Claimant } from './claim-kind.ts'
+import type { ClaimContent, ClaimKind, Claimant, EstimateDoubt } from './claim-kind.ts'
 import { constantByNumber } from './constant-by-number.ts'
 import { isLess } from './decimal-order.ts'
 import { makeStatement } from './statement.ts'
@@ -42,12 +42,14 @@ export const order: ClaimKind<Input> = {
     )
     if (fallen.length > 0) throw conflict('basis_fallen', 'An enclosure that this order rests on is suspended or withdrawn. Return the claim, so that it is put on what stands.')
   },
-  checklist: ({ basis }) => {
+  checklist: ({ basis }, _outcome, doubts) => {
     const { lesser, greater } = orderOf(basis)
     const side = ({ constant, enclosure, claims }: OrderSide) => ({ item: `${constant} lies in its enclosure`, detail: `[${enclosure.lo}, ${enclosure.hi}] by ${claims.map(({ number }) => number).join(' and ')}.` })
-    return [side(lesser), side(greater), { item: 'The enclosures lie in this order', detail: `${lesser.enclosure.hi} < ${greater.enclosure.lo}` }]
+    return [side(lesser), side(greater), { item: 'The enclosures lie in this order', detail: `${lesser.enclosure.hi} < ${greater.enclosure.lo}` }, ...doubts.map(inDoubt)]
   },
 }
+
+const inDoubt = ({ estimate, group }: EstimateDoubt) => ({ item: `Estimate ${estimate}`, detail: `An enclosure of the two rests on it. In doubt at ${group}.` })
 
 /** The two sides that an order rests on. */
 export const orderOf = (basis: { [key: string]: Json }): { lesser: OrderSide; greater: OrderSide } => basis as unknown as { lesser: OrderSide; greater: OrderSide }

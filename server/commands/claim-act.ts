@@ -29,23 +29,29 @@ interface ActOptions {
 /** Acts that change nothing but the claim's own rows, and so need no order among those who act on claims of one constant. */
 const ALONE: readonly PersonAct[] = ['recheck', 'remind', 'draft-verdict']
 
+/** What an act does beside moving the state: it sets fields of the claim, queues mails, and says what the audit trail is to tell. */
+export type ActWork = (context: ActContext) => Promise<ActNote | void>
+
 /**
  * One act on a claim: locks it, judges who and when on the locked row, does the work (which sets fields of the claim and leaves its state
  * alone), moves the state, and writes the audit entry and the mails, all in one transaction. What the register does of itself in
  * consequence belongs to it. Of two who act at once the second waits for the first, and is then told what has happened.
  */
-export async function actOnClaim(member: SignedInMember, claimId: string, act: PersonAct, options: ActOptions, work: (context: ActContext) => Promise<ActNote | void>): Promise<void> {
-  await inTransaction(async (transaction) => {
-    const locked = await lockClaim(transaction, claimId, ALONE.includes(act))
-    const { claim, constant } = locked
-    const { to, facts } = await judged(member, claim, act, options, transaction)
-    const tell = teller(transaction, claim, constant)
-    const from = claim.state
-    const note = (await work({ ...locked, member, facts, tell })) ?? {}
-    await moveTo(transaction, claim, to)
-    await recordClaim(transaction, claim, constant, { act, actorId: member.id, from, to, told: tell.told, ...note })
-    if (!ALONE.includes(act)) await consequences(locked, from, act)
-  })
+export async function actOnClaim(member: SignedInMember, claimId: string, act: PersonAct, options: ActOptions, work: ActWork): Promise<void> {
+  await inTransaction((transaction) => actWithin(transaction, member, claimId, act, options, work))
+}
+
+/** The same as part of a transaction. Whoever acts on several claims locks them all first (lockClaims). */
+export async function actWithin(transaction: Transaction, member: SignedInMember, claimId: string, act: PersonAct, options: ActOptions, work: ActWork): Promise<void> {
+  const locked = await lockClaim(transaction, claimId, ALONE.includes(act))
+  const { claim, constant } = locked
+  const { to, facts } = await judged(member, claim, act, options, transaction)
+  const tell = teller(transaction, claim, constant)
+  const from = claim.state
+  const note = (await work({ ...locked, member, facts, tell })) ?? {}
+  await moveTo(transaction, claim, to)
+  await recordClaim(transaction, claim, constant, { act, actorId: member.id, from, to, told: tell.told, ...note })
+  if (!ALONE.includes(act)) await consequences(locked, from, act)
 }
 
 /** Deletes a draft that was never submitted, with its evidence. Only the audit trail knows of it afterwards. */

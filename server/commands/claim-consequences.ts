@@ -8,7 +8,7 @@ import type { Run } from '../models/run.ts'
 import { leadsOf, signatoriesOf } from '../queries/claim-people.ts'
 import { factsOf } from '../queries/claim-review.ts'
 import { refreshConflicts } from './claim-conflicts.ts'
-import { lockClaim, lockConstant, moveTo, recordClaim, teller, type LockedClaim } from './claim-locked.ts'
+import { lockClaim, lockConstant, moveTo, recordClaim, shareClaimsOf, teller, type LockedClaim } from './claim-locked.ts'
 import { settleRegister } from './claim-superseding.ts'
 import { refreshBest } from './constant-best.ts'
 
@@ -47,7 +47,7 @@ export async function reconsiderClaim(transaction: Transaction, claimId: string)
   await consequences(locked, locked.claim.state, null)
 }
 
-/** Looks again at every claim of a group that is in review: after its rules have changed. */
+/** Looks again at every claim of a group that is in review: after its rules have changed, or what it holds in doubt. */
 export async function reconsiderGroup(transaction: Transaction, groupId: string): Promise<void> {
   const claims = await select<{ id: string }>(`SELECT id FROM claims WHERE group_id = $groupId AND state = 'in-review' ORDER BY constant_id, id`, { groupId }, transaction)
   for (const { id } of claims) await reconsiderClaim(transaction, id)
@@ -57,6 +57,7 @@ export async function reconsiderGroup(transaction: Transaction, groupId: string)
 async function runFinished(transaction: Transaction, run: Run): Promise<void> {
   if (run.state !== 'done' || !run.outcome) return
   const { lo, hi } = run.outcome.enclosure
+  await shareClaimsOf(transaction, run.groupId)
   await lockConstant(transaction, run.constantId)
   await change(
     `UPDATE claims SET repeated_here = true WHERE constant_id = $constantId AND kind = 'stated' AND NOT repeated_here AND lo <= $hi::numeric AND hi >= $lo::numeric`,

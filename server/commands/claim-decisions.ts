@@ -6,7 +6,8 @@ import { select } from '../db.ts'
 import { sign } from '../keys.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 import { refereesAtWork, refereesWithVerdict } from '../queries/claim-people.ts'
-import { actOnClaim, assertMayAct } from './claim-act.ts'
+import { actOnClaim, assertMayAct, type ActContext, type ActWork } from './claim-act.ts'
+import type { ActNote } from './claim-locked.ts'
 import { confirmPassword } from './session.ts'
 
 /** Sends a claim back to its author. */
@@ -36,21 +37,31 @@ export async function signClaim(member: SignedInMember, id: string, { version, p
 
 /** Takes a signed claim out of force while something that it rests on is in doubt; those whose claims rest on it are told too. */
 export async function suspendClaim(member: SignedInMember, id: string, { reason }: { reason: string }): Promise<void> {
-  await actOnClaim(member, id, 'suspend', {}, async ({ transaction, claim, tell }) => {
-    const resting = await claimsRestingOn(claim.id, transaction)
+  await actOnClaim(member, id, 'suspend', {}, suspension(reason, ({ member: by, tell }, people, touched) => tell('claim-suspended', people, { by: by.name, reason, touched })))
+}
+
+/** What a suspension does, however its author and those whose claims rest on it, `people`, are told of it. */
+export function suspension(reason: string, tellOf: (context: ActContext, people: string[], touched: string[]) => Promise<void>, cause: ActNote['detail'] = {}): ActWork {
+  return async (context) => {
+    const resting = await claimsRestingOn(context.claim.id, context.transaction)
     const touched = resting.map(({ number }) => number)
-    await tell('claim-suspended', [claim.authorId, ...resting.map(({ author_id }) => author_id)], { by: member.name, reason, touched })
-    return { reason, ...(touched.length > 0 && { detail: { touched } }) }
-  })
+    await tellOf(context, [context.claim.authorId, ...resting.map(({ author_id }) => author_id)], touched)
+    return { reason, detail: { ...cause, ...(touched.length > 0 && { touched }) } }
+  }
 }
 
 /** Puts a suspended claim in force again. */
 export async function reinstateClaim(member: SignedInMember, id: string, { reason }: { reason: string }): Promise<void> {
-  await actOnClaim(member, id, 'reinstate', {}, async ({ transaction, claim }) => {
+  await actOnClaim(member, id, 'reinstate', {}, reinstatement(reason))
+}
+
+/** What a reinstatement does. Where it is refused, nothing has been changed yet. */
+export function reinstatement(reason: string, cause: ActNote['detail'] = {}): ActWork {
+  return async ({ transaction, claim }) => {
     await kindOf(claim).beforeSigning(transaction, claim)
     claim.set({ supersededBy: null })
-    return { reason }
-  })
+    return { reason, detail: cause }
+  }
 }
 
 /** Withdraws a claim for good. Its number stays its own. */

@@ -23,15 +23,44 @@ export async function lockConstant(transaction: Transaction, id: string): Promis
   await select('SELECT id FROM constants WHERE id = $id FOR UPDATE', { id }, transaction)
 }
 
+/**
+ * Whoever acts on claims of a group shares them with others who do, until the end of the transaction; who marks an estimate in doubt
+ * holds them alone, so that no claim comes into force on it meanwhile. To be had before any constant is locked.
+ */
+export async function shareClaimsOf(transaction: Transaction, groupId: string): Promise<void> {
+  await select('SELECT pg_advisory_xact_lock_shared(hashtextextended($key, 0))', { key: `claims of ${groupId}` }, transaction)
+}
+
+/** Keeps everybody else from acting on claims of a group until the end of the transaction. */
+export async function holdClaimsOf(transaction: Transaction, groupId: string): Promise<void> {
+  await select('SELECT pg_advisory_xact_lock(hashtextextended($key, 0))', { key: `claims of ${groupId}` }, transaction)
+}
+
 /** Locks a claim, and before it its constant, unless the work is `alone`: touches no other claim and no state. */
 export async function lockClaim(transaction: Transaction, id: string, alone = false): Promise<LockedClaim> {
-  const found = await Claim.findByPk(id, { transaction, attributes: ['constantId'] })
+  const found = await Claim.findByPk(id, { transaction, attributes: ['constantId', 'groupId'] })
   if (!found) throw notFound('claim')
-  if (!alone) await lockConstant(transaction, found.constantId)
+  if (!alone) {
+    await shareClaimsOf(transaction, found.groupId)
+    await lockConstant(transaction, found.constantId)
+  }
   const claim = await Claim.findByPk(id, { transaction, lock: true })
   if (!claim) throw notFound('claim')
   const constant = await Constant.findByPk(claim.constantId, { transaction, rejectOnEmpty: true })
   return { transaction, claim, constant }
+}
+
+/**
+ * Locks the constants of several claims, and then all claims of these constants, each in the one order that everybody keeps, before the
+ * first entry of the audit trail is written: what follows waits for nobody.
+ */
+export async function lockClaims(transaction: Transaction, ids: readonly string[]): Promise<void> {
+  const constants = await select<{ id: string }>(
+    'SELECT id FROM constants WHERE id IN (SELECT constant_id FROM claims WHERE id = ANY ($ids::uuid[])) ORDER BY id FOR UPDATE',
+    { ids },
+    transaction,
+  )
+  await select('SELECT id FROM claims WHERE constant_id = ANY ($constants::uuid[]) ORDER BY id FOR UPDATE', { constants: constants.map(({ id }) => id) }, transaction)
 }
 
 /** What the audit trail says of an act besides who, when, and from where to where. */

@@ -10,6 +10,7 @@ import { recordAudit } from '../audit/record.ts'
 import { inTransaction, selectOne } from '../db.ts'
 import { readDefinition } from '../engine/definition.ts'
 import { chooseForecast } from '../engine/forecast.ts'
+import { estimatesToLeaveOut } from '../engine/without.ts'
 import { env } from '../env.ts'
 import { conflict, Problem } from '../errors.ts'
 import { cancelRunJobs, sendJob } from '../jobs/queue.ts'
@@ -28,6 +29,7 @@ interface NewRun {
   arithmetic: ArithmeticName
   goal: Goal
   forecastSeconds: number | null
+  without: readonly string[]
 }
 
 /** Whoever starts runs holds this until the end of their transaction, so that limits and double clicks are counted right. */
@@ -53,10 +55,10 @@ async function createRun(
   transaction: Transaction,
   constant: Constant,
   starter: { id: string; groupId: string },
-  { method, arithmetic, goal, forecastSeconds }: NewRun,
+  { method, arithmetic, goal, forecastSeconds, without }: NewRun,
   recheck?: { claimId: string },
 ): Promise<Run> {
-  const request: ComputationRequest = { definitions: [constant.definition], method, arithmetic, goal }
+  const request: ComputationRequest = { definitions: [constant.definition], method, arithmetic, goal, ...(without.length > 0 && { without }) }
   const text = canonicalJson(request)
   const requestKey = createHash('sha256').update(`${recheck?.claimId ?? ''}:${text}`).digest('hex')
   const twin = await selectOne<{ id: string }>(
@@ -89,7 +91,7 @@ async function createRun(
     actorId: starter.id,
     groupId: starter.groupId,
     subject: { kind: 'run', id: run.id, label: constantNumberText(constant.number) },
-    detail: { method, arithmetic, goal },
+    detail: { method, arithmetic, goal, ...(without.length > 0 && { without: [...without] }) },
   })
   return run
 }
@@ -97,11 +99,12 @@ async function createRun(
 /** Starts a run, stating its constant where that is new. The same person asking twice within seconds gets the same run. */
 export async function startRun(member: SignedInMember, input: z.output<typeof runInput>): Promise<Run> {
   const read = readDefinition(input.definition)
-  const chosen = await chooseForecast(read.definition, input.goal, input.method, input.arithmetic)
+  const without = await estimatesToLeaveOut(member.groupId, input.without)
+  const chosen = await chooseForecast(read.definition, input.goal, input.method, input.arithmetic, without)
   return inTransaction(async (transaction) => {
     await lockStarter(transaction, member.groupId)
     const { constant } = await stateConstant(transaction, member, read)
-    return createRun(transaction, constant, member, { ...chosen, goal: input.goal })
+    return createRun(transaction, constant, member, { ...chosen, goal: input.goal, without })
   })
 }
 
@@ -116,9 +119,10 @@ export async function startRecheck(
   { method, arithmetic, goal }: Pick<NewRun, 'method' | 'arithmetic' | 'goal'>,
 ): Promise<Run> {
   const constant = await Constant.findByPk(claim.constantId, { transaction, rejectOnEmpty: true })
-  const chosen = await chooseForecast(constant.definition, goal, method, arithmetic)
+  const without = await estimatesToLeaveOut(claim.groupId)
+  const chosen = await chooseForecast(constant.definition, goal, method, arithmetic, without)
   await lockStarter(transaction, claim.groupId)
-  return createRun(transaction, constant, { id: referee.id, groupId: claim.groupId }, { ...chosen, goal }, { claimId: claim.id })
+  return createRun(transaction, constant, { id: referee.id, groupId: claim.groupId }, { ...chosen, goal, without }, { claimId: claim.id })
 }
 
 /** Ends a run that waits or works. What is computed so far is kept, and what comes in afterwards is not accepted. */

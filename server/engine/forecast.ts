@@ -21,12 +21,12 @@ function reaches(goal: Goal, radius: string | null): boolean {
 /** The field of the request that holds the goal. */
 const goalField = (goal: Goal): string => `goal.${Object.keys(goal)[0]}`
 
-/** What every method, with either arithmetic, says of a definition and a goal; the quickest that reaches the goal is recommended. */
-export async function forecasts(definition: Definition, goal: Goal): Promise<ForecastView[]> {
+/** What every method, with either arithmetic, says of a definition and a goal without some of the estimates; the quickest that reaches the goal is recommended. */
+export async function forecasts(definition: Definition, goal: Goal, without: readonly string[] = []): Promise<ForecastView[]> {
   const speed = await machineSpeed()
   const views = Object.values(METHODS).flatMap((method) =>
     ARITHMETICS.map((arithmetic): ForecastView => {
-      const forecast = method.forecast(definition, goal, arithmetic, speed)
+      const forecast = method.forecast(definition, goal, arithmetic, speed, without)
       return forecast.possible
         ? { method: method.name, arithmetic, possible: true, reason: null, radius: forecast.radius, seconds: forecast.seconds, recommended: false }
         : { method: method.name, arithmetic, possible: false, reason: forecast.reason, radius: null, seconds: null, recommended: false }
@@ -44,8 +44,9 @@ export async function chooseForecast(
   goal: Goal,
   method: Method | 'auto',
   arithmetic: ArithmeticName,
+  without: readonly string[] = [],
 ): Promise<{ method: Method; arithmetic: ArithmeticName; forecastSeconds: number | null }> {
-  const views = (await forecasts(definition, goal)).filter((view) => view.arithmetic === arithmetic && (method === 'auto' || view.method === method))
+  const views = (await forecasts(definition, goal, without)).filter((view) => view.arithmetic === arithmetic && (method === 'auto' || view.method === method))
   const able = views.filter((view) => view.possible && (method !== 'auto' || reaches(goal, view.radius)))
   const chosen = able.reduce<ForecastView | null>((best, view) => (best === null || (view.seconds ?? 0) < (best.seconds ?? 0) ? view : best), null)
   if (!chosen) throw refusal(goal, method, views)

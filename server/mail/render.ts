@@ -7,6 +7,7 @@ import { claimSigned } from './templates/claim-signed.ts'
 import { claimSubmitted } from './templates/claim-submitted.ts'
 import { claimSuspended } from './templates/claim-suspended.ts'
 import { claimWithdrawn } from './templates/claim-withdrawn.ts'
+import { estimateInDoubt } from './templates/estimate-in-doubt.ts'
 import { invitation } from './templates/invitation.ts'
 import { objectionRaised } from './templates/objection-raised.ts'
 import { passwordReset } from './templates/password-reset.ts'
@@ -29,6 +30,7 @@ const templates: { [T in MailTemplate]: (data: MailData[T]) => MailContent } = {
   'claim-returned': claimReturned,
   'claim-suspended': claimSuspended,
   'claim-withdrawn': claimWithdrawn,
+  'estimate-in-doubt': estimateInDoubt,
   reminder,
 }
 

@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { certificateSchema } from '../../shared/schemas/certificate.ts'
 import { act, claim, claimPage, desk, digitCheck, evidence, type Act } from '../../shared/schemas/claim.ts'
 import { constant, constantPage, lookUpResult } from '../../shared/schemas/constant.ts'
-import { estimate } from '../../shared/schemas/estimate.ts'
+import { estimate, estimateDoubt, liftResult } from '../../shared/schemas/estimate.ts'
 import { auditCheck, auditPage, group, outboxItem, outboxPage, publicKeyList } from '../../shared/schemas/group.ts'
 import { importPreview, importResult } from '../../shared/schemas/import.ts'
 import { account, invitation, invitationList, invitationOffer, member, memberList } from '../../shared/schemas/member.ts'
@@ -91,6 +91,9 @@ export const ANSWERS: Record<string, Answer> = {
   'GET /runs/:id/certificate': answer('readRunCertificate', 'The certificate of a run', certificateSchema),
   'GET /estimates': answer('listEstimates', 'The library of published estimates', z.object({ items: z.array(estimate) })),
   'GET /estimates/:id': answer('readEstimate', 'A published estimate and what rests on it', estimate),
+  'GET /estimates/:id/doubt': answer('readEstimateDoubt', 'All that rests on an estimate in the own group, and its doubt', estimateDoubt),
+  'POST /estimates/:id/doubt': answer('markInDoubt', 'Mark an estimate as in doubt; suspends what rests on it', estimateDoubt, 201),
+  'POST /estimates/:id/doubt/lift': answer('liftDoubt', 'Lift the doubt about an estimate and reinstate claims', liftResult),
   'GET /constants': answer('listConstants', 'The register, filtered and sorted', constantPage),
   'GET /constants/export': answer('exportConstants', 'What is filtered as CSV, JSON, BibTeX or a LaTeX table', 'text/csv'),
   'POST /constants': answer('stateConstant', 'State a constant; one that exists is answered as it is', constant, 201),

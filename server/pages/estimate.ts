@@ -5,6 +5,7 @@ import { notFound } from '../errors.ts'
 import { html } from '../html.ts'
 import { presentEstimate } from '../presenters/estimate.ts'
 import { usesOfEstimates } from '../queries/estimate.ts'
+import { doubtsOfEstimates } from '../queries/estimate-doubt.ts'
 import { claimLink, link, printed, table, textPage } from './parts.ts'
 import type { PageContent } from './template.ts'
 
@@ -29,7 +30,7 @@ export const estimatesPage = (): PageContent => LIBRARY
 export async function estimatePage(id: string): Promise<PageContent> {
   const entry = estimateById(id)
   if (!entry) throw notFound('estimate')
-  const estimate = presentEstimate(entry, await usesOfEstimates(undefined, [entry.id], 500))
+  const estimate = presentEstimate(entry, await usesOfEstimates(undefined, [entry.id], 500), await doubtsOfEstimates(undefined, [entry.id]), undefined)
   return {
     head: estimateHead(estimate),
     text: textPage(html`

@@ -21,9 +21,10 @@ export function nextStep({ state, author, facts, assignments, objections }: Situ
     case 'returned':
       return facts.unanswered === 0 ? `${author}: resubmit` : `${author}: answer the ${facts.unanswered === 1 ? 'objection' : `${facts.unanswered} objections`}, then resubmit`
     case 'endorsed':
+      if (facts.estimateInDoubt) return 'a lead: an estimate that it rests on is in doubt; lift the doubt or return the claim'
       return facts.contradicted ? 'a lead: settle the conflict, then sign' : 'a lead: sign'
     case 'suspended':
-      return 'a lead: reinstate or withdraw'
+      return facts.estimateInDoubt ? 'a lead: lift the doubt about an estimate that it rests on, or withdraw' : 'a lead: reinstate or withdraw'
     case 'signed':
     case 'superseded':
       return 'nobody: it is in the register'
@@ -41,6 +42,7 @@ function reviewSteps(facts: Facts, assignments: Situation['assignments'], object
   const missing = missingForEndorsement(facts)
   if (missing.includes('recheck-disjoint')) steps.push('the referees: a recheck does not meet the claim; object, or find the mistake')
   else if (missing.includes('recheck')) steps.push('a referee: recheck by other arithmetic or another method')
+  if (missing.includes('estimate')) steps.push('a lead: an estimate that it rests on is in doubt; lift the doubt or return the claim')
   if (steps.length === 0 && missing.includes('confirmation')) steps.push('a lead: assign another referee')
   return steps.length === 0 ? 'the referees: complete the review' : steps.join('; ')
 }

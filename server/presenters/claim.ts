@@ -1,5 +1,6 @@
 import { judge, type Facts, type Standing } from '../../shared/claim-life.ts'
 import { claimNumberText, constantNumberText } from '../../shared/constant-number.ts'
+import { estimateById } from '../../shared/engine/estimates/library.ts'
 import type { Claim, ClaimSummary } from '../../shared/schemas/claim.ts'
 import { kindOf } from '../claim-kinds/kinds.ts'
 import { orderOf } from '../claim-kinds/order.ts'
@@ -8,6 +9,7 @@ import type { Reader } from '../queries/audience.ts'
 import type { ClaimDetailRow, ClaimRow } from '../queries/claim.ts'
 import type { HistoryRow } from '../queries/claim-history.ts'
 import type { AssignmentRow, ConflictRow, EvidenceRow, ObjectionRow, RecheckRow } from '../queries/claim-parts.ts'
+import type { DoubtRow } from '../queries/estimate-doubt.ts'
 import { citeClaim } from './claim-cite.ts'
 import { nextStep } from './claim-next.ts'
 import { presentOutcome } from './run.ts'
@@ -72,6 +74,14 @@ const presentRecheck = (row: RecheckRow, inside: boolean): Claim['rechecks'][num
 
 const presentHistory = (row: HistoryRow): Claim['history'][number] => ({ at: row.at.toISOString(), actor: row.actor_name, act: row.act, from: row.from, to: row.to, reason: row.reason })
 
+const presentClaimDoubt = (row: DoubtRow): Claim['doubts'][number] => ({
+  estimate: row.estimate,
+  title: estimateById(row.estimate)?.title ?? row.estimate,
+  group: { id: row.group_id, name: row.group_name },
+  at: row.marked_at.toISOString(),
+  reason: row.reason,
+})
+
 /** What of a claim's history is in the register: from the signature on, and when it was submitted. */
 const PUBLIC_ACTS = new Set(['submit', 'sign', 'supersede', 'restore', 'suspend', 'reinstate', 'withdraw'])
 
@@ -92,6 +102,7 @@ export interface ClaimParts {
   objections: ObjectionRow[]
   rechecks: RecheckRow[]
   conflicts: ConflictRow[]
+  doubts: DoubtRow[]
   history: HistoryRow[]
   possible: { id: string; name: string; group: string }[]
   draftVerdict: string | null
@@ -129,7 +140,8 @@ export function presentClaim(row: ClaimDetailRow, parts: ClaimParts): Claim {
     assignments: parts.assignments.map(presentAssignment),
     objections: parts.objections.map((objection) => presentObjection(objection, row, parts)),
     rechecks: parts.rechecks.filter(({ state }) => inside || state === 'done').map((recheck) => presentRecheck(recheck, inside)),
-    checklist: kindOf(row).checklist(row, row.outcome),
+    doubts: parts.doubts.map(presentClaimDoubt),
+    checklist: kindOf(row).checklist(row, row.outcome, parts.doubts.map(({ estimate, group_name }) => ({ estimate, group: group_name }))),
     confirmations: { have: facts.confirmations, need: facts.confirmationsNeeded, recheckNeeded: facts.recheckNeeded, recheckDone: facts.recheckMeets },
     conflicts: parts.conflicts
       .filter((conflict) => conflict.open || inside || conflict.other_group === reader?.groupId)

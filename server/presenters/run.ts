@@ -45,6 +45,7 @@ export const presentOutcome = (outcome: Outcome, certificateDigest: string): Out
 export const presentRun = (row: RunDetailRow, claims: { id: string; number: number; ordinal: number | null; state: string }[], reader: SignedInMember): Run => ({
   ...presentRunSummary(row),
   group: { id: row.group_id, name: row.group_name },
+  without: row.without,
   forecastSeconds: seconds(row.forecast_seconds),
   cpuSeconds: Number(row.cpu_ms) / 1000,
   secondsLeft: seconds(row.seconds_left),

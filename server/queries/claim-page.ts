@@ -7,6 +7,7 @@ import type { Reader } from './audience.ts'
 import { claimIdOf, findClaim, type ClaimDetailRow } from './claim.ts'
 import { historyOf } from './claim-history.ts'
 import { assignmentsOf, conflictsOfClaim, evidenceOf, objectionsOf, possibleRefereesOf, rechecksOf, verdictDraftOf } from './claim-parts.ts'
+import { doubtsOfClaim } from './estimate-doubt.ts'
 import { factsOf, standingOf } from './claim-review.ts'
 
 /** A claim with how the reader stands to it. */
@@ -55,16 +56,17 @@ export async function claimDetailIfOpen(reader: Reader, reference: string): Prom
 async function detailOf(reader: Reader, { row, standing, view }: ReadClaim): Promise<Claim> {
   const inside = view === 'work'
   const leads = standing !== undefined && standing.sameGroup && hasRight(standing.roles, 'claims.decide')
-  const [facts, evidence, assignments, objections, rechecks, conflicts, history, possible, draftVerdict] = await Promise.all([
+  const [facts, evidence, assignments, objections, rechecks, conflicts, doubts, history, possible, draftVerdict] = await Promise.all([
     factsOf({ id: row.id, kind: row.kind, groupId: row.group_id, authorId: row.author_id }, reader?.id ?? null),
     evidenceOf(row.id),
     inside ? assignmentsOf(row.id) : [],
     inside ? objectionsOf(row.id) : [],
     rechecksOf(row.id),
     conflictsOfClaim(row.id),
+    doubtsOfClaim(reader, row.id),
     historyOf(row.id),
     leads ? possibleRefereesOf(row.id) : [],
     reader ? verdictDraftOf(row.id, reader.id) : null,
   ])
-  return presentClaim(row, { view, reader, standing, facts, evidence, assignments, objections, rechecks, conflicts, history, possible, draftVerdict })
+  return presentClaim(row, { view, reader, standing, facts, evidence, assignments, objections, rechecks, conflicts, doubts, history, possible, draftVerdict })
 }

@@ -48,6 +48,7 @@ interface FactsRow {
   recheck_disjoint: boolean
   contradicted: boolean
   narrower_signed: boolean
+  estimate_in_doubt: boolean
 }
 
 /** Runs that recheck the claim `c` and are done, with their enclosures and whether they are independent of the claim's own run. */
@@ -60,7 +61,8 @@ const FACTS = `
   SELECT o.unanswered, o.unsettled, o.own_unsettled, a.own_confirmed, a.active_referees, a.confirmations, g.confirmations_needed, g.recheck_needed, x.*,
     EXISTS (SELECT 1 FROM conflicts k JOIN claims other ON other.id = CASE WHEN k.claim_id = c.id THEN k.signed_claim_id ELSE k.claim_id END
             WHERE (k.claim_id = c.id OR k.signed_claim_id = c.id) AND k.closed_at IS NULL AND other.state IN ('signed', 'superseded')) AS contradicted,
-    EXISTS (SELECT 1 FROM claims n WHERE n.constant_id = c.constant_id AND n.id <> c.id AND n.state = 'signed' AND n.lo >= c.lo AND n.hi <= c.hi AND n.hi - n.lo < c.hi - c.lo) AS narrower_signed
+    EXISTS (SELECT 1 FROM claims n WHERE n.constant_id = c.constant_id AND n.id <> c.id AND n.state = 'signed' AND n.lo >= c.lo AND n.hi <= c.hi AND n.hi - n.lo < c.hi - c.lo) AS narrower_signed,
+    EXISTS (SELECT 1 FROM estimate_doubts d JOIN claim_estimates u ON u.estimate = d.estimate WHERE u.claim_id = c.id AND d.group_id = c.group_id AND d.lifted_at IS NULL) AS estimate_in_doubt
   FROM claims c JOIN groups g ON g.id = c.group_id
   CROSS JOIN LATERAL (
     SELECT count(*) FILTER (WHERE o.state IN ('open', 'upheld'))::int AS unanswered, count(*) FILTER (WHERE o.state <> 'settled')::int AS unsettled,
@@ -96,6 +98,7 @@ export async function factsOf(claim: ClaimRef, memberId: string | null, subject:
     recheckDisjoint: row.recheck_disjoint,
     contradicted: row.contradicted,
     narrowerSigned: row.narrower_signed,
+    estimateInDoubt: row.estimate_in_doubt,
     ...(objection && { objection }),
     ...(waits !== undefined && { assignmentWaits: waits }),
   }

@@ -75,6 +75,8 @@ export async function listRuns(reader: SignedInMember, { cursor, limit, ...query
 }
 
 export interface RunDetailRow extends RunRow {
+  /** Estimates that it may not rest on. */
+  without: string[]
   forecast_seconds: string | null
   cpu_ms: string
   seconds_left: string | null
@@ -88,7 +90,7 @@ export interface RunDetailRow extends RunRow {
 /** One run by id, whoever may see it: the policy decides on the row. */
 export async function findRun(id: string): Promise<RunDetailRow | undefined> {
   return selectOne<RunDetailRow>(
-    `SELECT ${COLUMNS}, r.forecast_seconds, r.cpu_ms, r.seconds_left, r.shards_done, r.shards_total, r.outcome, r.certificate_digest, r.failure ${FROM} WHERE r.id = $id`,
+    `SELECT ${COLUMNS}, coalesce(r.request::jsonb->'without', '[]') AS without, r.forecast_seconds, r.cpu_ms, r.seconds_left, r.shards_done, r.shards_total, r.outcome, r.certificate_digest, r.failure ${FROM} WHERE r.id = $id`,
     { id },
   )
 }

@@ -10,6 +10,7 @@ import { constant } from './constant.ts'
 import { desk } from './desk.ts'
 import { digitCheck } from './digit-check.ts'
 import { estimate } from './estimate.ts'
+import { estimateDoubt } from './estimate-doubt.ts'
 import { evidence } from './evidence.ts'
 import { group } from './group.ts'
 import { imports } from './import.ts'
@@ -36,6 +37,7 @@ export const RESOURCES: readonly (readonly [string, Router])[] = [
   ['/plans', plan],
   ['/runs', run],
   ['/estimates', estimate],
+  ['/estimates', estimateDoubt],
   ['/constants', constant],
   ['/look-ups', lookUp],
   ['/claims', claim],

@@ -5,6 +5,7 @@ import { notFound } from '../errors.ts'
 import { validate, type Validated } from '../middleware/validate.ts'
 import { presentEstimate } from '../presenters/estimate.ts'
 import { usesOfEstimates } from '../queries/estimate.ts'
+import { doubtsOfEstimates } from '../queries/estimate-doubt.ts'
 
 /** The engine's library of published estimates; open to everybody. */
 export const estimate = Router()
@@ -13,11 +14,13 @@ const one = { params: z.object({ id: z.string().max(200) }) }
 
 estimate.get('/', async (req, res) => {
   const uses = await usesOfEstimates(req.reader, ESTIMATES.map(({ id }) => id), 20)
-  res.json({ items: ESTIMATES.map((entry) => presentEstimate(entry, uses)) })
+  const doubts = await doubtsOfEstimates(req.reader, ESTIMATES.map(({ id }) => id))
+  res.json({ items: ESTIMATES.map((entry) => presentEstimate(entry, uses, doubts, req.reader)) })
 })
 
 estimate.get('/:id', validate(one), async (req: Validated<typeof one>, res) => {
   const entry = estimateById(req.input.id)
   if (!entry) throw notFound('estimate')
-  res.json(presentEstimate(entry, await usesOfEstimates(req.reader, [entry.id], 500)))
+  const [uses, doubts] = [await usesOfEstimates(req.reader, [entry.id], 500), await doubtsOfEstimates(req.reader, [entry.id])]
+  res.json(presentEstimate(entry, uses, doubts, req.reader))
 })

@@ -148,6 +148,8 @@ export const claim = claimSummary.extend({
   assignments: z.array(assignment),
   objections: z.array(objection),
   rechecks: z.array(recheckView),
+  /** Open doubts about estimates that it rests on, of the reader's group and of groups that publish. */
+  doubts: z.array(z.object({ estimate: z.string(), title: z.string(), group: z.object({ id, name: z.string() }), at: instant, reason: z.string() })),
   /** Each estimate and bound to check, made from the certificate. */
   checklist: z.array(z.object({ item: z.string(), detail: z.string() })),
   confirmations: z.object({ have: z.number().int(), need: z.number().int(), recheckNeeded: z.boolean(), recheckDone: z.boolean() }),

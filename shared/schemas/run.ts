@@ -14,7 +14,10 @@ export const goal = z.union([
 ])
 
 /** POST /plans: what would be computed, for every method and arithmetic, before anything starts. */
-export const planInput = z.object({ definition: definitionInput, goal })
+/** Ids of published estimates that nothing may rest on; those that the member's group has in doubt are left out in any case. */
+const without = z.array(z.string().max(200)).max(500).default([])
+
+export const planInput = z.object({ definition: definitionInput, goal, without })
 export const forecast = z.object({
   method,
   arithmetic,
@@ -32,6 +35,8 @@ export const plan = z.object({
   /** Register number if this constant is already stated. */
   constant: constantNumber.nullable(),
   forecasts: z.array(forecast),
+  /** Estimates that are left out. */
+  without: z.array(z.string()),
 })
 export type Plan = z.infer<typeof plan>
 
@@ -41,6 +46,7 @@ export const runInput = z.object({
   goal,
   method: method.or(z.literal('auto')).default('auto'),
   arithmetic: arithmetic.default('ball'),
+  without,
 })
 export type RunInput = z.input<typeof runInput>
 
@@ -89,6 +95,8 @@ export type RunSummary = z.infer<typeof runSummary>
 
 export const run = runSummary.extend({
   group: z.object({ id, name: z.string() }),
+  /** Estimates that it may not rest on. */
+  without: z.array(z.string()),
   /** Forecast of CPU seconds made when it was started. */
   forecastSeconds: z.number().nullable(),
   /** CPU seconds used so far by finished shards. */

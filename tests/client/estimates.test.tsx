@@ -12,7 +12,7 @@ import type { Estimate } from '../../shared/schemas/estimate.ts'
 
 const estimate = (more: Partial<Estimate> = {}): Estimate => ({
   id: 'theta-one', title: 'Somebody 2018, k = 1, x >= 908994923', statementLatex: '|\\theta(x)-x| < 0.001\\,\\frac{x}{\\log x}', statement: '|theta(x) - x| < 0.001 x / log x',
-  validFor: 'x >= 908994923', conditional: false, condition: null, source: 'A journal 45 (2018), Theorem 4.2', checked: 'Checked to 10^8.', state: 'in-force', stateSince: null, uses: 0, usedBy: [], ...more,
+  validFor: 'x >= 908994923', conditional: false, condition: null, source: 'A journal 45 (2018), Theorem 4.2', checked: 'Checked to 10^8.', state: 'in-force', stateSince: null, doubts: [], abilities: { doubt: false }, uses: 0, usedBy: [], ...more,
 })
 const have = <Data,>(data: Data) => ({ data, error: null, onRetry: () => undefined })
 const all = [estimate(), estimate({ id: 'theta-two', title: 'Another 1976', conditional: true, condition: 'the Riemann hypothesis' }), estimate({ id: 'theta-three', title: 'Third 2021', state: 'in-doubt', stateSince: '2026-03-01T08:00:00Z', uses: 1, usedBy: [{ claimNumber: 'MST-0001/1', usedAt: 'x >= 10^9' }] })]

@@ -40,6 +40,7 @@ export const constantSummaries: ConstantSummary[] = VALUES.map((value, index) =>
 export const plan: Plan = {
   definition: almostPrimes(3),
   constant: 'MST-0003',
+  without: [],
   forecasts: [
     { method: 'transform', arithmetic: 'ball', possible: true, reason: null, radius: '2.1e-42', seconds: 0.8, recommended: true },
     { method: 'transform', arithmetic: 'mpfr', possible: true, reason: null, radius: '2.1e-42', seconds: 4.2, recommended: false },
@@ -72,7 +73,7 @@ const outcome: NonNullable<Run['outcome']> = {
 export const finishedRun: Run = {
   id: id(31), constant: 'MST-0003', definition: almostPrimes(3), state: 'done', method: 'transform', arithmetic: 'ball', goal: { digits: 36 },
   progress: 1, purpose: 'run', claimNumber: null, startedBy: AUTHOR, createdAt: '2026-05-02T08:00:00Z', startedAt: '2026-05-02T08:00:01Z',
-  finishedAt: '2026-05-02T08:00:03Z', digits: outcome.digits, group: GROUP, forecastSeconds: 0.9, cpuSeconds: 1.1, secondsLeft: null,
+  finishedAt: '2026-05-02T08:00:03Z', digits: outcome.digits, group: GROUP, without: [], forecastSeconds: 0.9, cpuSeconds: 1.1, secondsLeft: null,
   shards: { done: 16, total: 16 }, outcome, failure: null, claims: [], abilities: { stop: false, resume: false, registerClaim: true },
 }
 export const workingRun: Run = {
@@ -98,7 +99,7 @@ const recheck: Claim['rechecks'][number] = {
 
 export const claimInReview: Claim = {
   ...claimSummary, version: 3, remark: 'The step was chosen for 36 digits; the digits in Table 2 of the manuscript are these, truncated.', source: null,
-  run: { id: finishedRun.id, method: 'transform', arithmetic: 'ball' }, outcome, digest: DIGEST, certificate: { digest: DIGEST, signed: false, keyId: null }, evidence,
+  run: { id: finishedRun.id, method: 'transform', arithmetic: 'ball' }, outcome, doubts: [], digest: DIGEST, certificate: { digest: DIGEST, signed: false, keyId: null }, evidence,
   assignments: [assignment], objections: [], rechecks: [recheck],
   checklist: [{ item: 'T-2, discretisation', detail: 'At most 8.2e-39: F κ with a = arctan(2π/(bh)).' }, { item: 'T-3, truncation below', detail: 'At most 3.1e-40.' }],
   confirmations: { have: 0, need: 1, recheckNeeded: true, recheckDone: true }, conflicts: [], supersededBy: null, supersedes: null, order: null, statedValue: null,

@@ -6,7 +6,7 @@ import { ACTS, EXPECTED, STATES, type Capacity } from '../support/claim-life-tab
 
 const NEUTRAL: Facts = {
   unanswered: 0, unsettled: 0, ownUnsettled: 0, ownConfirmed: false, activeReferees: 2, confirmations: 0, confirmationsNeeded: 1,
-  recheckNeeded: true, recheckMeets: false, recheckDisjoint: false, contradicted: false, narrowerSigned: false,
+  recheckNeeded: true, recheckMeets: false, recheckDisjoint: false, contradicted: false, narrowerSigned: false, estimateInDoubt: false,
 }
 /** Facts in which the act finds what it is about: the objection that is answered or settled. */
 const factsFor = (act: PersonAct, own: boolean): Facts => {

@@ -73,7 +73,7 @@ export async function finishedRun(member: TestMember, constant: Constant, { lo, 
   const request = { definitions: [constant.definition], method, arithmetic, goal }
   return Run.create({
     constantId: constant.id, groupId: member.groupId, startedBy: member.id, method, arithmetic, goal, outcome, request: canonicalJson(request), requestKey: randomUUID(),
-    state: 'done', progress: '1', certificate: canonicalJson(certificate), certificateDigest: certificate.digest, finishedAt: new Date(),
+    estimates: outcome.estimates.map(({ id }) => id), state: 'done', progress: '1', certificate: canonicalJson(certificate), certificateDigest: certificate.digest, finishedAt: new Date(),
     ...(claimId !== undefined && { purpose: 'recheck' as const, claimId }),
   })
 }
