@@ -1,3 +1,4 @@
+import { estimateById } from '../../shared/engine/estimates/library.ts'
 import type { Desk } from '../../shared/schemas/claim.ts'
 import type { ClaimRow } from '../queries/claim.ts'
 import type { WaitingRow } from '../queries/desk.ts'
@@ -27,7 +28,7 @@ export function deskText({ kind, count, who }: Pick<WaitingRow, 'kind' | 'count'
     case 'conflict':
       return 'Settle a conflict: two enclosures do not meet'
     case 'decide':
-      return 'Reinstate or withdraw: it is suspended'
+      return who === null ? 'Reinstate or withdraw: it is suspended' : `Suspended: the estimate “${estimateById(who)?.title ?? who}” is in doubt`
   }
 }
 

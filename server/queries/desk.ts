@@ -39,6 +39,9 @@ const REFEREE = `
       OR s.state = 'accepted' AND o.count > 0 AND c.state IN ('in-review', 'returned')
       OR s.state = 'accepted' AND c.state = 'in-review' AND o.count = 0 AND (s.verdict IS NULL OR s.verdict = 'objected' OR s.verdict_digest <> c.digest))`
 
+/** Estimates in doubt in the group of the claim `c` that it rests on. */
+const DOUBTS = 'SELECT d.estimate FROM estimate_doubts d JOIN claim_estimates u ON u.estimate = d.estimate WHERE u.claim_id = c.id AND d.group_id = c.group_id AND d.lifted_at IS NULL'
+
 /** What a lead is to do: find referees, remind those who are late, sign what one may sign, settle conflicts, decide on what is suspended. */
 const LEAD = [
   `SELECT 'lead', 'assign', c.id, c.since, NULL, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'submitted'`,
@@ -54,11 +57,11 @@ const LEAD = [
    WHERE c.group_id = $group AND c.state = 'in-review' AND s.state <> 'declined' AND (s.verdict IS DISTINCT FROM 'confirmed' OR s.verdict_digest <> c.digest)
      AND greatest(coalesce(s.answered_at, s.asked_at), c.since, s.reminded_at) < now() - make_interval(days => g.reminder_days)
    GROUP BY c.id`,
-  `SELECT 'lead', 'sign', c.id, c.since, NULL, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'endorsed' AND c.author_id <> $me
+  `SELECT 'lead', 'sign', c.id, c.since, NULL, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'endorsed' AND c.author_id <> $me AND NOT EXISTS (${DOUBTS})
      AND NOT EXISTS (SELECT 1 FROM assignments s WHERE s.claim_id = c.id AND s.referee_id = $me AND (s.state <> 'declined' OR s.verdict IS NOT NULL))`,
   `SELECT 'lead', 'conflict', c.id, min(k.opened_at), NULL, count(*)::int FROM conflicts k CROSS JOIN LATERAL unnest(ARRAY[k.claim_id, k.signed_claim_id]) AS side (id) JOIN claims c ON c.id = side.id
    WHERE c.group_id = $group AND k.closed_at IS NULL GROUP BY c.id`,
-  `SELECT 'lead', 'decide', c.id, c.since, NULL, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'suspended'`,
+  `SELECT 'lead', 'decide', c.id, c.since, (SELECT min(d.estimate) FROM (${DOUBTS}) d), 0 FROM claims c WHERE c.group_id = $group AND c.state = 'suspended'`,
 ]
 
 /** What waits for a member, by the rights of their roles, as SQL; null where their roles make nothing wait. */

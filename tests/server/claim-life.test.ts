@@ -98,6 +98,7 @@ describe('what follows by itself', () => {
     ['an objection', { unsettled: 1 }, 'objection'],
     ['the recheck', { recheckMeets: false }, 'recheck'],
     ['a recheck that does not meet', { recheckDisjoint: true }, 'recheck-disjoint'],
+    ['an estimate that is in doubt', { estimateInDoubt: true }, 'estimate'],
   ])('waits for %s', (_name, facts, missing) => {
     expect(consequence('in-review', { ...complete, ...facts })).toBeUndefined()
     expect(missingForEndorsement({ ...complete, ...facts })).toEqual([missing])

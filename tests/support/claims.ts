@@ -58,22 +58,24 @@ interface RunShape {
   method?: Method
   arithmetic?: ArithmeticName
   claimId?: string
+  /** Ids of the estimates that it rests on; a partial sum rests on one if none is named. */
+  estimates?: readonly string[]
 }
 
 /** A run that is done, as the worker leaves it, with an enclosure of the test's choice. */
-export async function finishedRun(member: TestMember, constant: Constant, { lo, hi, method = 'transform', arithmetic = 'ball', claimId }: RunShape): Promise<Run> {
+export async function finishedRun(member: TestMember, constant: Constant, { lo, hi, method = 'transform', arithmetic = 'ball', claimId, estimates = method === 'partial-sum' ? ['dusart-theta'] : [] }: RunShape): Promise<Run> {
   const goal = method === 'partial-sum' ? { cutoff: '1000' } : { digits: 10 }
   const outcome: Outcome = {
     definition: constant.definition, enclosure: { lo, hi }, radius: '5.0e-4', digits: digitsOf({ lo, hi }), method, arithmetic, goal, parameters: { bits: 128 },
     budget: [{ source: 'rounding', bound: 'R-1', magnitude: '1.0e-20' }],
-    estimates: method === 'partial-sum' ? [{ id: 'dusart-theta', usedAt: 'x >= 1000', validFor: 'x >= 2', conditional: false }] : [],
+    estimates: estimates.map((id) => ({ id, usedAt: 'x >= 1000', validFor: 'x >= 2', conditional: false })),
     convergence: [],
   }
   const certificate = await makeCertificate(outcome, { version: 'test', digest: '0'.repeat(64) })
   const request = { definitions: [constant.definition], method, arithmetic, goal }
   return Run.create({
     constantId: constant.id, groupId: member.groupId, startedBy: member.id, method, arithmetic, goal, outcome, request: canonicalJson(request), requestKey: randomUUID(),
-    estimates: outcome.estimates.map(({ id }) => id), state: 'done', progress: '1', certificate: canonicalJson(certificate), certificateDigest: certificate.digest, finishedAt: new Date(),
+    estimates: [...estimates], state: 'done', progress: '1', certificate: canonicalJson(certificate), certificateDigest: certificate.digest, finishedAt: new Date(),
     ...(claimId !== undefined && { purpose: 'recheck' as const, claimId }),
   })
 }
@@ -89,10 +91,10 @@ export async function finishedRecheck(referee: TestMember, claim: Claim, shape: 
 export const reload = (claim: { id: string }): Promise<Claim> => Claim.findByPk(claim.id, { rejectOnEmpty: true })
 
 /** A draft of an enclosure from a run, or of a value from elsewhere where `stated`. */
-export async function draft(author: TestMember, { lo = '1.25', hi = '1.26', constant, stated = false }: { lo?: string; hi?: string; constant?: Constant; stated?: boolean } = {}): Promise<Claim> {
+export async function draft(author: TestMember, { lo = '1.25', hi = '1.26', constant, stated = false, estimates }: { lo?: string; hi?: string; constant?: Constant; stated?: boolean; estimates?: readonly string[] } = {}): Promise<Claim> {
   const of = constant ?? (await freshConstant(author))
   if (stated) return draftClaim(acting(author), { kind: 'stated', constant: constantNumberText(of.number), value: { lo, hi }, source: 'J. Tests 1 (2020), Table 1', remark: '' })
-  const run = await finishedRun(author, of, { lo, hi })
+  const run = await finishedRun(author, of, { lo, hi, ...(estimates && { method: 'partial-sum', estimates }) })
   return draftClaim(acting(author), { kind: 'enclosure', runId: run.id, remark: '' })
 }
 
