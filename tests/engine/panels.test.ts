@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { contains as ballContains } from '../../shared/engine/arithmetic/arithmetic.ts'
 import { type Ball, createBallArithmetic } from '../../shared/engine/arithmetic/ball.ts'
 import { parseDecimal } from '../../shared/engine/arithmetic/decimal.ts'
-import { ONE, compare, multiply, parseRational, rational, subtract } from '../../shared/engine/arithmetic/rational.ts'
+import { ONE, compare, divide, multiply, parseRational, rational, subtract } from '../../shared/engine/arithmetic/rational.ts'
 import { computeAll } from '../../shared/engine/engine.ts'
 import { EngineRefusal } from '../../shared/engine/errors.ts'
 import type { ComputationRequest, Enclosure, Outcome, ShardResult } from '../../shared/engine/methods/computation.ts'
@@ -10,7 +10,9 @@ import { panels } from '../../shared/engine/methods/panels.ts'
 import { trapezoid } from '../../shared/engine/methods/trapezoid.ts'
 import { dirichletSeries } from '../../shared/engine/series/families.ts'
 import { edgeSeries } from '../../shared/engine/series/edge.ts'
+import { leastAtOne } from '../../shared/engine/series/log-l.ts'
 import { PrimeZeta } from '../../shared/engine/series/prime-zeta.ts'
+import { residueClassSeries } from '../../shared/engine/series/residue-class.ts'
 import { ZetaPoint } from '../../shared/engine/series/zeta.ts'
 import { createZetaContext } from '../../shared/engine/series/zeta-context.ts'
 import { canonicalDefinition } from '../../shared/engine/sets/canonical.ts'
@@ -57,6 +59,7 @@ const cases: [string, Definition][] = [
   ['primes, s = 2, b = 1/3', series({ kind: 'primes', exclude: none }, '2', '1/3')],
   ['3-almost primes, s = 101/100', series({ kind: 'almost-primes', k: 3, exclude: none }, '101/100', '1')],
   ['integers, s = 4/3', series({ kind: 'integers', exclude: none }, '4/3', '1')],
+  ['primes in a class', series({ kind: 'residue-class', modulus: 12, residue: 5, exclude: [17] })],
   ['primes in a class, s = 5/4', series({ kind: 'residue-class', modulus: 5, residue: 2, exclude: none }, '5/4', '1')],
 ]
 
@@ -233,7 +236,6 @@ describe('refusals', () => {
 
   it('of what has no such integral', async () => {
     const cases: [Definition[], string][] = [
-      [[series({ kind: 'residue-class', modulus: 4, residue: 1, exclude: none })], 'method_does_not_fit'],
       [[series({ kind: 'primes', exclude: none }, '2', '0')], 'method_does_not_fit'],
       [[{ type: 'named', name: 'mertens' }], 'method_does_not_fit'],
       [[primes, series({ kind: 'primes', exclude: none }, '2', '1')], 'mixed_weights'],
@@ -258,14 +260,18 @@ describe('the singularity at the edge', () => {
     { kind: 'integers', exclude: [7] },
     { kind: 'squarefree', exclude: none },
     { kind: 'smooth', y: 7, exclude: none },
+    { kind: 'residue-class', modulus: 5, residue: 2, exclude: [7] },
+    { kind: 'residue-class', modulus: 24, residue: 17, exclude: none },
   ]
   const point = (t: Ball, log: Ball) => new PrimeZeta(new ZetaPoint(context, t, log))
 
   it.each(sets)('%j: the parts make up the series, and keep their bounds', (set) => {
     const edge = edgeSeries(set)!
     const whole = dirichletSeries(set, ONE)!
-    const eps = rational(1, 2)
-    const bounds = edge.partBounds(eps, rational(31, 64))
+    whole.prepare?.(context)
+    const room = edge.room?.(a)
+    const [eps, reach] = room ? [divide(room, rational(3)), divide(room, rational(2))] : [rational(1, 2), rational(31, 64)]
+    const bounds = edge.partBounds(eps, reach, a)
     for (const x of [rational(1, 1000), rational(1, 7), rational(99, 100)]) {
       const t = a.rational(multiply(eps, x))
       const parts = edge.parts(point(t, a.log(a.rational(eps))))
@@ -280,5 +286,20 @@ describe('the singularity at the edge', () => {
       expect(ballContains(a, a.subtract(total, direct), rational(0))).toBe(true)
       expect(a.subtract(total, direct).rad < 1n << 60n).toBe(true)
     }
+  })
+
+  it('over a class is refused beyond the disc in which no L-function vanishes, and L(1, chi) is bounded from below', () => {
+    const edge = edgeSeries({ kind: 'residue-class', modulus: 5, residue: 2, exclude: [] })!
+    const room = edge.room!(a)
+    expect(() => edge.partBounds(divide(room, rational(2)), room, a)).toThrow('no L-function')
+    // PARI/GP 2.15, abs(lfun([znstar(q, 1), chi], 1)) over all chi but the principal one: the least for each q.
+    for (const [q, least] of [[3, 0.6045997881], [4, 0.7853981634], [5, 0.430408941], [12, 0.7603459963], [43, 0.4790883882], [97, 0.3890925912], [100, 0.6283185307]]) {
+      const found = leastAtOne(a, q)
+      expect(Math.abs(Number(found.num) / Number(found.den) - least)).toBeLessThan(1e-8)
+    }
+  })
+
+  it('over a class needs small primes split off, or is refused', () => {
+    expect(() => residueClassSeries(5, 2, [], ONE).prepare!(createZetaContext(a, { terms: 80, split: 40 }))).toThrow('split')
   })
 })

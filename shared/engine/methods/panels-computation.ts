@@ -158,7 +158,7 @@ export class PanelsComputation implements Computation {
     const beta = subtract(this.task.logPower, rational(edge.pole))
     const scale = bounds.exp(bounds.scale(bounds.log(bounds.rational(eps)), beta))
     const most = this.task.power.num === this.task.power.den
-      ? edge.partBounds(eps, edgeReach).map((bound) => bounds.rational(bound))
+      ? edge.partBounds(eps, edgeReach, bounds).map((bound) => bounds.rational(bound))
       : [seriesUpper(bounds, summand.least, subtract(this.task.power, edgeReach))]
     let total = ZERO
     let norm = ONE

@@ -1,4 +1,4 @@
-import { type Rational, parseRational, rational } from '../arithmetic/rational.ts'
+import { type Rational, parseRational, rational, subtract } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
 import type { Panel } from './panels-bounds.ts'
 import type { PanelsParameters } from './panels-parameters.ts'
@@ -18,6 +18,8 @@ export interface PlanInput {
   complexity: number
   edgeGrowth: (eps: Rational, reach: Rational) => number
   edgeExponent: number
+  /** Where s0 = 1: what edge and reach together may not exceed, if anything. */
+  room?: Rational
   least: bigint
   /** Whether 1/(p^s - 1) takes the place of p^-s, whose powers lose accuracy. */
   distinct: boolean
@@ -75,12 +77,8 @@ export function planPanels(input: PlanInput): PanelsParameters {
   const end = truncationPoint(bits, 1 + excess, b, logLeast)
   const cost = (s: number): number => nodeCost({ ...settingsFor(input, bits, end), complexity: input.complexity }, s)
 
-  const unit = excess > 0 ? 2 ** Math.round(log2(excess)) : 1
-  const sizes = excess > 0 ? [4, 2, 1, 0.5] : [1, 0.5, 0.25]
-  const plans = sizes.map((part) => {
-    const edge = unit * part
+  const plans = edgesFor(excess, input.room).map(({ edge, reach }) => {
     const eps = exact(edge)
-    const reach = excess > 0 ? scaled(excess, 15 / 16) : rational(31, 64)
     const edgeBits = bits + input.edgeGrowth(eps, reach) + input.edgeExponent * log2(edge)
     const edgeNodes = Math.max(2, Math.ceil(edgeBits / ellipse(1 + (2 * approx(reach)) / edge)) + 1)
     const { panels, total } = bestPanels(edge, Math.max(end, Math.ceil(2 * edge)), bits, b, excess, logLeast, cost)
@@ -90,6 +88,17 @@ export function planPanels(input: PlanInput): PanelsParameters {
   })
   const { edge, edgeReach, edgeNodes, panels } = plans.reduce((best, plan) => (plan.total < best.total ? plan : best))
   return { ...settingsFor(input, bits, approx(panels[panels.length - 1].to)), edge, edgeReach, edgeNodes, panels }
+}
+
+/** The edges that are tried, each with its reach: together within the room, if that is limited. */
+function edgesFor(excess: number, room: Rational | undefined): { edge: number; reach: Rational }[] {
+  if (excess > 0) {
+    const unit = 2 ** Math.round(log2(excess))
+    return [4, 2, 1, 0.5].map((part) => ({ edge: unit * part, reach: scaled(excess, 15 / 16) }))
+  }
+  if (!room) return [1, 0.5, 0.25].map((edge) => ({ edge, reach: rational(31, 64) }))
+  const unit = 2 ** Math.floor(log2(approx(room)))
+  return [0.5, 0.25, 0.125].map((part) => ({ edge: unit * part, reach: subtract(room, exact(unit * part)) }))
 }
 
 /** Bits for sums of many terms, for t^(b-1) up to t = last, for weights near 0, for 1/(s0 - 1), for powers of 1/(p^s - 1). */

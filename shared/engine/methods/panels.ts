@@ -1,4 +1,5 @@
-import { ONE, type Rational, compare } from '../arithmetic/rational.ts'
+import { createBallArithmetic } from '../arithmetic/ball.ts'
+import { ONE, type Rational, ZERO, compare } from '../arithmetic/rational.ts'
 import { EngineRefusal } from '../errors.ts'
 import type { DirichletSeries } from '../series/dirichlet.ts'
 import { type EdgeSeries, edgeSeries } from '../series/edge.ts'
@@ -8,9 +9,10 @@ import { type MellinTask, mellinTask } from './mellin-task.ts'
 import type { Forecast, MethodModule } from './method.ts'
 import { PanelsComputation } from './panels-computation.ts'
 import { type PanelsParameters, readParameters } from './panels-parameters.ts'
-import { planPanels } from './panels-plan.ts'
+import { meanPoint, planPanels } from './panels-plan.ts'
 import { cutIntoBlocks } from './panels-shards.ts'
 import type { SweepSeries } from './panels-sweep.ts'
+import { classCostAt } from './trapezoid-cost.ts'
 
 const MOST_DIGITS = 1_000
 
@@ -23,7 +25,7 @@ function taskOf(definitions: ComputationRequest['definitions']): Task {
   const list = task.series.map((series, index): SweepSeries => {
     const edge = compare(task.power, ONE) === 0 ? edgeSeries(task.definitions[index].set) : smoothEdge(series)
     if (!edge) {
-      throw new EngineRefusal('method_does_not_fit', 'method', 'Panels do not know how this set behaves at s = 1: use the transform, or a power above 1.')
+      throw new EngineRefusal('method_does_not_fit', 'method', 'Panels do not know how this set behaves at s = 1.')
     }
     return { series, edge }
   })
@@ -52,13 +54,22 @@ function parametersFor(task: Task, goal: Goal): PanelsParameters {
     logPower,
     complexity: task.complexity,
     edgeExponent: Math.min(...exponents),
+    room: power > 1 ? undefined : leastRoom(task),
     distinct: task.distinct,
     least: task.list.reduce((least, { series }) => (series.leastMember < least ? series.leastMember : least), task.list[0].series.leastMember),
     edgeGrowth: (eps, reach) =>
       power > 1
         ? 6 + Math.log2(1 + 1 / (power - 1)) // heuristic: affects speed only
-        : Math.max(...task.list.map(({ edge }, index) => partsGrowth(edge.partBounds(eps, reach).map(approx), exponents[index]))),
+        : Math.max(...task.list.map(({ edge }, index) => partsGrowth(edge.partBounds(eps, reach, ROUGH).map(approx), exponents[index]))),
   })
+}
+
+/** For what only the plan rests on. */
+const ROUGH = createBallArithmetic(96)
+
+function leastRoom({ list }: Task): Rational | undefined {
+  const rooms = list.flatMap(({ edge }) => (edge.room ? [edge.room(ROUGH)] : []))
+  return rooms.reduce<Rational | undefined>((least, room) => (least && compare(least, room) <= 0 ? least : room), undefined)
 }
 
 function approx({ num, den }: Rational): number {
@@ -75,7 +86,16 @@ function partsGrowth(bounds: readonly number[], exponent: number): number {
 function predictSeconds(p: PanelsParameters, task: Task, arithmetic: ComputationRequest['arithmetic']): number {
   const blocks = cutIntoBlocks(p, task.power, task.complexity)
   const microseconds = blocks.reduce((total, { cost }) => total + cost, 0)
-  return 0.05 + microseconds * 1e-6 * (arithmetic === 'mpfr' ? 5 : 1)
+  return 0.05 + (microseconds * (arithmetic === 'mpfr' ? 5 : 1) + ofClasses(p, task, arithmetic)) * 1e-6
+}
+
+/** Microseconds that the L-functions of residue classes take. heuristic: affects choice only */
+function ofClasses(p: PanelsParameters, { definitions, power }: Task, arithmetic: ComputationRequest['arithmetic']): number {
+  const pieces = [{ nodes: p.edgeNodes, from: ZERO, to: p.edge }, ...p.panels]
+  return definitions.reduce((total, { set }) => {
+    if (set.kind !== 'residue-class') return total
+    return pieces.reduce((sum, { nodes, from, to }) => sum + nodes * classCostAt(set.modulus, meanPoint(power, from, to), p, arithmetic), total)
+  }, 0)
 }
 
 /** The Mellin transform by a product rule at its singularity and Gauss-Legendre panels after. */

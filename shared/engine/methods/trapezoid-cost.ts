@@ -74,17 +74,23 @@ function ownCost(set: SetOfIntegers, { price, words, primes, order, multiple }: 
     case 'distinct-prime-factors':
       return primeZeta + symmetric + k * (order + primes) * price.operation
     case 'residue-class':
-      return primeZeta + classCost(set.modulus, order, words, price)
+      return primeZeta + classCost(set.modulus, { price, words, primes, order })
     default:
       return primeZeta + symmetric
   }
 }
 
 /** Sums over the classes by Euler-Maclaurin and the logarithms of the L-functions, for each multiple of s. */
-function classCost(modulus: number, order: number, words: number, price: Price): number {
+function classCost(modulus: number, { price, words, primes, order }: Omit<Shape, 'multiple'>): number {
   let classes = 0
   for (let a = 1; a <= modulus; a++) if (coprime(a, modulus)) classes++
-  return order * classes * (75 * price.product(words) * words + 18 * price.operation)
+  return order * classes * (98 * price.product(words) * words + (8 + 1.8 * primes) * price.operation)
+}
+
+/** Microseconds that a residue class adds to a node at s, for a sweep by any rule. */
+export function classCostAt(modulus: number, s: number, p: { precision: number; split: number }, arithmetic: ArithmeticName): number {
+  const order = (p.precision + 9) / bitsOf(p.split + 1) / s
+  return classCost(modulus, { price: PRICES[arithmetic], words: p.precision / 64, primes: primesUpTo(p.split).length, order })
 }
 
 function coprime(a: number, b: number): boolean {

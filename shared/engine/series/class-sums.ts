@@ -22,9 +22,9 @@ export interface ClassSums<N> {
  * omitted term), L-2 (the regular part near s = 1). *Rounding*: powers are shared between the m, one product each.
  */
 export function createClassSums<N>(a: Arithmetic<N>, q: number): (s: N, sMinusOne: N) => ClassSums<N> {
-  // Terms of a class before the Euler-Maclaurin tail, and the length of that.
-  const blocks = Math.max(6, Math.ceil(a.precision / 9)) // heuristic: affects speed only
-  const corrections = Math.max(4, Math.ceil(a.precision / 7)) // heuristic: affects speed only
+  // Terms of a class before the Euler-Maclaurin tail, and the length of that: B and K with (K/(e pi B))^2K about 2^-precision.
+  const blocks = Math.max(6, Math.ceil(a.precision / 7)) // heuristic: affects width only
+  const corrections = Math.max(4, Math.ceil(a.precision / 5.4)) // heuristic: affects width only
   const coprime = units(q)
   const largest = q * (blocks + 1)
   const least = leastPrimeDivisors(largest)

@@ -1,7 +1,9 @@
+import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { ceilDivide, isqrt } from '../arithmetic/integers.ts'
 import { primesUpTo } from '../arithmetic/primes.ts'
 import { ONE, type Rational, ZERO, add, ceilScaled, compare, divide, dyadic, multiply, rational, subtract } from '../arithmetic/rational.ts'
 import type { SetOfIntegers } from '../sets/definition.ts'
+import { classEdge } from './class-edge.ts'
 import type { SeriesPoint } from './dirichlet.ts'
 import { dirichletSeries } from './families.ts'
 import { logZetaUpper, roundUp } from './majorants.ts'
@@ -23,13 +25,15 @@ export interface EdgeSeries {
    */
   parts<N>(at: SeriesPoint<N>): N[]
   /**
-   * *Claim*: |parts[c](t)| <= result[c] for |t| + |t - eps| <= 2 reach + eps. *Valid for*: 0 < reach < 1/2, 0 < eps <= 1.
-   * *Bound*: P-3. *Rounding*: up.
+   * *Claim*: |parts[c](t)| <= result[c] for |t| + |t - eps| <= 2 reach + eps. *Valid for*: 0 < reach < 1/2, 0 < eps <= 1; refuses what
+   * is beyond `room`. *Bound*: P-3, P-9. *Rounding*: up.
    */
-  partBounds(eps: Rational, reach: Rational): Rational[]
+  partBounds<N>(eps: Rational, reach: Rational, arithmetic: Arithmetic<N>): Rational[]
+  /** Where the parts are known to be analytic only in a disc about t = 0: its radius, which eps + reach must not exceed (P-9). */
+  room?<N>(arithmetic: Arithmetic<N>): Rational
 }
 
-/** The edge of a set's series at s = 1; null where this singularity is not known in the form above. */
+/** The edge of a set's series at s = 1; null where it has none. */
 export function edgeSeries(set: SetOfIntegers): EdgeSeries | null {
   switch (set.kind) {
     case 'primes':
@@ -47,7 +51,9 @@ export function edgeSeries(set: SetOfIntegers): EdgeSeries | null {
       if (!series) return null
       return { pole: series.pole, logs: 0, parts: (at) => [series.evaluate(at)], partBounds: (_, reach) => [plainBound(set, reach)] }
     }
-    default:
+    case 'residue-class':
+      return classEdge(set)
+    case 'finite':
       return null
   }
 }

@@ -1,9 +1,14 @@
 import { type Arithmetic, sum } from '../arithmetic/arithmetic.ts'
 import { primesUpTo } from '../arithmetic/primes.ts'
 import { type Rational, ONE, ZERO, add, compare, divide, multiply, rational } from '../arithmetic/rational.ts'
+import { EngineRefusal } from '../errors.ts'
+import { isqrt } from '../arithmetic/integers.ts'
 import { type Character, characters, upToConjugation, units } from './characters.ts'
 import { createClassSums } from './class-sums.ts'
 import { type Complex, logComplex, multiplyComplex, rootsOfUnity } from './complex.ts'
+
+/** Least A for which the branch is proven. */
+const LEAST_SPLIT = 50
 
 /**
  * Logarithms of L_A(ms, chi) = L(ms, chi) prod over p <= A of (1 - chi(p) p^-ms), for one m after the other, from 1 on, and
@@ -29,6 +34,7 @@ export interface LogL<N> {
  * passes (it throws otherwise). *Bound*: L-1, L-2, L-3, L-4.
  */
 export function createLogL<N>(a: Arithmetic<N>, q: number, split: number): LogL<N> {
+  if (split < LEAST_SPLIT) throw new EngineRefusal('unsound_parameter', 'split', `Over a residue class the parameter split must be at least ${LEAST_SPLIT}.`)
   const chosen = upToConjugation(characters(q))
   const classes = units(q)
   const primes = primesUpTo(split).filter((p) => q % p !== 0)
@@ -74,6 +80,23 @@ export function createLogL<N>(a: Arithmetic<N>, q: number, split: number): LogL<
       return { advance: () => at.advance(), logs: () => at.values().map((value) => logComplex(a, value)) }
     },
   }
+}
+
+/** *Claim*: |L(1, chi)| >= result for every chi modulo q but the principal one. *Valid for*: q >= 3. *Bound*: L-1, L-2. *Rounding*: down. */
+export function leastAtOne<N>(a: Arithmetic<N>, q: number): Rational {
+  return a.frame(() => {
+    const classes = units(q)
+    const chosen = upToConjugation(characters(q))
+    const roots = rootsOfUnity(a, chosen[0].order)
+    const sums = createClassSums(a, q)(a.rational(ONE), a.rational(ZERO)).sums()
+    const squares = chosen.map((chi) => {
+      const { re, im } = weighted(a, roots, classes.map((c) => chi.exponents[c]), sums)
+      return a.lower(a.add(a.multiply(re, re), a.multiply(im, im)))
+    })
+    const least = squares.reduce((x, y) => (compare(x, y) < 0 ? x : y))
+    const bits = 32n
+    return least.num <= 0n ? ZERO : rational(isqrt((least.num << (2n * bits)) / least.den), 1n << bits)
+  })
 }
 
 /** sum of roots[exponents[i]] h[i], the h of one exponent added first. */
