@@ -1,5 +1,5 @@
 import { Router, type ErrorRequestHandler, type Request, type RequestHandler, type Response } from 'express'
-import { parseConstantNumber } from '../../shared/constant-number.ts'
+import { claimSlug, parseClaimNumber, parseConstantNumber } from '../../shared/constant-number.ts'
 import { pageHead, UNKNOWN_PAGE } from '../../shared/page-head.ts'
 import { PAGES, type PageName } from '../../shared/pages.ts'
 import { claimReference } from '../../shared/schemas/claim.ts'
@@ -92,8 +92,16 @@ export function pages(index: string, ratePerMinute: number): Router {
   }
   const limit = rateLimit(ratePerMinute)
   for (const name of Object.keys(PAGES) as PageName[]) router.get(PAGES[name].path, limit, SHOWN[name]?.input ?? [], answer(name))
+  router.get('/claims/:constant/:ordinal', citedClaim)
   router.use(unknown, failed)
   return router
+}
+
+/** A claim's number typed into the address as it is cited, MST-0042/1, leads to its page. */
+const citedClaim: RequestHandler = ({ params: { constant, ordinal } }, res, next) => {
+  const claim = parseClaimNumber(`${String(constant)}/${String(ordinal)}`)
+  if (!claim) return next()
+  res.redirect(301, `/claims/${claimSlug(claim.number, claim.ordinal)}`)
 }
 
 /** Refuses in the same words what does not exist and what is not open to whoever asks. */

@@ -90,6 +90,13 @@ describe('what a page says of itself', () => {
     }
   })
 
+  it('leads from a number as it is cited to the page of the claim', async () => {
+    const { headers } = await request(app).get('/claims/MST-0042/1').set('Accept', 'text/html').expect(301)
+    expect(headers.location).toBe('/claims/MST-0042-1')
+    expect((await read('/claims/MST-0042/0')).status).toBe(404)
+    expect((await read('/claims/evil.example/1')).status).toBe(404)
+  })
+
   it('a constant, an estimate', async () => {
     const constant = await freshConstant(open.author)
     await claimIn('signed', open, { constant, lo: '0.125', hi: '0.125' })
