@@ -56,51 +56,81 @@ function pseudoRemainder(a: Polynomial, b: Polynomial): Polynomial {
   return rest
 }
 
-/** A prime, 2^61 - 1. */
-const MODULUS = (1n << 61n) - 1n
+/** Exponents e of Mersenne primes 2^e - 1, enough for the coefficients of divisors of what an expression may hold. */
+const MERSENNE_EXPONENTS = [61n, 521n, 2_203n, 4_423n]
 
-function remainderModulo(a: Polynomial, b: Polynomial): Polynomial {
-  let inverse = 1n
-  for (let [base, e] = [leading(b), MODULUS - 2n]; e > 0n; e >>= 1n, base = (base * base) % MODULUS) if (e & 1n) inverse = (inverse * base) % MODULUS
+/** 1/a modulo a prime that does not divide a, by the extended Euclidean algorithm. */
+function inverseModulo(a: bigint, modulus: bigint): bigint {
+  let [r, next] = [modulus, a % modulus]
+  let [t, nextT] = [0n, 1n]
+  while (next !== 0n) {
+    const q = r / next
+    ;[r, next] = [next, r - q * next]
+    ;[t, nextT] = [nextT, t - q * nextT]
+  }
+  // r is 1 or -1.
+  return r * t
+}
+
+function remainderModulo(a: Polynomial, b: Polynomial, modulus: bigint): Polynomial {
+  const inverse = inverseModulo(leading(b), modulus)
   const rest = [...a]
   for (let i = rest.length - b.length; i >= 0; i--) {
-    const q = (rest[i + b.length - 1] * inverse) % MODULUS
-    b.forEach((c, j) => (rest[i + j] = (rest[i + j] - q * c) % MODULUS))
+    const q = (rest[i + b.length - 1] * inverse) % modulus
+    b.forEach((c, j) => (rest[i + j] = (rest[i + j] - q * c) % modulus))
   }
   return trimmed(rest)
 }
 
-/**
- * Whether a and b are coprime modulo a prime that does not divide the leading coefficient of a. If so, they are coprime over the
- * rationals: a primitive common divisor divides a over the integers, hence keeps its degree modulo the prime.
- */
-function coprimeModulo(a: Polynomial, b: Polynomial): boolean {
-  if (leading(a) % MODULUS === 0n) return false
-  let [x, y] = [a, b].map((part) => trimmed(part.map((c) => c % MODULUS)))
-  while (y.length > 0) [x, y] = [y, remainderModulo(x, y)]
-  return degree(x) === 0
+/** The greatest common divisor modulo a prime, its leading coefficient made `lead`, lifted to the residues of least size. */
+function liftedDivisor(a: Polynomial, b: Polynomial, lead: bigint, modulus: bigint): Polynomial {
+  let [x, y] = [a, b].map((part) => trimmed(part.map((c) => c % modulus)))
+  while (y.length > 0) [x, y] = [y, remainderModulo(x, y, modulus)]
+  const factor = (lead * inverseModulo(leading(x), modulus)) % modulus
+  return trimmed(x.map((c) => {
+    const residue = (((c * factor) % modulus) + modulus) % modulus
+    return 2n * residue > modulus ? residue - modulus : residue
+  }))
 }
 
-/** Greatest common divisor over the rationals as a primitive polynomial, by Euclid's algorithm with primitive remainders. */
+/**
+ * Greatest common divisor over the rationals as a primitive polynomial. It divides a and b over the integers, hence keeps its degree
+ * modulo a prime that does not divide the leading coefficient of a, and divides the greatest common divisor there: so a common divisor
+ * found by lifting that one is the greatest. Where no prime of the list gives one, Euclid's algorithm with primitive remainders does.
+ */
 export function commonDivisor(a: Polynomial, b: Polynomial): Polynomial {
-  // The usual case, told apart at once: between coprime polynomials the remainders grow enormous.
-  if (coprimeModulo(a, b)) return [1n]
   let [x, y] = [primitivePart(a), primitivePart(b)]
+  if (x.length > 0 && y.length > 0) {
+    const lead = gcd(leading(x), leading(y))
+    for (const exponent of MERSENNE_EXPONENTS) {
+      const modulus = (1n << exponent) - 1n
+      if (leading(x) % modulus === 0n) continue
+      const found = primitivePart(liftedDivisor(x, y, lead, modulus))
+      if (quotientOf(x, found) && quotientOf(y, found)) return found
+    }
+  }
   while (y.length > 0) [x, y] = [y, primitivePart(pseudoRemainder(x, y))]
   return x
 }
 
-/** a / b where b is primitive and divides a exactly. */
-export function exactQuotient(a: Polynomial, b: Polynomial): Polynomial {
+/** a / b, null where it is no polynomial with integer coefficients; b != 0. */
+function quotientOf(a: Polynomial, b: Polynomial): Polynomial | null {
   const rest = [...a]
   const quotient = new Array<bigint>(Math.max(a.length - b.length + 1, 0)).fill(0n)
   for (let i = quotient.length - 1; i >= 0; i--) {
     const q = rest[i + b.length - 1] / leading(b)
     quotient[i] = q
     b.forEach((c, j) => (rest[i + j] -= q * c))
+    if (rest[i + b.length - 1] !== 0n) return null
   }
-  if (rest.some((r) => r !== 0n)) throw new RangeError('the division is not exact')
-  return trimmed(quotient)
+  return rest.some((r) => r !== 0n) ? null : trimmed(quotient)
+}
+
+/** a / b where b is primitive and divides a exactly. */
+export function exactQuotient(a: Polynomial, b: Polynomial): Polynomial {
+  const quotient = quotientOf(a, b)
+  if (!quotient) throw new RangeError('the division is not exact')
+  return quotient
 }
 
 /** The value at an integer, by Horner's rule. */
