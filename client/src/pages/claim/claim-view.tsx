@@ -13,6 +13,7 @@ import { Page, Section } from '../../components/ui/page.tsx'
 import { isSettled } from '../../features/claims/act-words.ts'
 import { claimName } from '../../features/claims/claim-words.ts'
 import { AuthorWork } from '../../features/claims/components/author-work.tsx'
+import { ClaimDoubts } from '../../features/claims/components/claim-doubts.tsx'
 import { ClaimMargin } from '../../features/claims/components/claim-margin.tsx'
 import { Caution, ClaimSubject } from '../../features/claims/components/claim-subject.tsx'
 import { EvidenceList } from '../../features/claims/components/evidence-list.tsx'
@@ -83,6 +84,7 @@ function Loaded({ claim, done, mayReadRuns, onAct, onEdit, onDelete, onUpload, o
         )}
       </div>
       <ClaimSubject claim={claim} />
+      <ClaimDoubts doubts={claim.doubts} />
       {!done && claim.next && !isSettled(claim.state) && (
         <p className="mt-5 print:hidden">
           <span className="text-soft italic">Next:</span> {claim.next}
@@ -159,7 +161,7 @@ function ClaimMatter({ claim, mayReadRuns, onAct, onUpload, onRemoveEvidence, re
             <ErrorBudget items={outcome.budget} radius={outcome.radius} />
           </Section>
           <Section title="Estimates used">
-            <EstimateUses uses={outcome.estimates} />
+            <EstimateUses uses={claim.outcome.estimates} doubted={claim.doubts.map(({ estimate }) => estimate)} />
           </Section>
           {claim.run && outcome.convergence.length > 1 && (
             <Section title="Convergence" className="mt-10 print:hidden">

@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react'
 import { estimateHead, pageHead } from '../../../../shared/page-head.ts'
 import type { Estimate } from '../../../../shared/schemas/estimate.ts'
 import { paths } from '../../app/paths.ts'
@@ -10,10 +11,11 @@ import { TextLink } from '../../components/ui/link.tsx'
 import { Notice } from '../../components/ui/notice.tsx'
 import { Facts, MarginNote, Page, Section } from '../../components/ui/page.tsx'
 import { Table } from '../../components/ui/table.tsx'
+import { LiftedDoubts, OpenDoubts } from '../../features/estimates/components/doubt-notices.tsx'
 import { EstimateState } from '../../features/estimates/components/estimate-state.tsx'
 
 /** One published inequality: what it says, where it holds, where it stands, and who rests on it. */
-export function EstimateView({ estimate }: { estimate: Fetched<Estimate> }) {
+export function EstimateView({ estimate, forLead }: { estimate: Fetched<Estimate>; forLead?: ReactNode }) {
   const { data } = estimate
   return (
     <Page
@@ -28,12 +30,12 @@ export function EstimateView({ estimate }: { estimate: Fetched<Estimate> }) {
       }
       margin={data && <EstimateMargin estimate={data} />}
     >
-      <Part of={estimate} what="the estimate">{(each) => <EstimateBody estimate={each} />}</Part>
+      <Part of={estimate} what="the estimate">{(each) => <EstimateBody estimate={each} forLead={forLead} />}</Part>
     </Page>
   )
 }
 
-function EstimateBody({ estimate }: { estimate: Estimate }) {
+function EstimateBody({ estimate, forLead }: { estimate: Estimate; forLead: ReactNode }) {
   return (
     <>
       <div className="text-[1.2rem]">
@@ -48,11 +50,8 @@ function EstimateBody({ estimate }: { estimate: Estimate }) {
           An enclosure that uses it holds only if {estimate.condition ?? 'the hypothesis'} does; the certificate says so.
         </Notice>
       )}
-      {estimate.state === 'in-doubt' && (
-        <Notice tone="refused" title="In doubt." className="mt-5">
-          What rests on it is suspended until the doubt is settled or the constant is run again without it.
-        </Notice>
-      )}
+      <OpenDoubts doubts={estimate.doubts} />
+      {forLead}
       <Section title="Source">
         <p className="max-w-prose"><Printed text={estimate.source} />.</p>
       </Section>
@@ -60,6 +59,7 @@ function EstimateBody({ estimate }: { estimate: Estimate }) {
         <p className="max-w-prose"><Printed text={estimate.checked} /></p>
         <p className="mt-2 max-w-prose text-soft">A numerical check can find a slip of the pen; it proves nothing beyond its reach. The inequality is as sound as its source.</p>
       </Section>
+      <LiftedDoubts doubts={estimate.doubts} />
       <Section
         title="Signed claims that rest on it"
         beside={estimate.uses > estimate.usedBy.length && `the latest ${estimate.usedBy.length} of ${estimate.uses}`}

@@ -11,6 +11,7 @@ import { TextLink } from '../../components/ui/link.tsx'
 import { Notice } from '../../components/ui/notice.tsx'
 import { Page, Section } from '../../components/ui/page.tsx'
 import { DefinitionFields } from '../../features/runs/components/definition-fields.tsx'
+import { EstimateLinks } from '../../features/runs/components/estimate-links.tsx'
 import { ForecastRefusals, ForecastTable } from '../../features/runs/components/forecast-table.tsx'
 import type { Choice as MethodChoice } from '../../features/runs/components/forecast-table.tsx'
 import type { FieldMessages, RunFormValues } from '../../features/runs/run-form.ts'
@@ -71,6 +72,11 @@ export function NewRunView({ form, errors, plan, planning, planError, chosen, on
               <p className="text-soft">For each method: whether it reaches the goal, the radius, and the time on this server. Nothing is started yet.</p>
             )}
           </Section>
+          {plan && !atFields && plan.without.length > 0 && (
+            <p className="mt-4 max-w-prose text-[0.92rem] text-soft">
+              In doubt in your group, and so left out: <EstimateLinks ids={plan.without} />.
+            </p>
+          )}
           {plan && !atFields && <ForecastRefusals forecasts={plan.forecasts} />}
           {planError && !atFields ? (
             <Notice tone="refused" title="This can’t be computed." live className="mt-5">

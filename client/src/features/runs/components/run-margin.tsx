@@ -4,6 +4,7 @@ import { goalText } from '../../../../../shared/engine/methods/goal.ts'
 import { METHOD_WORDS, STATE_WORDS } from '../../../../../shared/words.ts'
 import { files, paths } from '../../../app/paths.ts'
 import type { MarkedState } from '../../../components/state-mark/state-mark.tsx'
+import { EstimateLinks } from './estimate-links.tsx'
 import { FileLink, TextLink } from '../../../components/ui/link.tsx'
 import { Facts, MarginNote } from '../../../components/ui/page.tsx'
 import { secondsInWords, Time } from '../../../components/ui/time.tsx'
@@ -18,6 +19,7 @@ export function RunMargin({ run }: { run: Run }) {
             ['Goal', goalText(run.goal)],
             ['Method', METHOD_WORDS[run.method]],
             ['Arithmetic', run.arithmetic],
+            ...(run.without.length > 0 ? [['Without', <EstimateLinks key="without" ids={run.without} />] as [string, ReactNode]] : []),
             ['Started by', run.startedBy.name],
             ['Group', run.group.name],
             ['Asked', <Time key="asked" at={run.createdAt} precise />],

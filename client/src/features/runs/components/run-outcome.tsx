@@ -1,10 +1,12 @@
 import { parseRational } from '../../../../../shared/engine/arithmetic/rational.ts'
 import { goalText, serves } from '../../../../../shared/engine/methods/goal.ts'
 import type { OutcomeView, Run } from '../../../../../shared/schemas/run.ts'
+import { paths } from '../../../app/paths.ts'
 import { Convergence } from '../../../components/charts/convergence.tsx'
 import { ErrorBudget, Magnitude } from '../../../components/charts/error-budget.tsx'
 import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
 import { Printed } from '../../../components/formula/printed.tsx'
+import { TextLink } from '../../../components/ui/link.tsx'
 import { Section } from '../../../components/ui/page.tsx'
 import { Table } from '../../../components/ui/table.tsx'
 import { convergenceUnit } from '../run-words.ts'
@@ -58,7 +60,7 @@ export function OutcomeEnclosure({ outcome, goal }: { outcome: OutcomeView; goal
 }
 
 /** The published inequalities that an enclosure rests on, with where each was used and where it holds. */
-export function EstimateUses({ uses }: { uses: OutcomeView['estimates'] }) {
+export function EstimateUses({ uses, doubted = [] }: { uses: OutcomeView['estimates']; doubted?: readonly string[] }) {
   if (uses.length === 0) return <p className="max-w-prose">No published estimate was used: every bound is proven with the engine, and the budget above names each.</p>
   return (
     <Table
@@ -66,12 +68,21 @@ export function EstimateUses({ uses }: { uses: OutcomeView['estimates'] }) {
       rows={uses}
       rowKey={(use) => `${use.id} ${use.usedAt}`}
       columns={[
-        { key: 'title', header: 'Estimate', plain: true, cell: (use) => <Printed text={use.title} /> },
+        { key: 'title', header: 'Estimate', plain: true, cell: (use) => <EstimateTitle use={use} inDoubt={doubted.includes(use.id)} /> },
         { key: 'usedAt', header: 'Used at', cell: (use) => <Printed text={use.usedAt} /> },
         { key: 'validFor', header: 'Holds for', cell: (use) => <Printed text={use.validFor} /> },
         { key: 'conditional', header: 'Rests on a conjecture', cell: (use) => (use.conditional ? <span className="text-undecided">conditional</span> : 'no') },
       ]}
     />
+  )
+}
+
+function EstimateTitle({ use, inDoubt }: { use: OutcomeView['estimates'][number]; inDoubt: boolean }) {
+  return (
+    <>
+      <TextLink to={paths.estimate(use.id)}><Printed text={use.title} /></TextLink>
+      {inDoubt && <strong className="block font-semibold text-refused">in doubt</strong>}
+    </>
   )
 }
 
