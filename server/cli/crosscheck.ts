@@ -56,20 +56,30 @@ function wayText({ method, arithmetic, goal }: Way): string {
   return `${method}, ${arithmetic}, ${goalText(goal)}`
 }
 
+/** CPU seconds of this process so far. */
+function cpuSeconds(): number {
+  const { user, system } = process.cpuUsage()
+  return (user + system) / 1e6
+}
+
 /** `npm run crosscheck`: the whole grid, or what holds one of the words given; exit code 1 where two enclosures of one constant do not meet. */
 async function main(words: string[]): Promise<void> {
-  let [pairs, broken] = [0, 0]
+  let [constants, pairs, broken] = [0, 0, 0]
   for (const definition of await crosscheckGrid()) {
     const { text } = readDefinition(definition)
     if (words.length > 0 && !words.some((word) => text.includes(word))) continue
+    const begun = cpuSeconds()
     const { outcomes, disjoint } = await crosscheck(definition)
+    const seconds = `${(cpuSeconds() - begun).toFixed(1)} s`.padStart(7)
     const methods = [...new Set(outcomes.map(({ way }) => way.method))].join(', ')
-    console.log(`${disjoint.length === 0 ? 'meet    ' : 'DISJOINT'} ${String(outcomes.length).padStart(2)} enclosures by ${methods}: ${text}`)
+    console.log(`${disjoint.length === 0 ? 'meet    ' : 'DISJOINT'} ${String(outcomes.length).padStart(2)} enclosures ${seconds}  ${text} (${methods})`)
     for (const [a, b] of disjoint) console.log(`         ${wayText(a)}  |  ${wayText(b)}`)
+    constants += 1
     pairs += (outcomes.length * (outcomes.length - 1)) / 2
     broken += disjoint.length
   }
-  console.log(`${pairs} pairs compared, ${broken} disjoint`)
+  const elapsed = process.uptime()
+  console.log(`${constants} constants, ${pairs} pairs compared, ${broken} disjoint; ${elapsed.toFixed(0)} s elapsed, ${cpuSeconds().toFixed(0)} s of CPU`)
   process.exitCode = broken === 0 ? 0 : 1
 }
 
