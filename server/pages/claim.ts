@@ -44,6 +44,7 @@ function notices(claim: Claim): Html {
     ${open.map((conflict) => html`<p><strong>In conflict.</strong> No number lies in both this enclosure and that of ${claimLink(conflict.claim)}. At least one is wrong.</p>`)}
     ${claim.kind === 'stated' && !claim.repeatedHere && html`<p><strong>Not repeated here.</strong> The value is taken from its source${elsewhere}. No run of this installation meets it yet.</p>`}
     ${claim.supersededBy !== null && html`<p><strong>Superseded.</strong> ${claimLink(claim.supersededBy)} is narrower. This one stays citable.</p>`}
+    ${claim.doubts.map(({ estimate, title, group, at, reason }) => html`<p><strong>In doubt.</strong> It rests on ${link(`/estimates/${estimate}`, printed(title))}, which ${group.name} has in doubt since ${day(at)}: <span class="as-written">${reason}</span></p>`)}
     ${fallen && html`<p><strong>${claim.state === 'suspended' ? 'Suspended' : 'Withdrawn'}.</strong> ${claim.history.findLast(({ to }) => to === claim.state)?.reason ?? 'Don’t rest anything on it.'}</p>`}`
 }
 

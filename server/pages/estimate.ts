@@ -6,25 +6,31 @@ import { html } from '../html.ts'
 import { presentEstimate } from '../presenters/estimate.ts'
 import { usesOfEstimates } from '../queries/estimate.ts'
 import { doubtsOfEstimates } from '../queries/estimate-doubt.ts'
-import { claimLink, link, printed, table, textPage } from './parts.ts'
+import { claimLink, day, link, printed, table, textPage } from './parts.ts'
 import type { PageContent } from './template.ts'
 
 const condition = ({ conditional, condition: on }: Pick<Estimate, 'conditional' | 'condition'>): string => (conditional ? `if ${on ?? 'an unproved hypothesis holds'}` : 'unconditionally')
 
-/** The library of estimates, always the same. Source and uses of each stand on its own page. */
-const LIBRARY: PageContent = {
-  head: pageHead('estimates'),
-  text: textPage(html`
-    <h1>Estimates</h1>
-    <p>Published explicit inequalities that bound what a sum leaves out. A certificate names each one that it uses and where; where one falls, what rests on it falls with it.</p>
-    ${table(ESTIMATES, [
-      { header: 'Estimate', cell: ({ id, title }) => link(`/estimates/${id}`, printed(title)) },
-      { header: 'Statement', cell: ({ statement }) => printed(statement) },
-      { header: 'Holds for', cell: (estimate) => html`${printed(estimate.validFor)}, ${condition(estimate)}` },
-    ])}`),
-}
+/** The library is always the same. Source and uses of each estimate stand on its own page. */
+const LIBRARY = table(ESTIMATES, [
+  { header: 'Estimate', cell: ({ id, title }) => link(`/estimates/${id}`, printed(title)) },
+  { header: 'Statement', cell: ({ statement }) => printed(statement) },
+  { header: 'Holds for', cell: (estimate) => html`${printed(estimate.validFor)}, ${condition(estimate)}` },
+])
 
-export const estimatesPage = (): PageContent => LIBRARY
+/** The library of estimates, and which of them are in doubt. */
+export async function estimatesPage(): Promise<PageContent> {
+  const doubts = await doubtsOfEstimates(undefined, ESTIMATES.map(({ id }) => id))
+  const inDoubt = ESTIMATES.filter(({ id }) => doubts.some(({ estimate, lifted_at: lifted }) => estimate === id && lifted === null))
+  return {
+    head: pageHead('estimates'),
+    text: textPage(html`
+      <h1>Estimates</h1>
+      <p>Published explicit inequalities that bound what a sum leaves out. A certificate names each one that it uses and where; where one falls, what rests on it falls with it.</p>
+      ${inDoubt.length > 0 && html`<p><strong>In doubt</strong> at present:</p><ul>${inDoubt.map(({ id, title }) => html`<li>${link(`/estimates/${id}`, printed(title))}</li>`)}</ul>`}
+      ${LIBRARY}`),
+  }
+}
 
 /** One estimate with the public claims that rest on it. */
 export async function estimatePage(id: string): Promise<PageContent> {
@@ -37,6 +43,7 @@ export async function estimatePage(id: string): Promise<PageContent> {
       <p>${link('/estimates', 'Estimates')}</p>
       <h1>${printed(estimate.title)}</h1>
       <p class="entry">${printed(estimate.statement)}<br />for ${printed(estimate.validFor)}, ${condition(estimate)}.</p>
+      ${estimate.doubts.filter(({ lifted }) => lifted === null).map(({ group, at, reason }) => html`<p><strong>In doubt</strong> at ${group.name} since ${day(at)}: <span class="as-written">${reason}</span></p>`)}
       <h2>Source</h2><p>${printed(estimate.source)}.</p>
       <h2>What was checked</h2><p>${printed(estimate.checked)}</p>
       <h2>Signed claims that rest on it</h2>

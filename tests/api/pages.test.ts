@@ -151,6 +151,27 @@ describe('the text of a page, for whoever reads it without JavaScript', () => {
     expect((await read(`/estimates/${id}`)).text).toContain('<h2>Source</h2>')
   })
 
+  it('tells of an estimate in doubt where a group says so openly, there and at the claim that rests on it', async () => {
+    const { id, title } = ESTIMATES[1]!
+    const claim = await claimIn('signed', open, { estimates: [id] })
+    const paths = ['/estimates', `/estimates/${id}`, `/claims/${claim.id}`]
+    const doubt = async (cast: Cast, reason: string): Promise<void> => {
+      const lead = await signedInAs(cast.lead, app)
+      const { digest } = (await lead.get(`/api/v1/estimates/${id}/doubt`).expect(200)).body
+      await lead.post(`/api/v1/estimates/${id}/doubt`).send({ reason, digest }).expect(201)
+    }
+    await doubt(closed, 'doubted among ourselves')
+    for (const path of paths) expect((await read(path)).text).not.toMatch(/In doubt|among ourselves/)
+    await doubt(open, `doubted openly ${HOSTILE}`)
+    for (const path of paths) {
+      const { text } = await read(path)
+      expect(text).toContain('<strong>In doubt')
+      expect(text).toContain(printedText(title))
+      expect(text).not.toMatch(/among ourselves|<script>/)
+    }
+    expect((await read(paths[2]!)).text).toMatch(/State: <strong>suspended<\/strong>[^]*doubted openly &lt;/)
+  })
+
   it('escapes whatever people have written', async () => {
     const author = await makeMember({ group: open.group, name: HOSTILE })
     const constant = await freshConstant(open.author)
