@@ -15,7 +15,7 @@ const estimate = (more: Partial<Estimate> = {}): Estimate => ({
   validFor: 'x >= 908994923', conditional: false, condition: null, source: 'A journal 45 (2018), Theorem 4.2', checked: 'Checked to 10^8.', state: 'in-force', stateSince: null, doubts: [], abilities: { doubt: false }, uses: 0, usedBy: [], ...more,
 })
 const have = <Data,>(data: Data) => ({ data, error: null, onRetry: () => undefined })
-const all = [estimate(), estimate({ id: 'theta-two', title: 'Another 1976', conditional: true, condition: 'the Riemann hypothesis' }), estimate({ id: 'theta-three', title: 'Third 2021', state: 'in-doubt', stateSince: '2026-03-01T08:00:00Z', uses: 1, usedBy: [{ claimNumber: 'MST-0001/1', usedAt: 'x >= 10^9' }] })]
+const all = [estimate(), estimate({ id: 'theta-two', title: 'Another 1976', conditional: true, condition: 'the Riemann hypothesis' }), estimate({ id: 'theta-three', title: 'Third 2021', state: 'in-doubt', stateSince: '2026-03-01T08:00:00Z', doubts: [{ group: { id: 'g', name: 'Haldern Institute' }, own: false, at: '2026-03-01T08:00:00Z', reason: 'Lemma 4 has a gap.', lifted: null }], uses: 1, usedBy: [{ claimNumber: 'MST-0001/1', usedAt: 'x >= 10^9' }] })]
 const idsOf = (search: string) => filterEstimates(all, estimateFiltersOf(new URLSearchParams(search))).map(({ id }) => id)
 
 describe('filters', () => {
@@ -81,7 +81,14 @@ describe('one estimate', () => {
   test('names the claims that rest on it, and the point where it was used', () => {
     render(<MemoryRouter><EstimateView estimate={have(all[2] as Estimate)} /></MemoryRouter>)
     expect(screen.getByRole('link', { name: 'MST-0001/1' })).toHaveAttribute('href', '/claims/MST-0001-1')
-    expect(screen.getByText('In doubt.')).toBeInTheDocument()
+    expect(screen.getByText(/^In doubt at Haldern Institute since/)).toHaveTextContent('In doubt at Haldern Institute since 1 March 2026.')
+    expect(screen.getByText('Lemma 4 has a gap.')).toBeInTheDocument()
+  })
+  test('a doubt that was lifted is told with both reasons, and the estimate is in force', () => {
+    const lifted = { group: { id: 'g', name: 'Haldern Institute' }, own: true, at: '2026-03-01T08:00:00Z', reason: 'Lemma 4 has a gap.', lifted: { at: '2026-03-09T08:00:00Z', reason: 'A corrigendum closes it.' } }
+    render(<MemoryRouter><EstimateView estimate={have(estimate({ doubts: [lifted] }))} /></MemoryRouter>)
+    expect(screen.queryByText(/^In doubt at/)).not.toBeInTheDocument()
+    expect(screen.getByText('A corrigendum closes it.')).toBeInTheDocument()
   })
   test('where only the latest claims are listed, it says of how many', () => {
     render(<MemoryRouter><EstimateView estimate={have({ ...(all[2] as Estimate), uses: 1_204 })} /></MemoryRouter>)

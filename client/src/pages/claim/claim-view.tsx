@@ -161,7 +161,7 @@ function ClaimMatter({ claim, mayReadRuns, onAct, onUpload, onRemoveEvidence, re
             <ErrorBudget items={outcome.budget} radius={outcome.radius} />
           </Section>
           <Section title="Estimates used">
-            <EstimateUses uses={claim.outcome.estimates} doubted={claim.doubts.map(({ estimate }) => estimate)} />
+            <EstimateUses uses={outcome.estimates} doubted={claim.doubts.map(({ estimate }) => estimate)} />
           </Section>
           {claim.run && outcome.convergence.length > 1 && (
             <Section title="Convergence" className="mt-10 print:hidden">
