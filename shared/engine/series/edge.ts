@@ -1,7 +1,7 @@
 import type { Arithmetic } from '../arithmetic/arithmetic.ts'
 import { ceilDivide, isqrt } from '../arithmetic/integers.ts'
 import { primesUpTo } from '../arithmetic/primes.ts'
-import { ONE, type Rational, ZERO, add, ceilScaled, compare, divide, dyadic, multiply, rational, subtract } from '../arithmetic/rational.ts'
+import { ONE, type Rational, ZERO, add, ceilScaled, divide, dyadic, multiply, rational, subtract } from '../arithmetic/rational.ts'
 import type { SetOfIntegers } from '../sets/definition.ts'
 import { classEdge } from './class-edge.ts'
 import type { SeriesPoint } from './dirichlet.ts'
@@ -152,9 +152,4 @@ function plainBound(set: Extract<SetOfIntegers, { kind: 'integers' | 'squarefree
 function inverseFactor(p: number): Rational {
   const root = rational(isqrt(BigInt(p) << 40n), 1n << 20n)
   return divide(root, subtract(root, ONE))
-}
-
-/** Whether the bounds of P-3 hold for these parameters. */
-export function isEdgeEllipse(eps: Rational, reach: Rational): boolean {
-  return eps.num > 0n && compare(eps, ONE) <= 0 && reach.num > 0n && compare(reach, rational(1, 2)) < 0
 }
