@@ -1,6 +1,6 @@
 import { setTimeout as pause } from 'node:timers/promises'
 import pg from 'pg'
-import { QueryTypes, Sequelize, type Transaction } from 'sequelize'
+import { DatabaseError, QueryTypes, Sequelize, type Transaction } from 'sequelize'
 import { env } from './env.ts'
 
 /** The one connection pool of the process. Columns are snake_case; models state their own timestamps. */
@@ -57,6 +57,44 @@ export async function select<Row extends object>(sql: string, bind: Bind = {}, t
 /** First row or undefined. */
 export async function selectOne<Row extends object>(sql: string, bind: Bind = {}, transaction?: Transaction): Promise<Row | undefined> {
   return (await select<Row>(sql, bind, transaction))[0]
+}
+
+interface KeptStatement {
+  name: string
+  text: string
+  /** Names of the values in the order of their numbers in the text. */
+  names: string[]
+}
+
+const keptStatements = new Map<string, KeptStatement>()
+
+function keptStatement(sql: string): KeptStatement {
+  const known = keptStatements.get(sql)
+  if (known) return known
+  const names: string[] = []
+  const text = sql.replace(/\$([A-Za-z]\w*)/g, (_all, name: string) => `$${names.includes(name) ? names.indexOf(name) + 1 : names.push(name)}`)
+  const statement = { name: `kept_${keptStatements.size}`, text, names }
+  keptStatements.set(sql, statement)
+  return statement
+}
+
+/**
+ * As `select`, for what is asked by a key again and again: each connection keeps the statement and its plan, which of a join of many
+ * tables takes longer to make than to follow. Not for lists with filters, where the best plan depends on the values; and `sql` must not
+ * be put together anew for each question, since every text is kept.
+ */
+export async function selectByKey<Row extends object>(sql: string, bind: Bind, transaction?: Transaction): Promise<Row[]> {
+  const { name, text, names } = keptStatement(sql)
+  const held = (transaction as { connection?: pg.Client } | undefined)?.connection
+  const connection = held ?? ((await sequelize.connectionManager.getConnection({ type: 'read' })) as pg.Client)
+  try {
+    const { rows } = await connection.query<Row>({ name, text, values: names.map((key) => bind[key]) })
+    return rows
+  } catch (error) {
+    throw new DatabaseError(Object.assign(error as Error, { sql }))
+  } finally {
+    if (!held) sequelize.connectionManager.releaseConnection(connection)
+  }
 }
 
 /** Runs a statement that changes rows and answers what its RETURNING clause gives. */

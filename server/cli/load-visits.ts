@@ -109,6 +109,7 @@ export const VISITS: readonly Visit[] = [
   get('/evidence/:id', 'file', 'anyone', ({ evidence }, _own, roll) => `/evidence/${pick(roll, evidence)}`),
   get('/estimates', 'all, with their uses', 'anyone', () => '/estimates'),
   get('/estimates/:id', 'one, with 500 uses', 'anyone', ({ estimates }, _own, roll) => `/estimates/${pick(roll, estimates)}`),
+  get('/estimates/:id/doubt', 'what rests on it in the group', 'estimates.doubt', ({ estimates }, _own, roll) => `/estimates/${pick(roll, estimates)}/doubt`),
   get('/session', 'who am I, and counts', 'anyone', () => '/session'),
   get('/keys', 'keys', 'anyone', () => '/keys'),
   get('/invitations/accept/:token', 'an invitation', 'anyone', ({ invitation }) => `/invitations/accept/${invitation}`),

@@ -1,7 +1,7 @@
 import type { Transaction } from 'sequelize'
 import { actParticiple, type LifeAct } from '../../shared/claim-life.ts'
 import type { ClaimState } from '../../shared/schemas/claim.ts'
-import { select, selectOne } from '../db.ts'
+import { selectByKey, selectOne } from '../db.ts'
 
 /** One thing that happened to a claim, as the audit trail has it. */
 export interface HistoryRow {
@@ -15,7 +15,7 @@ export interface HistoryRow {
 
 /** Everything that happened to a claim, first things first. */
 export async function historyOf(claimId: string): Promise<HistoryRow[]> {
-  return select<HistoryRow>(
+  return selectByKey<HistoryRow>(
     `SELECT at, actor_name, substr(act, 7) AS act, detail->>'from' AS from, detail->>'to' AS to, reason
      FROM audit_entries WHERE subject_kind = 'claim' AND subject_id = $claimId AND act LIKE 'claim.%' ORDER BY seq`,
     { claimId },

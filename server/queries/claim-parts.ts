@@ -1,5 +1,5 @@
 import type { Claim } from '../../shared/schemas/claim.ts'
-import { select, selectOne } from '../db.ts'
+import { selectByKey } from '../db.ts'
 
 /** What hangs on a claim, each list first things first. */
 
@@ -15,7 +15,7 @@ export interface EvidenceRow {
 }
 
 export const evidenceOf = (claimId: string): Promise<EvidenceRow[]> =>
-  select(
+  selectByKey(
     `SELECT e.id, e.name, e.media_type, e.bytes, e.digest, e.uploaded_by, m.name AS uploader_name, e.uploaded_at
      FROM evidence e JOIN members m ON m.id = e.uploaded_by WHERE e.claim_id = $claimId ORDER BY e.uploaded_at, e.id`,
     { claimId },
@@ -38,7 +38,7 @@ export interface AssignmentRow {
 }
 
 export const assignmentsOf = (claimId: string): Promise<AssignmentRow[]> =>
-  select(
+  selectByKey(
     `SELECT s.id, s.referee_id, m.name AS referee_name, g.name AS referee_group, s.state, s.decline_reason, s.verdict, coalesce(s.verdict_digest = c.digest, false) AS verdict_current,
        s.remark, s.checklist, s.asked_at, s.answered_at, s.verdict_at
      FROM assignments s JOIN claims c ON c.id = s.claim_id JOIN members m ON m.id = s.referee_id JOIN groups g ON g.id = m.group_id WHERE s.claim_id = $claimId ORDER BY s.asked_at, s.id`,
@@ -55,7 +55,7 @@ export interface ObjectionRow {
 }
 
 export const objectionsOf = (claimId: string): Promise<ObjectionRow[]> =>
-  select(
+  selectByKey(
     `SELECT o.id, s.referee_id, m.name AS referee_name, s.state = 'declined' OR m.state <> 'active' OR NOT 'referee' = ANY (m.roles) AS referee_gone, o.state,
        (SELECT json_agg(json_build_object('author_id', w.id, 'author_name', w.name, 'text', t.text, 'at', t.at) ORDER BY t.at, t.id)
         FROM objection_messages t JOIN members w ON w.id = t.author_id WHERE t.objection_id = o.id) AS messages
@@ -80,7 +80,7 @@ export interface RecheckRow {
 }
 
 export const rechecksOf = (claimId: string): Promise<RecheckRow[]> =>
-  select(
+  selectByKey(
     `SELECT r.id, r.started_by, m.name AS starter_name, r.state, r.progress, r.method, r.arithmetic, e.lo, e.hi, r.finished_at, r.failure,
        CASE WHEN e.lo IS NULL OR c.lo IS NULL THEN NULL WHEN e.lo::numeric <= c.hi AND e.hi::numeric >= c.lo THEN 'meets' ELSE 'disjoint' END AS verdict,
        own.id IS NULL OR own.method <> r.method OR own.arithmetic <> r.arithmetic AS independent
@@ -102,7 +102,7 @@ export interface ConflictRow {
 }
 
 export const conflictsOfClaim = (claimId: string): Promise<ConflictRow[]> =>
-  select(
+  selectByKey(
     `SELECT other.id AS other_id, c.number, other.ordinal, k.opened_at, k.closed_at, other.signed_at IS NOT NULL AND g.public AS open, other.group_id AS other_group
      FROM conflicts k JOIN claims other ON other.id = CASE WHEN k.claim_id = $claimId THEN k.signed_claim_id ELSE k.claim_id END JOIN constants c ON c.id = other.constant_id JOIN groups g ON g.id = other.group_id
      WHERE k.claim_id = $claimId OR k.signed_claim_id = $claimId ORDER BY k.opened_at, k.id`,
@@ -111,7 +111,7 @@ export const conflictsOfClaim = (claimId: string): Promise<ConflictRow[]> =>
 
 /** Members of any group who may be asked to referee a claim. */
 export const possibleRefereesOf = (claimId: string): Promise<{ id: string; name: string; group: string }[]> =>
-  select(
+  selectByKey(
     `SELECT m.id, m.name, g.name AS "group" FROM members m JOIN groups g ON g.id = m.group_id JOIN claims c ON c.id = $claimId
      WHERE m.state = 'active' AND 'referee' = ANY (m.roles) AND m.id <> c.author_id
        AND NOT EXISTS (SELECT 1 FROM assignments s WHERE s.claim_id = c.id AND s.referee_id = m.id AND s.state <> 'declined')
@@ -121,6 +121,6 @@ export const possibleRefereesOf = (claimId: string): Promise<{ id: string; name:
 
 /** A referee's own verdict while it is being written. */
 export async function verdictDraftOf(claimId: string, memberId: string): Promise<string | null> {
-  const row = await selectOne<{ draft: string | null }>(`SELECT draft FROM assignments WHERE claim_id = $claimId AND referee_id = $memberId AND state <> 'declined'`, { claimId, memberId })
+  const [row] = await selectByKey<{ draft: string | null }>(`SELECT draft FROM assignments WHERE claim_id = $claimId AND referee_id = $memberId AND state <> 'declined'`, { claimId, memberId })
   return row?.draft ?? null
 }

@@ -1,7 +1,7 @@
 import type { Transaction } from 'sequelize'
 import type { Facts, Standing } from '../../shared/claim-life.ts'
 import { kindOf } from '../claim-kinds/kinds.ts'
-import { selectOne } from '../db.ts'
+import { selectByKey, selectOne } from '../db.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 
 /** What the questions of this file need to know of a claim. */
@@ -14,7 +14,7 @@ export interface ClaimRef {
 
 /** How a member stands to a claim. */
 export async function standingOf(member: SignedInMember, claim: ClaimRef, transaction?: Transaction): Promise<Standing> {
-  const row = await selectOne<{ active: Standing['assignment'] | null; declined: boolean; ever: boolean }>(
+  const [row] = await selectByKey<{ active: Standing['assignment'] | null; declined: boolean; ever: boolean }>(
     `SELECT max(state) FILTER (WHERE state <> 'declined') AS active, bool_or(state = 'declined') AS declined, bool_or(state = 'accepted' OR verdict IS NOT NULL) AS ever
      FROM assignments WHERE claim_id = $claimId AND referee_id = $memberId`,
     { claimId: claim.id, memberId: member.id },
@@ -81,7 +81,7 @@ const FACTS = `
 
 /** The facts of a claim's review, as they are for this member (or for nobody in particular). */
 export async function factsOf(claim: ClaimRef, memberId: string | null, subject: ActSubject = {}, transaction?: Transaction): Promise<Facts> {
-  const row = await selectOne<FactsRow>(FACTS, { claimId: claim.id, memberId }, transaction)
+  const [row] = await selectByKey<FactsRow>(FACTS, { claimId: claim.id, memberId }, transaction)
   if (!row) throw new Error('the claim is gone while it is looked at')
   const objection = subject.objectionId === undefined ? undefined : await objectionFacts(claim.id, subject.objectionId, memberId, transaction)
   const waits = subject.assignmentId === undefined ? undefined : await assignmentWaits(claim.id, subject.assignmentId, transaction)

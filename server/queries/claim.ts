@@ -4,7 +4,7 @@ import type { Outcome } from '../../shared/engine/methods/computation.ts'
 import { hasRight } from '../../shared/permissions.ts'
 import type { ClaimState, ClaimSummary, claimQuery } from '../../shared/schemas/claim.ts'
 import type { Json } from '../audit/canonical.ts'
-import { select, selectOne, type Bind } from '../db.ts'
+import { select, selectByKey, selectOne, type Bind } from '../db.ts'
 import type { Reader } from './audience.ts'
 import { readCursor, writeCursor } from './cursor.ts'
 
@@ -35,7 +35,7 @@ export interface ClaimRow {
   at: string
 }
 
-const COLUMNS = `cl.id, cl.kind, c.number, cl.ordinal, o.number AS other_number, CASE WHEN octet_length(c.definition::text) < 4000 THEN c.definition END AS definition,
+const COLUMNS = `cl.id, cl.kind, c.number, cl.ordinal, o.number AS other_number, CASE WHEN pg_column_size(c.definition) < 4000 THEN c.definition END AS definition,
   c.latex, c.text, c.aliases, cl.lo, cl.hi, cl.digits_truncated, cl.digits_rounded, cl.state, cl.repeated_here, cl.author_id, m.name AS author_name,
   cl.group_id, g.name AS group_name, cl.since, cl.signed_at, cl.since::text AS at,
   EXISTS (SELECT 1 FROM conflicts x WHERE (x.claim_id = cl.id OR x.signed_claim_id = cl.id) AND x.closed_at IS NULL) AS in_conflict`
@@ -92,7 +92,7 @@ async function constantIdOf(text: string): Promise<string | null> {
 /** Claims of a constant that are open to the reader, orders that it is part of among them, by number. */
 export async function claimsOfConstant(reader: Reader, constantId: string): Promise<ClaimRow[]> {
   const { ways, bind } = waysOpen(reader)
-  return select<ClaimRow>(
+  return selectByKey<ClaimRow>(
     `SELECT ${COLUMNS} ${FROM} WHERE (${ways.join(' OR ')}) AND (cl.constant_id = $constantId OR cl.other_constant_id = $constantId) ORDER BY c.number, cl.ordinal NULLS LAST, cl.created_at`,
     { ...bind, constantId },
   )
@@ -107,7 +107,7 @@ export async function claimRows(ids: readonly string[]): Promise<ClaimRow[]> {
 export async function claimIdOf(reference: string): Promise<string | undefined> {
   const numbered = parseClaimNumber(reference)
   if (!numbered) return reference
-  const row = await selectOne<{ id: string }>('SELECT cl.id FROM claims cl JOIN constants c ON c.id = cl.constant_id WHERE c.number = $number AND cl.ordinal = $ordinal', numbered)
+  const [row] = await selectByKey<{ id: string }>('SELECT cl.id FROM claims cl JOIN constants c ON c.id = cl.constant_id WHERE c.number = $number AND cl.ordinal = $ordinal', { ...numbered })
   return row?.id
 }
 
@@ -133,11 +133,12 @@ type ClaimRunRow = Pick<Outcome, 'method' | 'arithmetic'>
 
 /** One claim with everything that stands in its own row, whoever may read it: the policy decides on the row. */
 export async function findClaim(id: string): Promise<ClaimDetailRow | undefined> {
-  return selectOne<ClaimDetailRow>(
+  const [row] = await selectByKey<ClaimDetailRow>(
     `SELECT ${COLUMNS}, c.definition AS full_definition, g.public AS group_public, cl.version, cl.remark, cl.source, cl.basis, cl.run_id, r.method, r.arithmetic, r.outcome, cl.digest, cl.certificate_digest,
        CASE WHEN cl.signed_at IS NOT NULL THEN cl.certificate::jsonb->'signature'->>'keyId' END AS key_id,
        n.ordinal AS superseder_ordinal, (SELECT max(w.ordinal) FROM claims w WHERE w.superseded_by = cl.id AND w.state = 'superseded') AS superseded_ordinal, s.name AS signer_name
      ${FROM} LEFT JOIN runs r ON r.id = cl.run_id LEFT JOIN claims n ON n.id = cl.superseded_by AND cl.state = 'superseded' LEFT JOIN members s ON s.id = cl.signed_by WHERE cl.id = $id`,
     { id },
   )
+  return row
 }

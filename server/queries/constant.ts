@@ -2,7 +2,7 @@ import type { z } from 'zod'
 import { parseRational, toText } from '../../shared/engine/arithmetic/rational.ts'
 import { isPrime } from '../../shared/engine/arithmetic/primes.ts'
 import type { ConstantSummary, constantQuery } from '../../shared/schemas/constant.ts'
-import { select, selectOne, type Bind } from '../db.ts'
+import { select, selectByKey, type Bind } from '../db.ts'
 import { invalid, invalidField, type FieldError } from '../errors.ts'
 import { audienceOf, stateColumn, type Reader } from './audience.ts'
 import { readTextQuery } from './constant-text.ts'
@@ -31,13 +31,13 @@ export interface ConstantRow {
   sort_key: string | null
 }
 
-const columns = (reader: Reader): string => `c.id, c.number, CASE WHEN octet_length(c.definition::text) < 4000 THEN c.definition END AS definition,
+const columns = (reader: Reader): string => `c.id, c.number, CASE WHEN pg_column_size(c.definition) < 4000 THEN c.definition END AS definition,
   c.latex, c.text, c.aliases, e.${stateColumn(reader)} AS state, e.in_conflict, e.best_lo, e.best_hi, e.digits_truncated, e.digits_rounded,
   g.id AS group_id, g.name AS group_name, e.changed_at, e.key::text AS sort_key`
 
 /** Entries that fit, in order, with what is shown of them: filters and order need the entries alone, so only what is shown is joined. */
-function rowsSql(reader: Reader, { key, order, conditions, limit }: { key: string; order: 'asc' | 'desc'; conditions: readonly string[]; limit: string }): string {
-  return `SELECT ${columns(reader)}
+function rowsSql(reader: Reader, { key, order, conditions, limit, total }: { key: string; order: 'asc' | 'desc'; conditions: readonly string[]; limit: string; total?: string }): string {
+  return `SELECT ${columns(reader)}${total === undefined ? '' : `, (${total}) AS total`}
     FROM (SELECT e.*, ${key} AS key FROM register_entries e WHERE ${conditions.join(' AND ')} ORDER BY ${key} ${order}, e.number ${order} LIMIT ${limit}) e
     JOIN constants c ON c.id = e.constant_id JOIN groups g ON g.id = e.group_id
     ORDER BY e.key ${order}, e.number ${order}`
@@ -139,8 +139,13 @@ export async function listConstants(
     conditions.push(`(${key}, e.number) ${query.order === 'asc' ? '>' : '<'} (${position}, $afterNumber::int)`)
     Object.assign(bind, query.sort === 'value' ? { afterNumber: number } : { after, afterNumber: number })
   }
-  const asked = select<ConstantRow>(rowsSql(reader, { key, order: query.order, conditions, limit: '$limit' }), { ...bind, limit: limit + 1 })
-  const [rows, total] = await Promise.all([asked, cursor === undefined ? countConstants(reader, where, bind) : undefined])
+  const first = cursor === undefined
+  const rows = await select<ConstantRow & { total: number }>(
+    rowsSql(reader, { key, order: query.order, conditions, limit: '$limit', ...(first && { total: where.length === 1 ? countAllSql(reader) : countSql(where) }) }),
+    { ...bind, limit: limit + 1 },
+  )
+  const counted = rows[0]?.total ?? 0
+  const total = first && (where.length === 1 || counted <= MOST_COUNTED) ? counted : undefined
   const page = rows.slice(0, limit)
   const last = page.at(-1)
   const after: CursorKey | null = rows.length > limit && last ? [query.sort === 'value' ? null : last.sort_key, last.number] : null
@@ -151,17 +156,13 @@ export async function listConstants(
 const FEW_FROM_DECIMALS = 3
 
 /** Most that is counted of a filtered list, so that counting never costs more than listing. */
-const MOST_COUNTED = 500
+const MOST_COUNTED = 300
 
-async function countConstants(reader: Reader, where: string[], bind: Bind): Promise<number | undefined> {
-  const unfiltered = where.length === 1
-  const row = await selectOne<{ total: number }>(unfiltered ? countAllSql(reader) : `SELECT count(*)::int AS total FROM (SELECT 1 FROM register_entries e WHERE ${where.join(' AND ')} LIMIT ${MOST_COUNTED + 1}) AS counted`, bind)
-  return row && (unfiltered || row.total <= MOST_COUNTED) ? row.total : undefined
-}
+const countSql = (where: readonly string[]): string => `SELECT count(*)::int FROM (SELECT 1 FROM register_entries e WHERE ${where.join(' AND ')} LIMIT ${MOST_COUNTED + 1}) AS counted`
 
 /** The whole register: to members every constant is known, and numbers have no gaps. */
 const countAllSql = (reader: Reader): string =>
-  reader ? 'SELECT coalesce(max(number), 0) AS total FROM register_entries WHERE audience = $audience' : 'SELECT count(*)::int AS total FROM register_entries WHERE audience = $audience'
+  `SELECT ${reader ? 'coalesce(max(number), 0)' : 'count(*)::int'} FROM register_entries WHERE audience = $audience`
 
 /** Every row of a query, for an export, up to `most`. */
 export async function allConstants(reader: Reader, query: ConstantQuery, most: number): Promise<ConstantRow[]> {
@@ -173,11 +174,12 @@ export async function allConstants(reader: Reader, query: ConstantQuery, most: n
 /** One constant as this reader sees it. */
 export async function findConstant(reader: Reader, number: number): Promise<ConstantRow | undefined> {
   const conditions = ['e.audience = $audience', 'e.number = $number']
-  return selectOne<ConstantRow>(rowsSql(reader, { key: 'e.number', order: 'asc', conditions, limit: '1' }), { audience: audienceOf(reader), number })
+  const [row] = await selectByKey<ConstantRow>(rowsSql(reader, { key: 'e.number', order: 'asc', conditions, limit: '1' }), { audience: audienceOf(reader), number })
+  return row
 }
 
 /** Several constants by id. */
 export async function constantsById(reader: Reader, ids: string[]): Promise<ConstantRow[]> {
   const conditions = ['e.audience = $audience', 'e.constant_id = ANY($ids::uuid[])']
-  return select<ConstantRow>(rowsSql(reader, { key: 'e.number', order: 'asc', conditions, limit: 'ALL' }), { audience: audienceOf(reader), ids })
+  return selectByKey<ConstantRow>(rowsSql(reader, { key: 'e.number', order: 'asc', conditions, limit: 'ALL' }), { audience: audienceOf(reader), ids })
 }

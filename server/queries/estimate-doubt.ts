@@ -40,6 +40,9 @@ export async function estimatesInDoubt(groupId: string, transaction?: Transactio
   return rows.map(({ estimate }) => estimate)
 }
 
+/** What a claim is about: its constant `k`, of an order the lesser, with the greater `g`. */
+const ABOUT = `k.text || coalesce(' < ' || g.text, '')`
+
 /** A claim that rests on an estimate. */
 export interface RestingRow {
   id: string
@@ -49,6 +52,7 @@ export interface RestingRow {
   ordinal: number
   constant_id: string
   number: number
+  /** Its constant in words; for an order both, as "… < …". */
   text: string
   author_id: string
   author_name: string
@@ -64,14 +68,17 @@ export interface RestingRow {
  */
 export const claimsOnEstimate = (groupId: string, estimate: string, transaction?: Transaction): Promise<RestingRow[]> =>
   select(
-    `SELECT c.id, c.kind, c.state, c.version, c.ordinal, c.constant_id, k.number, k.text, c.author_id, m.name AS author_name, u.through,
+    `SELECT c.id, c.kind, c.state, c.version, c.ordinal, c.constant_id, k.number, ${ABOUT} AS text, c.author_id, m.name AS author_name, u.through,
        c.state = 'suspended' AND EXISTS (SELECT 1 FROM estimate_doubt_claims f WHERE f.claim_id = c.id AND f.since = c.since) AS by_doubt
-     FROM claims c JOIN constants k ON k.id = c.constant_id JOIN members m ON m.id = c.author_id
+     FROM claims c JOIN constants k ON k.id = c.constant_id LEFT JOIN constants g ON g.id = c.other_constant_id JOIN members m ON m.id = c.author_id
      CROSS JOIN LATERAL (
        SELECT count(*) AS uses, coalesce(jsonb_agg(DISTINCT jsonb_build_object('number', bk.number, 'ordinal', b.ordinal)) FILTER (WHERE b.id IS NOT NULL), '[]') AS through
        FROM claim_estimates used LEFT JOIN claims b ON b.id = used.through LEFT JOIN constants bk ON bk.id = b.constant_id
        WHERE used.claim_id = c.id AND used.estimate = $estimate) u
      WHERE c.group_id = $groupId AND c.state NOT IN ('draft', 'withdrawn') AND u.uses > 0
+       AND c.id IN (
+         SELECT own.id FROM claims own WHERE own.run_id = ANY (ARRAY(SELECT r.id FROM runs r WHERE r.state = 'done' AND r.estimates @> ARRAY[$estimate]::text[]))
+         UNION ALL SELECT o.id FROM claims o WHERE o.kind = 'order')
      ORDER BY c.kind = 'order', k.number, c.state <> 'superseded', c.hi - c.lo DESC, c.ordinal`,
     { groupId, estimate },
     transaction,
@@ -105,7 +112,7 @@ export const constantsToRunAgain = (groupId: string, estimate: string, claimIds:
      LEFT JOIN LATERAL (
        SELECT c.ordinal, c.digits_truncated AS digits FROM claims c JOIN groups g ON g.id = c.group_id
        WHERE c.constant_id = k.id AND c.state IN ('signed', 'superseded') AND c.lo IS NOT NULL AND (g.public OR g.id = $groupId)
-         AND NOT EXISTS (SELECT 1 FROM claim_estimates u WHERE u.claim_id = c.id AND u.estimate = $estimate)
+         AND NOT EXISTS (SELECT 1 FROM runs u WHERE u.id = c.run_id AND $estimate = ANY (u.estimates))
        ORDER BY c.hi - c.lo, c.id LIMIT 1) other ON true
      LEFT JOIN LATERAL (
        SELECT r.id, r.state FROM runs r WHERE r.constant_id = k.id AND r.group_id = $groupId AND r.purpose = 'run' AND r.created_at >= $since::timestamptz AND NOT $estimate = ANY (r.estimates)
@@ -125,13 +132,13 @@ export interface OtherRow {
 /** Who is to hear of a doubt beside the authors of a group's claims: referees of what waits, authors elsewhere of orders that rest on what falls. */
 export const othersTouched = (fallen: readonly string[], waiting: readonly string[], transaction: Transaction): Promise<OtherRow[]> =>
   select(
-    `SELECT k.number, c.ordinal, k.text, touched.member_id, touched.part
+    `SELECT k.number, c.ordinal, ${ABOUT} AS text, touched.member_id, touched.part
      FROM (
        SELECT s.claim_id, s.referee_id AS member_id, 'referee' AS part FROM assignments s WHERE s.claim_id = ANY ($waiting::uuid[]) AND s.state <> 'declined'
        UNION
        SELECT o.id, o.author_id, 'author' FROM claims o CROSS JOIN LATERAL jsonb_array_elements((o.basis->'lesser'->'claims') || (o.basis->'greater'->'claims')) AS side (claim)
        WHERE o.kind = 'order' AND o.state NOT IN ('draft', 'withdrawn') AND (side.claim->>'id')::uuid = ANY ($fallen::uuid[])) touched
-     JOIN claims c ON c.id = touched.claim_id JOIN constants k ON k.id = c.constant_id ORDER BY k.number, c.ordinal, touched.member_id`,
+     JOIN claims c ON c.id = touched.claim_id JOIN constants k ON k.id = c.constant_id LEFT JOIN constants g ON g.id = c.other_constant_id ORDER BY k.number, c.ordinal, touched.member_id`,
     { fallen, waiting },
     transaction,
   )

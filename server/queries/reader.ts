@@ -1,5 +1,5 @@
 import type { Role } from '../../shared/permissions.ts'
-import { change, selectOne } from '../db.ts'
+import { change, selectByKey } from '../db.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 
 interface Row {
@@ -29,7 +29,7 @@ const present = (row: Row, via: SignedInMember['via']): SignedInMember => ({
 
 /** The member whose session this is, if it stands. When it was last seen is written once a minute at most. */
 export async function readerBySession(sessionId: string): Promise<SignedInMember | undefined> {
-  const row = await selectOne<Row>(
+  const [row] = await selectByKey<Row>(
     `SELECT ${MEMBER}, s.id AS via_id, s.last_seen_at < now() - interval '1 minute' AS stale
      FROM sessions s ${FROM_MEMBER} WHERE s.id = $sessionId AND s.ended_at IS NULL AND s.expires_at > now()`,
     { sessionId },
@@ -41,7 +41,7 @@ export async function readerBySession(sessionId: string): Promise<SignedInMember
 
 /** The member whose access token this is the hash of, if it stands. */
 export async function readerByToken(hash: string): Promise<SignedInMember | undefined> {
-  const row = await selectOne<Row>(
+  const [row] = await selectByKey<Row>(
     `SELECT ${MEMBER}, t.id AS via_id, t.scopes, t.last_used_at IS NULL OR t.last_used_at < now() - interval '1 minute' AS stale
      FROM access_tokens t ${FROM_MEMBER} WHERE t.token_hash = $hash AND t.revoked_at IS NULL AND t.expires_at > now()`,
     { hash },

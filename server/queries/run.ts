@@ -3,7 +3,7 @@ import { parseConstantNumber } from '../../shared/constant-number.ts'
 import type { Outcome } from '../../shared/engine/methods/computation.ts'
 import { hasRight } from '../../shared/permissions.ts'
 import type { Run, RunSummary, runQuery } from '../../shared/schemas/run.ts'
-import { select, selectOne } from '../db.ts'
+import { select, selectByKey, selectOne } from '../db.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 import { readCursor, writeCursor } from './cursor.ts'
 
@@ -34,7 +34,7 @@ export interface RunRow {
   at: string
 }
 
-const COLUMNS = `r.id, c.number, CASE WHEN octet_length(c.definition::text) < 4000 THEN c.definition END AS definition, c.latex, c.text, c.aliases, r.group_id, g.name AS group_name,
+const COLUMNS = `r.id, c.number, CASE WHEN pg_column_size(c.definition) < 4000 THEN c.definition END AS definition, c.latex, c.text, c.aliases, r.group_id, g.name AS group_name,
   r.started_by, m.name AS starter_name, r.state, r.method, r.arithmetic, r.goal, r.progress, r.purpose, cc.number AS claim_number, cl.ordinal AS claim_ordinal,
   r.created_at, r.started_at, r.finished_at, r.outcome->'digits' AS digits, r.created_at::text AS at`
 const FROM = `FROM runs r JOIN constants c ON c.id = r.constant_id JOIN groups g ON g.id = r.group_id JOIN members m ON m.id = r.started_by
@@ -89,10 +89,11 @@ export interface RunDetailRow extends RunRow {
 
 /** One run by id, whoever may see it: the policy decides on the row. */
 export async function findRun(id: string): Promise<RunDetailRow | undefined> {
-  return selectOne<RunDetailRow>(
+  const [row] = await selectByKey<RunDetailRow>(
     `SELECT ${COLUMNS}, coalesce(r.request::jsonb->'without', '[]') AS without, r.forecast_seconds, r.cpu_ms, r.seconds_left, r.shards_done, r.shards_total, r.outcome, r.certificate_digest, r.failure ${FROM} WHERE r.id = $id`,
     { id },
   )
+  return row
 }
 
 /** Claims that were registered from a run. */

@@ -10,10 +10,13 @@ import { doubtsOfEstimates } from '../queries/estimate-doubt.ts'
 /** The engine's library of published estimates; open to everybody. */
 export const estimate = Router()
 
+/** Uses of each estimate that the list names; its own page has more. */
+const NEWEST_LISTED = 5
+
 const one = { params: z.object({ id: z.string().max(200) }) }
 
 estimate.get('/', async (req, res) => {
-  const uses = await usesOfEstimates(req.reader, ESTIMATES.map(({ id }) => id), 20)
+  const uses = await usesOfEstimates(req.reader, ESTIMATES.map(({ id }) => id), NEWEST_LISTED)
   const doubts = await doubtsOfEstimates(req.reader, ESTIMATES.map(({ id }) => id))
   res.json({ items: ESTIMATES.map((entry) => presentEstimate(entry, uses, doubts, req.reader)) })
 })
