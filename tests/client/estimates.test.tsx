@@ -68,7 +68,7 @@ describe('the library', () => {
   test('choosing a filter keeps the others', async () => {
     const filter = show('text=theta')
     await userEvent.selectOptions(screen.getByRole('combobox', { name: 'Conditional' }), 'yes')
-    expect(filter).toHaveBeenCalledWith({ text: 'theta', conditional: 'yes', state: '', use: '' })
+    expect(filter).toHaveBeenCalledWith({ text: 'theta', conditional: 'yes' })
   })
   test('where nothing fits, there is a way back', () => {
     show('text=nothing-like-it')

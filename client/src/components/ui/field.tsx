@@ -68,6 +68,15 @@ export function Select({ className, ref, ...rest }: SelectHTMLAttributes<HTMLSel
   return <select {...rest} ref={ref} className={classNames(CONTROL, 'h-[2.45rem] py-0', className)} />
 }
 
+/** The options of a list to choose from: each value with its words. */
+export function Options({ of }: { of: Readonly<Record<string, string>> | readonly (readonly [value: string, words: string])[] }) {
+  return (Array.isArray(of) ? (of as readonly (readonly [string, string])[]) : Object.entries(of)).map(([value, words]) => (
+    <option key={value} value={value}>
+      {words}
+    </option>
+  ))
+}
+
 interface ChoiceProps extends InputHTMLAttributes<HTMLInputElement> {
   label: ReactNode
   hint?: ReactNode

@@ -1,12 +1,11 @@
-import type { FormEvent } from 'react'
 import { pageHead } from '../../../../shared/page-head.ts'
 import type { Estimate } from '../../../../shared/schemas/estimate.ts'
 import { paths } from '../../app/paths.ts'
 import { Empty } from '../../components/ui/feedback.tsx'
 import { Part } from '../../components/ui/fetched.tsx'
 import type { Fetched } from '../../components/ui/fetched.tsx'
-import { Button } from '../../components/ui/button.tsx'
-import { Field, Select, TextInput } from '../../components/ui/field.tsx'
+import { Field, Options, Select, TextInput } from '../../components/ui/field.tsx'
+import { FilterButtons, FilterForm } from '../../components/ui/filter-form.tsx'
 import { TextLink } from '../../components/ui/link.tsx'
 import { Page } from '../../components/ui/page.tsx'
 import { EstimateTable } from '../../features/estimates/components/estimate-table.tsx'
@@ -16,7 +15,7 @@ import type { EstimateFilters } from '../../features/estimates/estimate-filters.
 interface EstimatesViewProps {
   estimates: Fetched<Estimate[]>
   filters: EstimateFilters
-  onFilter: (filters: EstimateFilters) => void
+  onFilter: (filters: Record<string, string>) => void
 }
 
 /** The library of published explicit inequalities. */
@@ -34,7 +33,7 @@ export function EstimatesView({ estimates, filters, onFilter }: EstimatesViewPro
         </>
       }
     >
-      <FilterForm filters={filters} onFilter={onFilter} />
+      <EstimateFiltersForm filters={filters} onFilter={onFilter} />
       <Part of={estimates} what="the estimates">{(list) => <Shown all={list} shown={filterEstimates(list, filters)} />}</Part>
     </Page>
   )
@@ -63,43 +62,27 @@ function Shown({ all, shown }: { all: Estimate[]; shown: Estimate[] }) {
   )
 }
 
-function FilterForm({ filters, onFilter }: { filters: EstimateFilters; onFilter: EstimatesViewProps['onFilter'] }) {
+function EstimateFiltersForm({ filters, onFilter }: { filters: EstimateFilters; onFilter: EstimatesViewProps['onFilter'] }) {
   const filtered = Object.values(filters).some((value) => value !== '')
-  const search = (event: FormEvent<HTMLFormElement>) => {
-    event.preventDefault()
-    const text = new FormData(event.currentTarget).get('text')
-    onFilter({ ...filters, text: typeof text === 'string' ? text.trim() : '' })
-  }
-  const select = (name: 'conditional' | 'state' | 'use', label: string, options: [value: string, words: string][]) => (
+  const select = (name: 'conditional' | 'state' | 'use', label: string, options: Record<string, string>) => (
     <Field label={label} className="w-40">
       {(control) => (
-        <Select {...control} value={filters[name]} onChange={(event) => onFilter({ ...filters, [name]: event.target.value })}>
+        <Select {...control} name={name} defaultValue={filters[name]}>
           <option value="">all</option>
-          {options.map(([value, words]) => (
-            <option key={value} value={value}>
-              {words}
-            </option>
-          ))}
+          <Options of={options} />
         </Select>
       )}
     </Field>
   )
   return (
-    <form role="search" aria-label="Filter the estimates" onSubmit={search} className="mb-5 flex flex-wrap items-end gap-x-5 gap-y-3 print:hidden">
+    <FilterForm label="Filter the estimates" filters={filters} onFilter={onFilter} className="mb-5 flex flex-wrap items-end gap-x-5 gap-y-3 print:hidden">
       <Field label="Words" className="w-64 max-w-full">
-        {(control) => <TextInput {...control} key={filters.text} name="text" type="search" defaultValue={filters.text} placeholder="theta · Math. Comp. · 10^19" />}
+        {(control) => <TextInput {...control} name="text" type="search" defaultValue={filters.text} placeholder="theta · Math. Comp. · 10^19" />}
       </Field>
-      {select('conditional', 'Conditional', [['no', 'no'], ['yes', 'yes']])}
-      {select('state', 'State', [['in-force', 'in force'], ['in-doubt', 'in doubt']])}
-      {select('use', 'Use', [['used', 'by signed claims']])}
-      <Button type="submit" className="min-h-[2.45rem]">
-        Find
-      </Button>
-      {filtered && (
-        <TextLink to={paths.estimates()} className="pb-2">
-          Clear
-        </TextLink>
-      )}
-    </form>
+      {select('conditional', 'Conditional', { no: 'no', yes: 'yes' })}
+      {select('state', 'State', { 'in-force': 'in force', 'in-doubt': 'in doubt' })}
+      {select('use', 'Use', { used: 'by signed claims' })}
+      <FilterButtons clearTo={filtered ? paths.estimates() : null} />
+    </FilterForm>
   )
 }

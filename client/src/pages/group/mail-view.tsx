@@ -1,6 +1,6 @@
 import { pageHead } from '../../../../shared/page-head.ts'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
-import { Field, Select } from '../../components/ui/field.tsx'
+import { Field, Options, Select } from '../../components/ui/field.tsx'
 import { Notice } from '../../components/ui/notice.tsx'
 import { MarginNote, Page } from '../../components/ui/page.tsx'
 import { Pagination } from '../../components/ui/pagination.tsx'
@@ -53,11 +53,7 @@ export function MailView({ group, list, error, refetching, onRetry, state, onSta
         {(control) => (
           <Select {...control} value={state} onChange={(event) => onState(event.target.value)}>
             <option value="">all</option>
-            {Object.entries(MAIL_STATES).map(([key, words]) => (
-              <option key={key} value={key}>
-                {words}
-              </option>
-            ))}
+            <Options of={MAIL_STATES} />
           </Select>
         )}
       </Field>

@@ -5,7 +5,7 @@ import { METHOD_WORDS } from '../../../../shared/words.ts'
 import { paths } from '../../app/paths.ts'
 import { Formula } from '../../components/formula/formula.tsx'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
-import { Choice, Field, Select } from '../../components/ui/field.tsx'
+import { Choice, Field, Options, Select } from '../../components/ui/field.tsx'
 import { ButtonLink, TextLink } from '../../components/ui/link.tsx'
 import { Page } from '../../components/ui/page.tsx'
 import { Pagination } from '../../components/ui/pagination.tsx'
@@ -59,11 +59,7 @@ export function RunsView({ list, error, refetching, onRetry, state, mine, onFilt
           {(control) => (
             <Select {...control} value={state} onChange={(event) => onFilter(event.target.value, mine)}>
               <option value="">any</option>
-              {Object.entries(RUN_STATE_WORDS).map(([key, word]) => (
-                <option key={key} value={key}>
-                  {word}
-                </option>
-              ))}
+              <Options of={RUN_STATE_WORDS} />
             </Select>
           )}
         </Field>

@@ -1,5 +1,5 @@
 import type { UseFormReturn } from 'react-hook-form'
-import { Field, FieldSet, Select, TextArea, TextInput } from '../../../components/ui/field.tsx'
+import { Field, FieldSet, Options, Select, TextArea, TextInput } from '../../../components/ui/field.tsx'
 import { SET_WORDS } from '../../constants/set-words.ts'
 import { SETS_WITH_K } from '../run-form.ts'
 import type { FieldMessages, RunFormValues } from '../run-form.ts'
@@ -41,11 +41,11 @@ export function DefinitionFields({ form, errors }: DefinitionFieldsProps) {
             {(control) => (
               <Select {...control} {...form.register('combine')}>
                 <option value="sum">sum of</option>
-                <option value="product">product of 1 +</option>
+                <option value="product">product of</option>
               </Select>
             )}
           </Field>
-          <Field label={<>Expression in <i>p</i></>} hint="Such as 1/(p*(p-1))" error={errors.expression}>
+          <Field label={<>Expression in <i>p</i></>} hint="A sum of 1/(p*(p-1)), a product of 1 - 1/p^2" error={errors.expression}>
             {(control) => <TextInput {...control} {...form.register('expression')} spellCheck={false} autoComplete="off" />}
           </Field>
         </div>
@@ -55,11 +55,7 @@ export function DefinitionFields({ form, errors }: DefinitionFieldsProps) {
           <Field label="Set of integers" error={errors.set}>
             {(control) => (
               <Select {...control} {...form.register('set')}>
-                {Object.entries(SET_WORDS).map(([kind, words]) => (
-                  <option key={kind} value={kind}>
-                    {words}
-                  </option>
-                ))}
+                <Options of={SET_WORDS} />
               </Select>
             )}
           </Field>
