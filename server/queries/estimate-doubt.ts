@@ -117,6 +117,7 @@ export const constantsToRunAgain = (groupId: string, estimate: string, claimIds:
      LEFT JOIN LATERAL (
        SELECT r.id, r.state FROM runs r WHERE r.constant_id = k.id AND r.group_id = $groupId AND r.purpose = 'run' AND r.created_at >= $since::timestamptz AND NOT $estimate = ANY (r.estimates)
        ORDER BY r.created_at DESC LIMIT 1) again ON true
+     WHERE k.id = ANY (ARRAY(SELECT constant_id FROM claims WHERE id = ANY ($claimIds::uuid[])))
      ORDER BY k.number`,
     { groupId, estimate, claimIds, since },
   )
