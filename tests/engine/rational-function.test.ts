@@ -42,7 +42,7 @@ describe('an expression in p', () => {
     const common = `(${nines} p^40 + 3*p^7 + ${nines} - 4)`
     const begun = performance.now()
     const { numerator, denominator } = parseRationalFunction(`(${common} (p^3 + ${nines}))/(${common} (2*p^9 - p + ${nines} - 7))`)
-    expect(performance.now() - begun).toBeLessThan(300)
+    expect(performance.now() - begun).toBeLessThan(1_000)
     expect(numerator).toEqual([BigInt(nines), 0n, 0n, 1n])
     expect(denominator).toEqual([BigInt(nines) - 7n, -1n, 0n, 0n, 0n, 0n, 0n, 0n, 0n, 2n])
   })

@@ -37,8 +37,8 @@ function unsound(name: string, what: string): EngineRefusal {
 
 /**
  * Reads parameters out of a certificate; what is not in range is refused, nothing is trusted beyond that. With s0 = 1 the
- * bounds at the edge need edge <= 1 and edgeReach < 1/2 (P-3; over a residue class they refuse more, P-9), with s0 > 1 edgeReach < s0 - 1; each panel's ellipse must lie in
- * Re t > 0.
+ * bounds at the edge need edge <= 1 and edgeReach < 1/2 (P-3; over a residue class they refuse more themselves, P-9), with s0 > 1
+ * edgeReach < s0 - 1; each panel's ellipse must lie in Re t > 0.
  */
 export function readParameters(given: Parameters, power: Rational): PanelsParameters {
   const whole = (name: keyof typeof WHOLE): number => {
