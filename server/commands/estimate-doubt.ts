@@ -1,5 +1,6 @@
 import type { Transaction } from 'sequelize'
 import type { Estimate } from '../../shared/engine/estimates/estimate.ts'
+import { printedText } from '../../shared/printed-text.ts'
 import type { LiftResult } from '../../shared/schemas/estimate.ts'
 import { recordAudit } from '../audit/record.ts'
 import { change, inTransaction, select } from '../db.ts'
@@ -57,7 +58,7 @@ export async function markInDoubt(member: SignedInMember, estimate: Estimate, { 
       reason,
       detail: { suspends: falling.map(numberOfClaim), holds: waiting.map(numberOfClaim), told },
     })
-    const because = `The estimate “${estimate.title}” is in doubt: ${reason}`
+    const because = `The estimate “${printedText(estimate.title)}” is in doubt: ${reason}`
     for (const { id } of falling) {
       await actWithin(transaction, member, id, 'suspend', {}, suspension(because, async ({ tell }, people) => {
         tell.told.push(...[...new Set(people)].map((person) => `estimate-in-doubt:${person}`))
@@ -87,7 +88,7 @@ async function tellAll(transaction: Transaction, member: SignedInMember, estimat
   for (const { number, ordinal, text, member_id: person, part } of await othersTouched(ids(falling), ids(waiting), transaction)) {
     note(person, { number: numberOfClaim({ number, ordinal }), constant: text }, part === 'referee' ? 'reviewed' : 'rests-on-it')
   }
-  const about = { by: member.name, group: member.groupName, estimate: estimate.id, title: estimate.title, reason }
+  const about = { by: member.name, group: member.groupName, estimate: estimate.id, title: printedText(estimate.title), reason }
   for (const [memberId, items] of letters) await queueMail(transaction, 'estimate-in-doubt', { memberId }, { ...about, items: [...items.values()] }, { groupId: member.groupId })
   return [...letters.keys()].map((person) => `estimate-in-doubt:${person}`)
 }
@@ -121,7 +122,7 @@ export async function liftDoubt(member: SignedInMember, estimate: Estimate, { re
       detail: { reinstates: chosen.map(numberOfClaim) },
     })
     const result: Omit<LiftResult, 'now'> = { reinstated: [], kept: [] }
-    const because = `The doubt about the estimate “${estimate.title}” is lifted: ${reason}`
+    const because = `The doubt about the estimate “${printedText(estimate.title)}” is lifted: ${reason}`
     for (const claim of chosen) {
       const refusal = await refusalOf(actWithin(transaction, member, claim.id, 'reinstate', {}, reinstatement(because, { estimate: estimate.id })))
       if (refusal) result.kept.push({ claimNumber: numberOfClaim(claim), reason: refusal })

@@ -1,3 +1,4 @@
+import { printedText } from '../../shared/printed-text.ts'
 import { estimateById } from '../../shared/engine/estimates/library.ts'
 import type { Desk } from '../../shared/schemas/claim.ts'
 import type { ClaimRow } from '../queries/claim.ts'
@@ -28,7 +29,7 @@ export function deskText({ kind, count, who }: Pick<WaitingRow, 'kind' | 'count'
     case 'conflict':
       return 'Settle a conflict: two enclosures do not meet'
     case 'decide':
-      return who === null ? 'Reinstate or withdraw: it is suspended' : `Suspended: the estimate “${estimateById(who)?.title ?? who}” is in doubt`
+      return who === null ? 'Reinstate or withdraw: it is suspended' : `Suspended: the estimate “${printedText(estimateById(who)?.title ?? who)}” is in doubt`
   }
 }
 

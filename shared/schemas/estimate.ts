@@ -40,7 +40,7 @@ export const restingClaim = z.object({
   id,
   number: z.string(),
   kind: claimKind,
-  /** The constant in words. */
+  /** The constant in words; for an order both, as "… < …". */
   text: z.string(),
   state: claimState,
   author: personRef,

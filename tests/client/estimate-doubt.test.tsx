@@ -37,7 +37,7 @@ function show(doubt: EstimateDoubt, acts: Partial<Parameters<typeof DoubtWork>[0
 describe('before an estimate is marked', () => {
   test('all that falls is shown, an order with what it rests on, and what is held', () => {
     show(before)
-    expect(screen.getByText(/^2 claims of your group are suspended, 1 in review is held back/)).toBeInTheDocument()
+    expect(screen.getByText(/^Marking it suspends 2 claims of your group and holds back 1 more on the way to the register/)).toBeInTheDocument()
     const falls = screen.getByRole('table', { name: 'In force: they fall' })
     expect(within(falls).getAllByRole('link').map(({ textContent }) => textContent)).toEqual(['MST-0001/1', 'MST-0001/2'])
     expect(within(falls).getByText('rests on it through MST-0001/1')).toBeInTheDocument()
@@ -69,7 +69,7 @@ describe('before an estimate is marked', () => {
 
   test('where nothing rests on it, it says what marking is still for', () => {
     expect(markTells({ ...before, claims: [] })).toMatch(/keeps new runs of your group from using it/)
-    expect(markTells({ ...before, claims: [claim('MST-0002/1', 'waits')] })).toMatch(/^1 claim in review is held back/)
+    expect(markTells({ ...before, claims: [claim('MST-0002/1', 'waits')] })).toMatch(/^Marking it holds back 1 claim of your group/)
   })
 })
 

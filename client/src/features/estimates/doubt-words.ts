@@ -21,8 +21,8 @@ export function markTells(doubt: EstimateDoubt): string {
   const [falls, waits] = [ofFate(doubt, 'falls').length, ofFate(doubt, 'waits').length]
   if (falls + waits === 0) return 'No claim of your group in force or in review rests on it. Marking it keeps new runs of your group from using it.'
   const parts = [
-    ...(falls > 0 ? [`${claimCount(falls)} of your group ${falls === 1 ? 'is' : 'are'} suspended`] : []),
-    ...(waits > 0 ? [`${falls > 0 ? waits : claimCount(waits)} in review ${waits === 1 ? 'is' : 'are'} held back`] : []),
+    ...(falls > 0 ? [`suspends ${claimCount(falls)} of your group`] : []),
+    ...(waits > 0 ? [`holds back ${falls > 0 ? `${waits} more` : `${claimCount(waits)} of your group`} on the way to the register`] : []),
   ]
-  return `${parts.join(', ')}; everybody concerned is told in one mail, and new runs of your group do without the estimate.`
+  return `Marking it ${parts.join(' and ')}; everybody concerned is told in one mail, and new runs of your group do without the estimate.`
 }

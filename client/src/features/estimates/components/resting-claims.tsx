@@ -39,9 +39,8 @@ function ClaimTable({ caption, claims }: { caption: string; claims: RestingClaim
           key: 'about',
           header: 'About',
           plain: true,
-          cell: ({ kind, text, through }) => (
+          cell: ({ text, through }) => (
             <>
-              {kind === 'order' && 'an order: '}
               {text}
               {through.length > 0 && <span className="block text-[0.92rem] text-soft">rests on it through {through.join(' and ')}</span>}
             </>
