@@ -24,9 +24,14 @@ export const estimateQuery = (id: string) =>
 
 const addressOf = (id: string): string => `/estimates/${encodeURIComponent(id)}/doubt`
 
-/** All that rests on an estimate in the lead's group, as it is at this moment. */
+/** All that rests on an estimate in the lead's group, as it is at this moment. While runs without it work it is read again every few seconds. */
 export const doubtQuery = (id: string) =>
-  queryOptions({ queryKey: estimateKeys.doubt(id), queryFn: ({ signal }) => api.get<EstimateDoubt>(addressOf(id), { signal }), staleTime: 0 })
+  queryOptions({
+    queryKey: estimateKeys.doubt(id),
+    queryFn: ({ signal }) => api.get<EstimateDoubt>(addressOf(id), { signal }),
+    staleTime: 0,
+    refetchInterval: (query) => (query.state.data?.again.some(({ run }) => run?.state === 'queued' || run?.state === 'running') ? 2_000 : false),
+  })
 
 export type MarkInput = z.input<typeof doubtInput>
 export type LiftInput = z.input<typeof liftInput>
