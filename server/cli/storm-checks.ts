@@ -92,10 +92,12 @@ function confirmationsAt(life: readonly Entry[], digest: string): number {
   return [...words.values()].filter((word) => word.act === 'confirm' && word.digest === digest).length
 }
 
-/** Every mail that the trail tells of is in the outbox once, and no other about a claim. */
+/** Every mail that the trail tells of is in the outbox once, and no other about a claim or an estimate. */
 async function faultsOfMails(entries: readonly Entry[]): Promise<string[]> {
   const balance = new Map<string, number>()
   for (const key of entries.flatMap(({ told }) => told ?? [])) balance.set(key, (balance.get(key) ?? 0) + 1)
+  const ofDoubts = await select<{ key: string }>(`SELECT jsonb_array_elements_text(detail->'told') AS key FROM audit_entries WHERE act = 'estimate.doubt'`)
+  for (const { key } of ofDoubts) balance.set(key, (balance.get(key) ?? 0) + 1)
   const mails = await select<{ key: string }>(`SELECT template || ':' || member_id AS key FROM outbox WHERE template NOT IN ('invitation', 'password-reset') AND resent_from IS NULL AND dedupe_key IS NULL`)
   for (const { key } of mails) balance.set(key, (balance.get(key) ?? 0) - 1)
   return [...balance].filter(([, count]) => count !== 0).map(([key, count]) => (count > 0 ? `${count} mails missing: ${key}` : `${-count} mails too many: ${key}`))
@@ -116,6 +118,8 @@ async function faultsOfRegister(): Promise<string[]> {
     ['a computed claim was endorsed without the recheck that its group needs', `SELECT c.id FROM claims c JOIN groups g ON g.id = c.group_id WHERE g.recheck_needed AND c.kind = 'enclosure' AND c.state IN ('endorsed', 'signed', 'superseded', 'suspended')
       AND NOT EXISTS (SELECT 1 FROM runs r JOIN runs own ON own.id = c.run_id WHERE r.claim_id = c.id AND r.state = 'done' AND (r.method <> own.method OR r.arithmetic <> own.arithmetic)
         AND (r.outcome->'enclosure'->>'lo')::numeric <= c.hi AND (r.outcome->'enclosure'->>'hi')::numeric >= c.lo)`],
+    ['a claim is in force on an estimate that its group has in doubt', `SELECT c.id FROM claims c JOIN claim_estimates u ON u.claim_id = c.id JOIN estimate_doubts d ON d.estimate = u.estimate AND d.group_id = c.group_id
+      WHERE d.lifted_at IS NULL AND c.state IN ('signed', 'superseded')`],
     ['numbers of a constant have a gap', `SELECT constant_id AS id FROM claims WHERE ordinal IS NOT NULL GROUP BY constant_id HAVING max(ordinal) <> count(*)`],
     ['evidence belongs to no upload in the trail', `SELECT e.id FROM evidence e WHERE NOT EXISTS (SELECT 1 FROM audit_entries a WHERE a.act = 'claim.attach' AND a.subject_id = e.claim_id::text AND a.detail->>'evidence' = e.id::text)`],
   ]

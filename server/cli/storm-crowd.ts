@@ -2,6 +2,7 @@ import { setTimeout as pause } from 'node:timers/promises'
 import bcrypt from 'bcryptjs'
 import { PERSON_ACTS, type PersonAct } from '../../shared/claim-life.ts'
 import { ROLES, type Role } from '../../shared/permissions.ts'
+import type { EstimateDoubt } from '../../shared/schemas/estimate.ts'
 import type { Claim, Desk } from '../../shared/schemas/claim.ts'
 import { change } from '../db.ts'
 import { dice } from './dice.ts'
@@ -97,11 +98,26 @@ export async function live(world: World, person: Person, over: AbortSignal): Pro
   while (!over.aborted) {
     if (person.cookie === '') await send(world, person, 'sign in', 'POST', '/session', { email: person.email, password: PASSWORD })
     const whim = world.roll(20)
-    if (whim < 3) await beginSomething(world, person)
+    if (whim === 0 && person.roles.includes('lead')) await doubt(world, person)
+    else if (whim < 3) await beginSomething(world, person)
     else if (whim < 5) await lookAround(world, person)
     else await actOn(world, person, whim < 9)
     await pause(world.roll(60))
   }
+}
+
+/** Estimates that the storm's partial sums rest on. */
+const ESTIMATES = ['theta-buthe-2018-b', 'theta-johnston-2022']
+
+/** Marks an estimate as in doubt, or lifts the doubt and reinstates what it suspended; mostly the latter, so that something stays in force. */
+async function doubt(world: World, person: Person): Promise<void> {
+  const path = `/estimates/${oneOf(world, ESTIMATES)}/doubt`
+  const { status, body } = await send(world, person, 'look at a doubt', 'GET', path)
+  if (status !== 200) return
+  const { doubt: open, digest, claims } = body as EstimateDoubt
+  const reason = `because of ${world.roll(1000)}`
+  if (open) await send(world, person, 'lift a doubt', 'POST', `${path}/lift`, { reason, reinstate: claims.filter(({ fate }) => fate === 'fallen' && world.roll(4) > 0).map(({ id }) => id) })
+  else if (world.roll(2) === 0) await send(world, person, 'mark in doubt', 'POST', path, { reason, digest })
 }
 
 async function lookAround(world: World, person: Person): Promise<void> {
@@ -118,7 +134,8 @@ async function beginSomething(world: World, person: Person): Promise<void> {
     case 0: {
       const exclude = oneOf(world, [[], [2], [3], [5]])
       const definition = { type: 'series', set: { kind: 'primes', exclude }, weight: { power: '2', logPower: '1' } }
-      await send(world, person, 'start a run', 'POST', '/runs', { definition, goal: { digits: 4 + roll(8) }, method: 'transform', arithmetic: oneOf(world, ['ball', 'mpfr']) })
+      const how = roll(2) === 0 ? { goal: { digits: 4 + roll(8) }, method: 'transform', arithmetic: oneOf(world, ['ball', 'mpfr']) } : { goal: { cutoff: String(2_000 + 1_000 * roll(9)) }, method: 'partial-sum' }
+      await send(world, person, 'start a run', 'POST', '/runs', { definition, ...how })
       return
     }
     case 1: {

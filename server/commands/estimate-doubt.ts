@@ -60,9 +60,8 @@ export async function markInDoubt(member: SignedInMember, estimate: Estimate, { 
     })
     const because = `The estimate “${printedText(estimate.title)}” is in doubt: ${reason}`
     for (const { id } of falling) {
-      await actWithin(transaction, member, id, 'suspend', {}, suspension(because, async ({ tell }, people) => {
-        tell.told.push(...[...new Set(people)].map((person) => `estimate-in-doubt:${person}`))
-      }, { estimate: estimate.id }))
+      // All whom it concerns have been told of all their claims together.
+      await actWithin(transaction, member, id, 'suspend', {}, suspension(because, async () => {}, { estimate: estimate.id }))
     }
     await change(
       'INSERT INTO estimate_doubt_claims (doubt_id, claim_id, since) SELECT $doubtId, id, since FROM claims WHERE id = ANY ($claims::uuid[])',

@@ -57,7 +57,7 @@ export interface RestingRow {
   author_id: string
   author_name: string
   /** For an order: the claims on the estimate whose enclosures it compares. */
-  through: { number: number; ordinal: number }[]
+  through: { id: string; number: number; ordinal: number }[]
   /** Whether a doubt has suspended it, and it has been suspended ever since. */
   by_doubt: boolean
 }
@@ -72,7 +72,7 @@ export const claimsOnEstimate = (groupId: string, estimate: string, transaction?
        c.state = 'suspended' AND EXISTS (SELECT 1 FROM estimate_doubt_claims f WHERE f.claim_id = c.id AND f.since = c.since) AS by_doubt
      FROM claims c JOIN constants k ON k.id = c.constant_id LEFT JOIN constants g ON g.id = c.other_constant_id JOIN members m ON m.id = c.author_id
      CROSS JOIN LATERAL (
-       SELECT count(*) AS uses, coalesce(jsonb_agg(DISTINCT jsonb_build_object('number', bk.number, 'ordinal', b.ordinal)) FILTER (WHERE b.id IS NOT NULL), '[]') AS through
+       SELECT count(*) AS uses, coalesce(jsonb_agg(DISTINCT jsonb_build_object('id', b.id, 'number', bk.number, 'ordinal', b.ordinal)) FILTER (WHERE b.id IS NOT NULL), '[]') AS through
        FROM claim_estimates used LEFT JOIN claims b ON b.id = used.through LEFT JOIN constants bk ON bk.id = b.constant_id
        WHERE used.claim_id = c.id AND used.estimate = $estimate) u
      WHERE c.group_id = $groupId AND c.state NOT IN ('draft', 'withdrawn') AND u.uses > 0
@@ -101,7 +101,7 @@ export interface AgainRow {
   run_state: 'queued' | 'running' | 'done' | 'failed' | 'stopped' | null
 }
 
-/** For each constant with one of these enclosures: the narrowest of them, to be computed again without the estimate. */
+/** For each constant with one of these enclosures: the narrowest of them that a run has computed, to be computed again without the estimate. */
 export const constantsToRunAgain = (groupId: string, estimate: string, claimIds: readonly string[], since: Date | null): Promise<AgainRow[]> =>
   select(
     `SELECT k.id AS constant_id, k.number, k.definition, k.latex, k.text, k.aliases, narrowest.goal, narrowest.digits,

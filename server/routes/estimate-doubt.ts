@@ -25,7 +25,7 @@ function entryOf(id: string): Estimate {
 
 async function shown(groupId: string, entry: Estimate) {
   const [doubt, claims] = [await openDoubt(groupId, entry.id), await claimsOnEstimate(groupId, entry.id)]
-  const touched = claims.filter(({ state }) => state === 'signed' || state === 'superseded' || state === 'suspended').map(({ id }) => id)
+  const touched = claims.flatMap(({ id, through }) => [id, ...through.map((claim) => claim.id)])
   return presentEstimateDoubt(entry, doubt, claims, await constantsToRunAgain(groupId, entry.id, touched, doubt?.marked_at ?? null))
 }
 

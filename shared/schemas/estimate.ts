@@ -61,7 +61,7 @@ export const estimateDoubt = z.object({
   /** Changes with the list of claims and with what is in it. */
   digest,
   claims: z.array(restingClaim),
-  /** Constants whose enclosures fall or have fallen: what to compute again, and what there is already. */
+  /** Constants with an enclosure that rests on it, of another group too where an own order does: what to compute again, and what there is already. */
   again: z.array(
     z.object({
       constant: constantNumber,

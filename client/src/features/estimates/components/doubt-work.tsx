@@ -51,7 +51,7 @@ export function DoubtWork({ doubt, onMark, onLift, onRunAgain }: DoubtWorkProps)
           </Section>
           {doubt.again.length > 0 && (
             <Section title="Run again without it" className="print:hidden">
-              <p className="mb-3 max-w-prose">Each run aims at what the fallen enclosure had, by the quickest method that gets there without the estimate.</p>
+              <p className="mb-3 max-w-prose">Each run aims at what the enclosure on the estimate had, by the quickest method that gets there without the estimate.</p>
               <RunAgain again={doubt.again} onStart={onRunAgain} />
             </Section>
           )}

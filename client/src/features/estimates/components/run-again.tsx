@@ -19,7 +19,7 @@ interface RunAgainProps {
   onStart: (again: Again) => Promise<unknown>
 }
 
-/** The constants whose enclosures have fallen: what stands without the estimate, and a run without it by whatever method is quickest. */
+/** The constants with an enclosure on the estimate: what stands without the estimate, and a run without it by whatever method is quickest. */
 export function RunAgain({ again, onStart }: RunAgainProps) {
   const [starting, setStarting] = useState<string | null>(null)
   const [refused, setRefused] = useState<{ constant: string; detail: string } | null>(null)
