@@ -26,8 +26,7 @@ export async function claimIdFor(reference: string): Promise<string> {
 
 /** A claim by id or number; undefined where there is none that this reader may read. */
 async function openClaim(reader: Reader, reference: string): Promise<ReadClaim | undefined> {
-  const id = await claimIdOf(reference)
-  const row = id === undefined ? undefined : await findClaim(id)
+  const row = await findClaim(reference)
   if (!row) return undefined
   const standing = reader && (await standingOf(reader, { id: row.id, kind: row.kind, groupId: row.group_id, authorId: row.author_id }))
   const view = viewOf({ signedAt: row.signed_at, groupPublic: row.group_public }, standing)

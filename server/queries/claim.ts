@@ -131,14 +131,15 @@ export interface ClaimDetailRow extends ClaimRow {
 }
 type ClaimRunRow = Pick<Outcome, 'method' | 'arithmetic'>
 
-/** One claim with everything that stands in its own row, whoever may read it: the policy decides on the row. */
-export async function findClaim(id: string): Promise<ClaimDetailRow | undefined> {
+/** One claim, by its id or its number in an address, with everything that stands in its own row, whoever may read it: the policy decides on the row. */
+export async function findClaim(reference: string): Promise<ClaimDetailRow | undefined> {
+  const numbered = parseClaimNumber(reference)
   const [row] = await selectByKey<ClaimDetailRow>(
     `SELECT ${COLUMNS}, c.definition AS full_definition, g.public AS group_public, cl.version, cl.remark, cl.source, cl.basis, cl.run_id, r.method, r.arithmetic, r.outcome, cl.digest, cl.certificate_digest,
        CASE WHEN cl.signed_at IS NOT NULL THEN cl.certificate::jsonb->'signature'->>'keyId' END AS key_id,
        n.ordinal AS superseder_ordinal, (SELECT max(w.ordinal) FROM claims w WHERE w.superseded_by = cl.id AND w.state = 'superseded') AS superseded_ordinal, s.name AS signer_name
-     ${FROM} LEFT JOIN runs r ON r.id = cl.run_id LEFT JOIN claims n ON n.id = cl.superseded_by AND cl.state = 'superseded' LEFT JOIN members s ON s.id = cl.signed_by WHERE cl.id = $id`,
-    { id },
+     ${FROM} LEFT JOIN runs r ON r.id = cl.run_id LEFT JOIN claims n ON n.id = cl.superseded_by AND cl.state = 'superseded' LEFT JOIN members s ON s.id = cl.signed_by WHERE ${numbered ? 'c.number = $number AND cl.ordinal = $ordinal' : 'cl.id = $id'}`,
+    numbered ? { ...numbered } : { id: reference },
   )
   return row
 }

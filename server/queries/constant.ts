@@ -158,7 +158,7 @@ const FEW_FROM_DECIMALS = 3
 /** Most that is counted of a filtered list, so that counting never costs more than listing. */
 const MOST_COUNTED = 300
 
-const countSql = (where: readonly string[]): string => `SELECT count(*)::int FROM (SELECT 1 FROM register_entries e WHERE ${where.join(' AND ')} LIMIT ${MOST_COUNTED + 1}) AS counted`
+const countSql = (where: readonly string[]): string => `SELECT count(*)::int FROM (SELECT 1 FROM register_entries e WHERE ${where.join(' AND ')} ORDER BY e.number LIMIT ${MOST_COUNTED + 1}) AS counted`
 
 /** The whole register: to members every constant is known, and numbers have no gaps. */
 const countAllSql = (reader: Reader): string =>

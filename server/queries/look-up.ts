@@ -3,7 +3,7 @@ import { audienceOf, type Reader } from './audience.ts'
 
 /** How many neighbours on each side, and how many enclosures around the digits, are looked at. */
 const NEIGHBOURS = 25
-const AROUND = 75
+const AROUND = 40
 
 /** Constants whose best enclosures meet an interval, as a condition that the index on ranges serves. */
 export const MEETS = (lo: string, hi: string): string => `best_lo IS NOT NULL AND numrange(best_lo, best_hi, '[]') && numrange(${lo}::numeric, ${hi}::numeric, '[]')`

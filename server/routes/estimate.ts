@@ -16,14 +16,14 @@ const NEWEST_LISTED = 5
 const one = { params: z.object({ id: z.string().max(200) }) }
 
 estimate.get('/', async (req, res) => {
-  const uses = await usesOfEstimates(req.reader, ESTIMATES.map(({ id }) => id), NEWEST_LISTED)
-  const doubts = await doubtsOfEstimates(req.reader, ESTIMATES.map(({ id }) => id))
+  const ids = ESTIMATES.map(({ id }) => id)
+  const [uses, doubts] = await Promise.all([usesOfEstimates(req.reader, ids, NEWEST_LISTED), doubtsOfEstimates(req.reader, ids)])
   res.json({ items: ESTIMATES.map((entry) => presentEstimate(entry, uses, doubts, req.reader)) })
 })
 
 estimate.get('/:id', validate(one), async (req: Validated<typeof one>, res) => {
   const entry = estimateById(req.input.id)
   if (!entry) throw notFound('estimate')
-  const [uses, doubts] = [await usesOfEstimates(req.reader, [entry.id], 500), await doubtsOfEstimates(req.reader, [entry.id])]
+  const [uses, doubts] = await Promise.all([usesOfEstimates(req.reader, [entry.id], 500), doubtsOfEstimates(req.reader, [entry.id])])
   res.json(presentEstimate(entry, uses, doubts, req.reader))
 })
