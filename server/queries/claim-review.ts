@@ -2,6 +2,7 @@ import type { Transaction } from 'sequelize'
 import type { Facts, Standing } from '../../shared/claim-life.ts'
 import { kindOf } from '../claim-kinds/kinds.ts'
 import { selectByKey, selectOne } from '../db.ts'
+import { notFound } from '../errors.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 
 /** What the questions of this file need to know of a claim. */
@@ -82,7 +83,7 @@ const FACTS = `
 /** The facts of a claim's review, as they are for this member (or for nobody in particular). */
 export async function factsOf(claim: ClaimRef, memberId: string | null, subject: ActSubject = {}, transaction?: Transaction): Promise<Facts> {
   const [row] = await selectByKey<FactsRow>(FACTS, { claimId: claim.id, memberId }, transaction)
-  if (!row) throw new Error('the claim is gone while it is looked at')
+  if (!row) throw notFound('claim')
   const objection = subject.objectionId === undefined ? undefined : await objectionFacts(claim.id, subject.objectionId, memberId, transaction)
   const waits = subject.assignmentId === undefined ? undefined : await assignmentWaits(claim.id, subject.assignmentId, transaction)
   return {

@@ -10,8 +10,8 @@ export const OPTIONAL_MAILS: Record<keyof MailPreferences, string> = {
 
 /** Mails that ask somebody to act, by the role that is asked. */
 const ASKING_MAILS: [role: Role, mails: string[]][] = [
-  ['researcher', ['A referee objects to your claim', 'Your claim was returned to you']],
-  ['referee', ['You are asked to referee a claim', 'An author has answered your objection']],
+  ['researcher', ['A referee objects to your claim', 'Your claim was returned to you', 'An estimate that your claims rest on is in doubt']],
+  ['referee', ['You are asked to referee a claim', 'An author has answered your objection', 'An estimate that a claim in your hands rests on is in doubt']],
   ['lead', ['A claim waits for referees', 'A referee has declined', 'A claim is endorsed and waits for your signature']],
 ]
 

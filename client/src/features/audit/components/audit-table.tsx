@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react'
 import type { AuditEntry } from '../../../../../shared/schemas/group.ts'
 import { paths } from '../../../app/paths.ts'
+import { Printed } from '../../../components/formula/printed.tsx'
 import { TextLink } from '../../../components/ui/link.tsx'
 import { Facts } from '../../../components/ui/page.tsx'
 import { Table } from '../../../components/ui/table.tsx'
@@ -47,6 +48,7 @@ function Subject({ kind, id, label }: AuditEntry['subject']): ReactNode {
   if (kind === 'claim') return <TextLink to={paths.claim(/^MST-\d+\/\d+$/.test(label) ? label : id)}>{label || 'a draft'}</TextLink>
   if (kind === 'constant') return <TextLink to={paths.constant(/^MST-\d+$/.test(label) ? label : id)}>{label}</TextLink>
   if (kind === 'run') return <TextLink to={paths.run(id)}>{label || 'a run'}</TextLink>
+  if (kind === 'estimate') return <TextLink to={paths.estimate(id)}><Printed text={label} /></TextLink>
   return <span className="break-words">{label}</span>
 }
 
