@@ -39,7 +39,8 @@ export function planWithout(plan: Plan, definition: Definition, without: readonl
     estimates: left,
     modulus,
     radiusAt(cutoff) {
-      const [rest, best] = [left, all].map((estimates) => tailWidth(arithmetic, weight, cutoff, modulus, estimates))
+      const rest = tailWidth(arithmetic, weight, cutoff, modulus, left)
+      const best = rest && tailWidth(arithmetic, weight, cutoff, modulus, all)
       if (!rest || !best || best.num === 0n) return Infinity
       return plan.radiusAt(cutoff) * approximate({ num: rest.num * best.den, den: rest.den * best.num })
     },
