@@ -67,6 +67,20 @@ describe('before an estimate is marked', () => {
     expect(screen.getByLabelText('Reason')).toHaveValue('a gap')
   })
 
+  test('of another lead who was quicker one is told, though the form is gone by then', async () => {
+    const onMark = () => {
+      rerender(<MemoryRouter><DoubtWork doubt={after} onMark={onMark} onLift={never} onRunAgain={never} /></MemoryRouter>)
+      return Promise.reject(new ApiError({ status: 409, code: 'in_doubt_already', detail: 'Maren Holt has marked this estimate already.', fields: undefined, requestId: undefined }))
+    }
+    const never = () => Promise.reject(new Error('not asked for'))
+    const { rerender } = render(<MemoryRouter><DoubtWork doubt={before} onMark={onMark} onLift={never} onRunAgain={never} /></MemoryRouter>)
+    await userEvent.click(screen.getByRole('button', { name: 'Mark in doubt …' }))
+    await userEvent.type(screen.getByLabelText('Reason'), 'a gap')
+    await userEvent.click(screen.getByRole('button', { name: /^Mark in doubt and/ }))
+    expect(await screen.findByText(/Maren Holt has marked this estimate already/)).toBeInTheDocument()
+    expect(screen.getByRole('heading', { name: 'What has fallen with it' })).toBeInTheDocument()
+  })
+
   test('where nothing rests on it, it says what marking is still for', () => {
     expect(markTells({ ...before, claims: [] })).toMatch(/keeps new runs of your group from using it/)
     expect(markTells({ ...before, claims: [claim('MST-0002/1', 'waits')] })).toMatch(/^Marking it holds back 1 claim of your group/)

@@ -53,9 +53,9 @@ describe.each(Object.entries(SETS))('over %s', (_name, definition) => {
 // Of a class only estimates from 8 * 10^9 on are left then, which takes too long for a test.
 test.each(['primes', 'primes, steeper', 'products of two primes'])('a goal over %s is still reached, from a later cut-off if need be', async (name) => {
   const definition = SETS[name]!
-    const used = (await sumOf(definition, [])).estimates.map(({ id }) => id)
-    const outcome = await sumOf(definition, used, { digits: 2 })
-    expect(compare(number(outcome.radius), number('0.005'))).toBeLessThanOrEqual(0)
+  const used = (await sumOf(definition, [])).estimates.map(({ id }) => id)
+  const outcome = await sumOf(definition, used, { digits: 2 })
+  expect(compare(number(outcome.radius), number('0.005'))).toBeLessThanOrEqual(0)
 })
 
 test('where estimates are left that begin beyond the first marks, the curve begins there', async () => {

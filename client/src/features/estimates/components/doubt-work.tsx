@@ -1,13 +1,18 @@
 import { useState } from 'react'
 import type { EstimateDoubt, LiftResult } from '../../../../../shared/schemas/estimate.ts'
 import { Notice } from '../../../components/ui/notice.tsx'
+import type { NoticeTone } from '../../../components/ui/notice.tsx'
 import { Section } from '../../../components/ui/page.tsx'
+import { ApiError } from '../../../lib/errors.ts'
 import { claimCount, ofFate } from '../doubt-words.ts'
 import type { LiftInput } from '../queries.ts'
 import { LiftDoubt } from './lift-doubt.tsx'
 import { MarkInDoubt } from './mark-in-doubt.tsx'
 import { RestingClaims } from './resting-claims.tsx'
 import { RunAgain } from './run-again.tsx'
+
+/** Refusals that say another lead was quicker. */
+const TOO_LATE = new Set(['in_doubt_already', 'not_in_doubt'])
 
 interface DoubtWorkProps {
   doubt: EstimateDoubt
@@ -18,15 +23,21 @@ interface DoubtWorkProps {
 
 /** What a lead does about an estimate: sees what rests on it, marks it, has its constants run again, and lifts the doubt. */
 export function DoubtWork({ doubt, onMark, onLift, onRunAgain }: DoubtWorkProps) {
-  const [done, setDone] = useState<{ title: string; more: string[] } | null>(null)
+  const [said, setSaid] = useState<{ tone: NoticeTone; title: string; more: string[] } | null>(null)
+  // The form goes away where another lead was quicker, so it is told here.
+  const toldIfLate = (error: unknown): never => {
+    if (error instanceof ApiError && TOO_LATE.has(error.code)) setSaid({ tone: 'undecided', title: 'Nothing was changed.', more: [error.message] })
+    throw error
+  }
   const mark = async (reason: string) => {
-    const after = await onMark(reason)
+    const after = await onMark(reason).catch(toldIfLate)
     const fallen = ofFate(after, 'fallen').length
-    setDone({ title: 'Marked in doubt.', more: [fallen > 0 ? `${claimCount(fallen)} ${fallen === 1 ? 'is' : 'are'} suspended, and those concerned are told by mail.` : 'No claim rested on it.'] })
+    setSaid({ tone: 'done', title: 'Marked in doubt.', more: [fallen > 0 ? `${claimCount(fallen)} ${fallen === 1 ? 'is' : 'are'} suspended, and those concerned are told by mail.` : 'No claim rested on it.'] })
   }
   const lift = async (input: LiftInput) => {
-    const { reinstated, kept } = await onLift(input)
-    setDone({
+    const { reinstated, kept } = await onLift(input).catch(toldIfLate)
+    setSaid({
+      tone: 'done',
       title: 'The doubt is lifted.',
       more: [...(reinstated.length > 0 ? [`In force again: ${reinstated.join(', ')}.`] : []), ...kept.map(({ claimNumber, reason }) => `${claimNumber} stays suspended: ${reason}`)],
     })
@@ -34,9 +45,9 @@ export function DoubtWork({ doubt, onMark, onLift, onRunAgain }: DoubtWorkProps)
   return (
     <>
       <div role="status">
-        {done && (
-          <Notice tone="done" title={done.title} className="mt-8">
-            {done.more.join(' ')}
+        {said && (
+          <Notice tone={said.tone} title={said.title} className="mt-8">
+            {said.more.join(' ')}
           </Notice>
         )}
       </div>
