@@ -47,7 +47,7 @@ function ClaimTable({ caption, claims }: { caption: string; claims: RestingClaim
           ),
         },
         { key: 'state', header: 'State', className: 'md:whitespace-nowrap', cell: ({ state }) => <StateMark state={state} /> },
-        { key: 'author', header: 'Author', cell: ({ author }) => author.name },
+        { key: 'author', header: 'Author', className: 'lg:whitespace-nowrap', cell: ({ author }) => author.name },
       ]}
     />
   )

@@ -51,6 +51,7 @@ export function RunAgain({ again, onStart }: RunAgainProps) {
           {
             key: 'other',
             header: 'In force without it',
+            className: 'lg:whitespace-nowrap',
             cell: ({ other }) =>
               other ? (
                 <>
@@ -60,7 +61,7 @@ export function RunAgain({ again, onStart }: RunAgainProps) {
                 'nothing'
               ),
           },
-          { key: 'goal', header: 'Goal', cell: ({ goal }) => goalText(goal) },
+          { key: 'goal', header: 'Goal', className: 'lg:whitespace-nowrap', cell: ({ goal }) => goalText(goal) },
           {
             key: 'run',
             header: 'Run without it',
