@@ -71,6 +71,14 @@ describe('partial sums over smooth integers', () => {
     expect(partialSum.forecast(definition, { digits: 8 }, 'ball', 1)).toMatchObject({ possible: true })
     expect(partialSum.forecast(definition, { digits: 60 }, 'ball', 1)).toMatchObject({ possible: false })
     expect(partialSum.forecast(series(997, [], '1', '1'), { cutoff: '10000000' }, 'ball', 1)).toMatchObject({ possible: false })
+    // Narrower than a double with 64 bits after the point can tell from 0.
+    expect(partialSum.forecast(series(5, [], '2', '1'), { width: '1e-21' }, 'ball', 1)).toMatchObject({ possible: true })
+  })
+
+  it('say so at once, whatever the power and however many primes', () => {
+    const began = performance.now()
+    expect(partialSum.forecast(series(997, [2, 3, 5, 7, 11, 13], '60', '-60'), { digits: 1000 }, 'ball', 1)).toMatchObject({ possible: false })
+    expect(performance.now() - began).toBeLessThan(2_000)
   })
 
   it('refuse what they cannot, and name it', async () => {

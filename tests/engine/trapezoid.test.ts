@@ -159,3 +159,9 @@ describe('identities between sums', () => {
     expect(close(total, classes[1].lo)).toBe(true)
   })
 })
+
+describe('the choice of nodes', () => {
+  it('ends where the weight hardly decays and its bound has a power that no double holds', async () => {
+    await expect(prepare(request([series({ kind: 'almost-primes', k: 60, exclude: none }, '1', '1/1000')], 18))).rejects.toMatchObject({ code: 'too_slow' })
+  })
+})

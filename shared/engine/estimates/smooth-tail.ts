@@ -77,11 +77,16 @@ export function chooseDecay(weights: readonly { power: number; logPower: number 
 export function smoothTailRadius({ power, logPower }: { power: number; logPower: number }, x: number, primes: readonly number[]): number {
   const logX = steadyLog(x)
   const logs = primes.map(steadyLog)
-  let least = Infinity
-  for (let d = 1 / DECAY_STEPS; d < power; d += 1 / DECAY_STEPS) {
-    let exponent = -d * logX - logPower * steadyLog(logX)
-    for (const log of logs) exponent -= steadyLog(1 - steadyExp((d - power) * log))
-    least = Math.min(least, steadyExp(exponent))
+  const exponentAt = (steps: number): number => {
+    const d = steps / DECAY_STEPS
+    return logs.reduce((exponent, log) => exponent - steadyLog(1 - steadyExp((d - power) * log)), -d * logX - logPower * steadyLog(logX))
   }
-  return (least / 4) * Math.min(1, Math.abs(logPower) / logX) + 1e-30
+  // A convex function of d: the least value is where it begins to grow.
+  let [least, most] = [1, Math.max(1, Math.ceil(power * DECAY_STEPS) - 1)]
+  while (least < most) {
+    const middle = Math.floor((least + most) / 2)
+    if (exponentAt(middle) <= exponentAt(middle + 1)) most = middle
+    else least = middle + 1
+  }
+  return (steadyExp(exponentAt(least)) / 4) * Math.min(1, Math.abs(logPower) / logX) + 1e-30
 }

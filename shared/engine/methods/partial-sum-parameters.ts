@@ -74,7 +74,7 @@ function cutoffFor(width: number, radiusAt: (cutoff: number) => number, most: nu
 }
 
 export function approximate(a: Rational): number {
-  return Number(floorScaled(a, 64)) / 2 ** 64 // heuristic: affects speed only
+  return Number(floorScaled(a, 128)) / 2 ** 128 // heuristic: affects speed only
 }
 
 /** About the radius that the tail of a sum over the primes leaves (S-5). heuristic: affects speed only */

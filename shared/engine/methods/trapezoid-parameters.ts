@@ -136,9 +136,11 @@ function logDiscretisation(step: number, b: number): number {
 /** L with e^(-decay L) Q(L + 1) / decay about e^-target (T-3). */
 function truncationDepth(series: DirichletSeries, decay: number, target: number): number {
   const coefficients = series.majorant.coefficients.map(approx)
-  const log = (depth: number): number => Math.log(coefficients.reduceRight((total, c) => total * (depth + 1) + c, 0)) // heuristic: affects speed only
+  const degree = coefficients.length - 1
+  // The highest power is taken out: in a double y^60 would become infinite, and no depth would do.
+  const logQ = (y: number): number => degree * Math.log(y) + Math.log(coefficients.reduce((total, c) => total / y + c, 0)) // heuristic: affects speed only
   let depth = (2 * coefficients.length) / decay + 1
-  while (-decay * depth + log(depth) - Math.log(decay) > -target) depth += 0.25 / Math.min(1, decay) // heuristic: affects speed only
+  while (-decay * depth + logQ(depth + 1) - Math.log(decay) > -target) depth += 0.25 / Math.min(1, decay) // heuristic: affects speed only
   return depth
 }
 
