@@ -13,10 +13,10 @@ export const goal = z.union([
   z.object({ cutoff: z.string().regex(/^[1-9]\d{0,17}$/, 'write a whole number') }),
 ])
 
-/** POST /plans: what would be computed, for every method and arithmetic, before anything starts. */
 /** Ids of published estimates that nothing may rest on; those that the member's group has in doubt are left out in any case. */
 const without = z.array(z.string().max(200)).max(500).default([])
 
+/** POST /plans: what would be computed, for every method and arithmetic, before anything starts. */
 export const planInput = z.object({ definition: definitionInput, goal, without })
 export const forecast = z.object({
   method,
