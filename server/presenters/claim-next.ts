@@ -37,7 +37,7 @@ function reviewSteps(facts: Facts, assignments: Situation['assignments'], object
   const steps = [
     ...assignments.filter(({ state }) => state === 'asked').map(({ referee_name }) => `${referee_name}: accept or decline the review`),
     ...objections.filter(({ state }) => state === 'answered').map(({ referee_name }) => `${referee_name}: settle or uphold the objection`),
-    ...assignments.filter(({ state, verdict, verdict_current }) => state === 'accepted' && (verdict === null || !verdict_current)).map(({ referee_name }) => `${referee_name}: give a verdict`),
+    ...assignments.filter(({ state, verdict, verdict_current }) => state === 'accepted' && (verdict !== 'confirmed' || !verdict_current)).map(({ referee_name }) => `${referee_name}: give a verdict`),
   ]
   const missing = missingForEndorsement(facts)
   if (missing.includes('recheck-disjoint')) steps.push('the referees: a recheck does not meet the claim; object, or find the mistake')
