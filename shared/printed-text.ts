@@ -1,14 +1,22 @@
-/** Relations and long numbers as they are printed: "x ≥ 908 994 923" for "x >= 908994923", with spaces that never break a line. */
+const SYMBOLS: Record<string, string> = { theta: 'θ', psi: 'ψ', phi: 'φ', pi: 'π', sqrt: '√' }
+
+/**
+ * Relations, symbols and long numbers as they are printed: "x ≥ 908 994 923" for "x >= 908994923", "θ(x)" for "theta(x)", with spaces
+ * that never break a line. Names with hyphens, such as ids of estimates, and digits after a point stay as they are.
+ */
 export function printedText(text: string): string {
   return text
     .replace(/(\S) ?>= ?/g, '$1\u00a0≥\u00a0')
     .replace(/(\S) ?<= ?/g, '$1\u00a0≤\u00a0')
     .replace(/(\d) ?\* ?(?=\d)/g, '$1\u00a0·\u00a0')
-    .replace(/\d{5,}/g, (digits) => digits.replace(/\B(?=(\d{3})+$)/g, '\u202f'))
+    .replace(/(\d)e(-?\d+)\b/g, '$1\u00a0·\u00a010^$2')
+    .replaceAll(' - ', ' − ')
+    .replace(/\b(?:theta|psi|phi|pi|sqrt)\b(?!-)/g, (name) => SYMBOLS[name] ?? name)
+    .replace(/(?<![.\d])\d{5,}/g, (digits) => digits.replace(/\B(?=(\d{3})+$)/g, '\u202f'))
 }
 
 /** What stands raised or lowered after ^ or _: in brackets, or a number or word with its sign. */
-const SCRIPT = /([\^_])(-?(?:\([^()]*\)|\{[^{}]*\}|[\p{L}\d]+|∞))/u
+const SCRIPT = /([\^_])(-?(?:\([^()]*\)|\{[^{}]*\}|⌈[^⌈⌉]*⌉|[\p{L}\d]+|∞))/u
 
 export interface PrintedPart {
   place: 'line' | 'raised' | 'lowered'

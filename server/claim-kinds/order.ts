@@ -94,7 +94,7 @@ async function sideOf(transaction: Transaction, claimant: Claimant, constant: Co
     transaction,
   )
   const [first, last] = [signed.find((claim) => claim.has_lo), signed.find((claim) => claim.has_hi)]
-  if (!first || !last) throw unprocessable('no_enclosure', `${constantNumberText(constant.number)} has no signed enclosure yet.`, field)
+  if (!first || !last) throw unprocessable('no_enclosure', `${constantNumberText(constant.number)} has no signed enclosure in force.`, field)
   return {
     constant: constantNumberText(constant.number),
     text: constant.text,

@@ -49,7 +49,7 @@ export function convergenceText(definition: Definition): string {
     case 'series':
       return `With terms n^-s (log n)^-b: ${convergenceCondition(definition.set)}.`
     case 'over-primes':
-      return `The ${definition.combine} converges absolutely, since the expression falls at least like 1/p^2.`
+      return `The ${definition.combine} converges absolutely, since ${definition.combine === 'sum' ? 'the expression falls at least like' : 'a factor differs from 1 by at most about'} 1/p^2.`
     case 'named':
       return 'The limit exists.'
   }

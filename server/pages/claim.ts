@@ -87,7 +87,7 @@ function grounds({ budget, radius, estimates, parameters }: NonNullable<Claim['o
           { header: 'Holds for', cell: ({ validFor }) => printed(validFor) },
           { header: 'Rests on a conjecture', cell: ({ conditional }) => (conditional ? 'conditional' : 'no') },
         ])}
-    <h2>Parameters</h2>${facts(Object.entries(parameters).map(([name, value]) => [name, String(value)]))}`
+    <h2>Parameters</h2>${facts(Object.entries(parameters).map(([name, value]) => [name, printed(String(value).replaceAll(',', ', '))]))}`
 }
 
 const rechecks = (made: Claim['rechecks']): Html =>

@@ -30,7 +30,7 @@ export const constantPage = (constant: Constant): PageContent => ({
       { header: 'Author', cell: ({ author, group }) => `${author.name}, ${group.name}` },
       { header: 'Signed', cell: ({ signedAt }) => (signedAt === null ? '' : day(signedAt)) },
     ])}
-    <h2>What is summed</h2>
+    <h2>Convergence and members</h2>
     <p>${printed(constant.convergence)}</p>
     ${constant.firstMembers.length > 0 && html`<p>The set begins with ${constant.firstMembers.join(', ')}, …</p>`}
     <h2>Rests on</h2>

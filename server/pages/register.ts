@@ -22,7 +22,7 @@ export async function registerPage(query: Query): Promise<PageContent> {
       ${table(rows.map(presentConstantSummary), [
         { header: 'Number', cell: ({ number }) => constantLink(number) },
         { header: 'Definition', cell: ({ definition }) => definition.text },
-        { header: 'Best enclosure', cell: ({ best }) => (best ? digits(best) : 'none signed yet') },
+        { header: 'Best enclosure', cell: ({ best }) => (best ? digits(best) : 'none in force') },
         { header: 'Digits', cell: ({ best }) => best?.digits.truncated ?? '' },
         { header: 'State', cell: ({ state, inConflict }) => `${STATE_WORDS[state]}${inConflict ? ', in conflict' : ''}` },
         { header: 'Group', cell: ({ group }) => group.name },

@@ -15,6 +15,9 @@ export function assertionText({ lo, hi, text, basis }: Pick<ClaimDetailRow, 'lo'
   return `${text}: ${digits === null || interval.length <= 80 ? `in ${interval}` : `${digits}…`}`
 }
 
+/** What a citation says besides of a signed claim that is not in force as it stands. */
+const STANDING: Partial<Record<ClaimDetailRow['state'], string>> = { suspended: ', suspended', withdrawn: ', withdrawn' }
+
 /** How to cite a claim that was signed: by its number, which never changes, and the day of the signature. */
 export function citeClaim(row: ClaimDetailRow): { plain: string; bibtex: string } | null {
   if (row.ordinal === null || row.signed_at === null) return null
@@ -23,14 +26,15 @@ export function citeClaim(row: ClaimDetailRow): { plain: string; bibtex: string 
   const address = `${env.publicUrl}/claims/${slug}`
   const date = row.signed_at.toISOString().slice(0, 10)
   const what = assertionText(row)
+  const signed = `signed ${date}${STANDING[row.state] ?? ''}`
   return {
-    plain: `${row.author_name}, ${number}: ${closed(what)} Register of certified constants Merestone, ${row.group_name}, signed ${date}, certificate ${row.certificate_digest.slice(0, 16)}. ${address}`,
+    plain: `${row.author_name}, ${number}: ${closed(what)} Register of certified constants Merestone, ${row.group_name}, ${signed}, certificate ${row.certificate_digest.slice(0, 16)}. ${address}`,
     bibtex: [
       `@misc{${slug},`,
       `  author       = {{${bibtexText(row.author_name)}}},`,
       `  title        = {${number}: ${bibtexText(what)}},`,
       `  howpublished = {Merestone, register of certified constants},`,
-      `  note         = {signed ${date}; certificate ${row.certificate_digest}},`,
+      `  note         = {${signed}; certificate ${row.certificate_digest}},`,
       `  year         = {${date.slice(0, 4)}},`,
       `  url          = {${address}}`,
       '}',

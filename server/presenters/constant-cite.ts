@@ -10,7 +10,7 @@ export const constantAddress = (number: number): string => `${env.publicUrl}/con
 /** What is known of the number in one line: the certified digits, and the whole interval where it is short. */
 function valueText(row: ConstantRow): string {
   const best = bestOf(row)
-  if (!best) return 'no signed enclosure yet'
+  if (!best) return 'no signed enclosure in force'
   const { text } = certifiedTruncated(best.lo, best.hi)
   const interval = intervalText(best.lo, best.hi)
   return text === null || interval.length <= 60 ? `in ${interval}` : best.lo === best.hi ? text : `${text}…`

@@ -42,7 +42,7 @@ describe('without JavaScript', () => {
     await page.getByLabel('Words, a definition, or leading digits').fill('3.14159')
     await page.getByRole('button', { name: 'Find' }).click()
     await page.getByRole('link', { name: constant.split('/').pop()! }).click()
-    await page.getByRole('heading', { name: 'What is summed' }).waitFor()
+    await page.getByRole('heading', { name: 'Convergence and members' }).waitFor()
     await page.locator(`a[href="${claim}"]`).first().click()
     expect(await page.locator('.entry').innerText()).toContain(`3.${DIGITS}2`)
     expect(await page.locator('math').isVisible()).toBe(true)

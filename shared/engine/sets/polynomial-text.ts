@@ -15,3 +15,9 @@ export function polynomialText(coefficients: readonly bigint[], latex: boolean):
     })
     .join('')
 }
+
+/** A quotient of polynomials in p as plain text, with no more brackets than it needs: "1/(p^2 - p)", "(6p - 1)/p^4". */
+export function quotientText(numerator: readonly bigint[], denominator: readonly bigint[]): string {
+  const [above, below] = [polynomialText(numerator, false), polynomialText(denominator, false)]
+  return `${above.includes(' ') ? `(${above})` : above}/${/^(\d+|p(\^\d+)?)$/.test(below) ? below : `(${below})`}`
+}

@@ -1,6 +1,6 @@
 import { combine as linear } from '../arithmetic/polynomial.ts'
 import type { Definition, OverPrimesDefinition, SeriesDefinition, SetOfIntegers } from './definition.ts'
-import { polynomialText } from './polynomial-text.ts'
+import { polynomialText, quotientText } from './polynomial-text.ts'
 import { type Plain, weightText } from './weight-text.ts'
 
 /** How a definition reads: LaTeX for print and screen, one line of plain text, and other usual names of the same number. */
@@ -79,7 +79,7 @@ function overPrimes({ numerator, denominator, combine, exclude }: OverPrimesDefi
   const negative = top.length > 0 && top[top.length - 1] < 0n
   const shown = negative ? top.map((c) => -c) : top
   const latex = `\\frac{${polynomialText(shown, true)}}{${polynomialText(bottom, true)}}`
-  const text = `(${polynomialText(shown, false)})/(${polynomialText(bottom, false)})`
+  const text = quotientText(shown, bottom)
   const under = exclude.length === 0 ? 'p' : exclude.length === 1 ? `p \\ne ${exclude[0]}` : `p \\notin \\{${exclude.join(', ')}\\}`
   const words = exclude.length === 0 ? 'primes p' : `primes p other than ${exclude.join(', ')}`
   if (combine === 'sum') return { latex: `\\sum_{${under}} ${negative ? '-' : ''}${latex}`, text: `sum over ${words} of ${negative ? '-' : ''}${text}` }

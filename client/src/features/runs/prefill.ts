@@ -1,4 +1,5 @@
 import type { Definition } from '../../../../shared/engine/sets/definition.ts'
+import { quotientText } from '../../../../shared/engine/sets/polynomial-text.ts'
 import { BLANK_RUN } from './run-form.ts'
 import type { RunFormValues } from './run-form.ts'
 
@@ -11,7 +12,7 @@ export function prefillFrom(definition: Definition): RunFormValues {
       type: 'over-primes',
       combine: definition.combine,
       exclude: definition.exclude.join(', '),
-      expression: `(${polynomial(definition.numerator)})/(${polynomial(definition.denominator)})`,
+      expression: quotientText(definition.numerator.map(BigInt), definition.denominator.map(BigInt)),
     }
   const { set, weight } = definition
   return {
@@ -26,20 +27,4 @@ export function prefillFrom(definition: Definition): RunFormValues {
     ...('modulus' in set && { modulus: String(set.modulus), residue: String(set.residue) }),
     ...('members' in set && { members: set.members.join(', ') }),
   }
-}
-
-/** A polynomial in p from its coefficients in ascending powers, as it is typed: "p^2 - p". */
-function polynomial(coefficients: string[]): string {
-  const terms = coefficients.flatMap((coefficient, power) => (coefficient === '0' ? [] : [{ coefficient, power }])).reverse()
-  if (terms.length === 0) return '0'
-  return terms
-    .map(({ coefficient, power }, index) => {
-      const negative = coefficient.startsWith('-')
-      const size = coefficient.replace('-', '')
-      const variable = power === 0 ? '' : power === 1 ? 'p' : `p^${power}`
-      const factor = size === '1' && variable !== '' ? variable : variable === '' ? size : `${size}*${variable}`
-      const sign = negative ? (index === 0 ? '-' : ' - ') : index === 0 ? '' : ' + '
-      return sign + factor
-    })
-    .join('')
 }

@@ -55,7 +55,7 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
             <EndsOnPaper lo={constant.best.lo} hi={constant.best.hi} />
           </div>
         ) : (
-          <p className="mt-3 text-soft italic">No enclosure of it is signed yet.</p>
+          <p className="mt-3 text-soft italic">No signed enclosure of it is in force.</p>
         )}
       </div>
       {open.map((conflict) => (
@@ -90,7 +90,7 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
           <Nest enclosures={drawn.flatMap((claim) => (claim.enclosure ? [{ label: claim.number ?? '', ...claim.enclosure }] : []))} />
         </Section>
       )}
-      <Section title="What is summed">
+      <Section title="Convergence and members">
         <p className="max-w-prose"><Printed text={constant.convergence} /></p>
         {constant.firstMembers.length > 0 && (
           <p className="mt-2 max-w-prose">

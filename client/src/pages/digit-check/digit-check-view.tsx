@@ -97,7 +97,7 @@ function AgainstShown({ against }: { against: Against }) {
       )
     case 'without-enclosure':
       return (
-        <Notice tone="undecided" title={`Of ${against.number} no enclosure is signed yet.`} className="mt-8">
+        <Notice tone="undecided" title={`No signed enclosure of ${against.number} is in force.`} className="mt-8">
           {against.claims.length === 0
             ? 'Nothing is claimed of it so far, so there is nothing to hold digits against.'
             : <>Hold the digits against one of its claims: {against.claims.map((number, index) => <span key={number}>{index > 0 && ', '}<TextLink to={paths.digitCheck({ against: number })}>{number}</TextLink></span>)}.</>}

@@ -4,6 +4,7 @@ import { goalText } from '../../../../shared/engine/methods/goal.ts'
 import { METHOD_WORDS } from '../../../../shared/words.ts'
 import { paths } from '../../app/paths.ts'
 import { Formula } from '../../components/formula/formula.tsx'
+import { Printed } from '../../components/formula/printed.tsx'
 import { Empty, ErrorView, Loading } from '../../components/ui/feedback.tsx'
 import { Choice, Field, Options, Select } from '../../components/ui/field.tsx'
 import { ButtonLink, TextLink } from '../../components/ui/link.tsx'
@@ -31,7 +32,7 @@ export interface RunsViewProps {
 const COLUMNS: Column<RunSummary>[] = [
   { key: 'definition', header: 'Constant', plain: true, cell: (run) => <><TextLink to={paths.run(run.id)} className="whitespace-nowrap">{run.constant}</TextLink> {run.purpose === 'recheck' && <span className="text-soft">recheck{run.claimNumber ? ` of ${run.claimNumber}` : ''}</span>}</> },
   { key: 'formula', header: 'Definition', plain: true, cell: (run) => <Formula latex={run.definition.latex} text={run.definition.text} /> },
-  { key: 'goal', header: 'Goal', cell: (run) => goalText(run.goal) },
+  { key: 'goal', header: 'Goal', cell: (run) => <Printed text={goalText(run.goal)} /> },
   { key: 'method', header: 'Method', cell: (run) => `${METHOD_WORDS[run.method]}, ${run.arithmetic}` },
   { key: 'state', header: 'State', cell: (run) => (run.state === 'running' ? `${RUN_STATE_WORDS.running}, ${Math.floor(run.progress * 100)} %` : RUN_STATE_WORDS[run.state]) },
   { key: 'digits', header: 'Digits', align: 'right', cell: (run) => run.digits?.truncated ?? '' },

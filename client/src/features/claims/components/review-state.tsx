@@ -31,7 +31,7 @@ export function ReviewState({ claim, onAct }: { claim: Claim; onAct: DoAct }) {
         />
       )}
       <p className="mt-3 first:mt-0">
-        {have} of {need} confirmation{need === 1 ? '' : 's'} needed.
+        Confirmations: {have} of {need} needed.
         {recheckNeeded && (recheckDone ? ' A recheck by other arithmetic or another method meets it.' : ' A recheck by other arithmetic or another method is still needed.')}
       </p>
     </>

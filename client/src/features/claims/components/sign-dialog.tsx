@@ -2,7 +2,9 @@ import { useState } from 'react'
 import type { ReactNode } from 'react'
 import { act } from '../../../../../shared/schemas/claim.ts'
 import type { Claim } from '../../../../../shared/schemas/claim.ts'
+import { METHOD_WORDS } from '../../../../../shared/words.ts'
 import { Formula } from '../../../components/formula/formula.tsx'
+import { Printed } from '../../../components/formula/printed.tsx'
 import { Button } from '../../../components/ui/button.tsx'
 import { Actions, Dialog } from '../../../components/ui/dialog.tsx'
 import { Field, TextInput } from '../../../components/ui/field.tsx'
@@ -43,9 +45,12 @@ function SignForm({ claim, name, onAct, onCancel }: { claim: Claim; name: string
                   ['Lower end', <span key="lo" className="break-all">{claim.enclosure.lo}</span>] as [string, ReactNode],
                 ]
               : []),
+            ...(claim.run ? [['Computed by', `${METHOD_WORDS[claim.run.method]}, ${claim.run.arithmetic}`] as [string, ReactNode]] : []),
+            ...(claim.outcome ? [['Rests on', claim.outcome.estimates.length === 0 ? 'no published estimate' : <Printed key="estimates" text={claim.outcome.estimates.map(({ title }) => title).join('; ')} />] as [string, ReactNode]] : []),
             ['Author', claim.author.name],
+            ...(claim.remark ? [['Remark', <span key="remark" className="whitespace-pre-line">{claim.remark}</span>] as [string, ReactNode]] : []),
             ['Confirmed by', claim.assignments.filter((assignment) => assignment.verdict === 'confirmed' && assignment.verdictCurrent).map((assignment) => assignment.referee.name).join(', ') || 'nobody'],
-            ['Digest', <code key="digest" className="break-all">{claim.digest}</code>],
+            ['Digest of the claim', <code key="digest" className="break-all">{claim.digest}</code>],
           ]}
         />
       </div>

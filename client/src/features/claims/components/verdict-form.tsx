@@ -41,7 +41,7 @@ export function VerdictForm({ claim, onAct, onKeepDraft }: VerdictFormProps) {
       {checklist.length > 0 && (
         <FieldSet legend="What I have checked">
           {checklist.map(({ item, detail }, index) => (
-            <Choice key={item} label={item} hint={<Printed text={detail} />} {...form.register(`checked.${index}`)} />
+            <Choice key={item} label={<Printed text={item} />} hint={<Printed text={detail} />} {...form.register(`checked.${index}`)} />
           ))}
         </FieldSet>
       )}

@@ -14,7 +14,7 @@ const HALF_WIDTH = 'md:max-wide:hidden print:table-cell'
 const COLUMNS: Column<ConstantSummary>[] = [
   { key: 'number', header: 'Number', sortable: true, plain: true, cell: (row) => <TextLink to={paths.constant(row.number)} className="whitespace-nowrap">{row.number}</TextLink> },
   { key: 'k', header: 'Definition', sortable: true, plain: true, cell: (row) => <Formula latex={row.definition.latex} text={row.definition.text} /> },
-  { key: 'value', header: 'Best enclosure', sortable: true, plain: true, cell: (row) => (row.best ? <DigitLine lo={row.best.lo} hi={row.best.hi} limit={50} /> : <span className="text-soft italic">none signed yet</span>) },
+  { key: 'value', header: 'Best enclosure', sortable: true, plain: true, cell: (row) => (row.best ? <DigitLine lo={row.best.lo} hi={row.best.hi} limit={50} /> : <span className="text-soft italic">none in force</span>) },
   { key: 'digits', header: 'Digits', sortable: true, align: 'right', cell: (row) => row.best?.digits.truncated ?? '' },
   {
     key: 'state',

@@ -31,7 +31,7 @@ export function RegisterFiltersForm({ filters, onFilter, clearTo, errorAt }: Reg
           {(control) => (
             <Select {...control} {...at('set')}>
               <option value="">any</option>
-              <Options of={SET_WORDS} />
+              <Options of={{ ...SET_WORDS, 'over-primes': 'Sums and products over the primes', named: 'Constants with a name' }} />
             </Select>
           )}
         </Field>

@@ -37,7 +37,7 @@ export function DefinitionFields({ form, errors }: DefinitionFieldsProps) {
       )}
       {type === 'over-primes' && (
         <div className="grid items-start gap-5 sm:grid-cols-[9.5rem_1fr]">
-          <Field label="Combined as" hint="over all primes">
+          <Field label="Combined as" hint="over the primes">
             {(control) => (
               <Select {...control} {...form.register('combine')}>
                 <option value="sum">sum of</option>
@@ -64,7 +64,7 @@ export function DefinitionFields({ form, errors }: DefinitionFieldsProps) {
         </>
       )}
       {type !== 'named' && set !== 'finite' && (
-        <Field label="Excluded primes" hint="Members divisible by one of them are left out. 2 leaves the odd ones; empty leaves out nothing." error={errors.exclude}>
+        <Field label="Excluded primes" hint={`${type === 'over-primes' ? 'They' : 'Members divisible by one of them'} are left out. 2 leaves the odd ones; empty leaves out nothing.`} error={errors.exclude}>
           {(control) => <TextInput {...control} {...form.register('exclude')} inputMode="numeric" autoComplete="off" />}
         </Field>
       )}

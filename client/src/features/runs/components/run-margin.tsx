@@ -4,6 +4,7 @@ import { goalText } from '../../../../../shared/engine/methods/goal.ts'
 import { METHOD_WORDS, STATE_WORDS } from '../../../../../shared/words.ts'
 import { files, paths } from '../../../app/paths.ts'
 import type { MarkedState } from '../../../components/state-mark/state-mark.tsx'
+import { Printed } from '../../../components/formula/printed.tsx'
 import { EstimateLinks } from './estimate-links.tsx'
 import { FileLink, TextLink } from '../../../components/ui/link.tsx'
 import { Facts, MarginNote } from '../../../components/ui/page.tsx'
@@ -16,7 +17,7 @@ export function RunMargin({ run }: { run: Run }) {
       <MarginNote title="As asked for">
         <Facts
           facts={[
-            ['Goal', goalText(run.goal)],
+            ['Goal', <Printed key="goal" text={goalText(run.goal)} />],
             ['Method', METHOD_WORDS[run.method]],
             ['Arithmetic', run.arithmetic],
             ...(run.without.length > 0 ? [['Without', <EstimateLinks key="without" ids={run.without} />] as [string, ReactNode]] : []),

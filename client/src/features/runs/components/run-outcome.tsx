@@ -53,7 +53,7 @@ export function OutcomeEnclosure({ outcome, goal }: { outcome: OutcomeView; goal
       <DigitLine lo={outcome.enclosure.lo} hi={outcome.enclosure.hi} size="large" copy />
       <p className="mt-2 text-[0.92rem] text-soft">
         {outcome.digits.truncated} digits after the point certified when truncated, {outcome.digits.rounded} when rounded; radius at most <Magnitude text={outcome.radius} />.
-        {radius && !serves(goal, radius) && ` That is wider than asked for (${goalText(goal)}): run it again for a little more.`}
+        {radius && !serves(goal, radius) && <> That is wider than asked for (<Printed text={goalText(goal)} />): run it again for a little more.</>}
       </p>
     </div>
   )
@@ -93,7 +93,7 @@ export function Parameters({ parameters }: { parameters: OutcomeView['parameters
       {Object.entries(parameters).map(([name, value]) => (
         <div key={name} className="flex break-inside-avoid justify-between gap-3 border-b border-rule py-0.5">
           <dt className="text-soft">{name}</dt>
-          <dd className="min-w-0 break-all text-right">{value}</dd>
+          <dd className="min-w-0 text-right [overflow-wrap:anywhere]"><Printed text={String(value).replaceAll(',', ', ')} /></dd>
         </div>
       ))}
     </dl>
