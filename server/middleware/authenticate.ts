@@ -19,21 +19,28 @@ export async function readerOf({ headers }: Request): Promise<SignedInMember | u
   return sessionId === undefined ? undefined : readerBySession(sessionId)
 }
 
-/** Finds out who asks and sets `req.reader`; a request without cookie or token is a reader without account. */
+/**
+ * Finds out who asks: `req.member`, and `req.reader`, whose eyes a request reads with. Without cookie or token, and with an access token
+ * that lacks the scope "read", that is a reader without account.
+ */
 export const authenticate: RequestHandler = async (req, _res, next) => {
+  const member = await readerOf(req)
+  if (!member && req.headers.authorization !== undefined) {
+    throw new Problem(401, 'token_refused', 'This access token is unknown, expired or revoked. Make a new one on your account page.', { headers: { 'WWW-Authenticate': 'Bearer error="invalid_token"' } })
+  }
   Object.defineProperty(req, 'member', {
     configurable: true,
     get: () => {
-      if (!req.reader) throw unauthenticated()
-      return req.reader
+      if (!member) throw unauthenticated()
+      return member
     },
   })
-  req.reader = await readerOf(req)
-  if (!req.reader && req.headers.authorization !== undefined) {
-    throw new Problem(401, 'token_refused', 'This access token is unknown, expired or revoked. Make a new one on your account page.', { headers: { 'WWW-Authenticate': 'Bearer error="invalid_token"' } })
-  }
+  req.reader = member && mayRead(member) ? member : undefined
   next()
 }
+
+/** Whether what is open to the member is open to this request of theirs. */
+export const mayRead = ({ via }: SignedInMember): boolean => via.kind === 'session' || via.scopes.includes('read')
 
 /** Who may send a request, as the description of the API tells it. */
 export interface AccessMark {

@@ -20,7 +20,7 @@ declare global {
       /** Set by `validate`; handlers type it by taking `Validated<typeof schemas>` for their request. */
       // eslint-disable-next-line @typescript-eslint/no-explicit-any
       input: any
-      /** The member, or undefined for a reader without account. */
+      /** The member, or undefined for a reader without account and for an access token that may not read. */
       reader: SignedInMember | undefined
       /** The member; reading it on a request that is not signed in answers 401. */
       readonly member: SignedInMember

@@ -6,7 +6,7 @@ import { claimReference } from '../../shared/schemas/claim.ts'
 import { constantQuery } from '../../shared/schemas/constant.ts'
 import { notFound } from '../errors.ts'
 import { log } from '../log.ts'
-import { readerOf } from '../middleware/authenticate.ts'
+import { mayRead, readerOf } from '../middleware/authenticate.ts'
 import { toProblem } from '../middleware/error-handler.ts'
 import { rateLimit } from '../middleware/rate-limit.ts'
 import type { SignedInMember } from '../middleware/request.ts'
@@ -108,5 +108,5 @@ const citedClaim: RequestHandler = ({ params: { constant, ordinal } }, res, next
 async function requireOpen(shown: Shown | undefined, req: Request, res: Response): Promise<void> {
   res.vary('Cookie').set('Cache-Control', 'private, no-cache')
   const member = shown?.isOpenTo && (await readerOf(req))
-  if (!member || !(await shown.isOpenTo?.(member, req))) throw notFound()
+  if (!member || !mayRead(member) || !(await shown.isOpenTo?.(member, req))) throw notFound()
 }

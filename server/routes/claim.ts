@@ -28,7 +28,7 @@ claim.get('/', validate(list), async (req: Validated<typeof list>, res) => {
 
 claim.post('/', signedInFor('draft'), may('research'), validate(creation), async (req: Validated<typeof creation>, res) => {
   const { id } = await draftClaim(req.member, req.input)
-  res.status(201).location(`/api/v1/claims/${id}`).json(await claimDetail(req.reader, id))
+  res.status(201).location(`/api/v1/claims/${id}`).json(await claimDetail(req.member, id))
 })
 
 claim.get('/:id', validate(one), async (req: Validated<typeof one>, res) => {
@@ -38,7 +38,7 @@ claim.get('/:id', validate(one), async (req: Validated<typeof one>, res) => {
 claim.patch('/:id', signedInFor('draft'), validate(patch), async (req: Validated<typeof patch>, res) => {
   const id = await claimIdFor(req.input.id)
   await editClaim(req.member, id, req.input)
-  res.json(await claimDetail(req.reader, id))
+  res.json(await claimDetail(req.member, id))
 })
 
 claim.delete('/:id', signedInFor('draft'), validate(one), async (req: Validated<typeof one>, res) => {

@@ -47,7 +47,7 @@ constant.get('/export', validate(file), async (req: Validated<typeof file>, res)
 constant.post('/', signedInFor('draft'), may('research'), validate(creation), async (req: Validated<typeof creation>, res) => {
   const read = readDefinition(req.input.definition)
   const { constant: row, created } = await inTransaction((transaction) => stateConstant(transaction, req.member, read))
-  res.status(created ? 201 : 200).json(await constantDetail(req.reader, row.number))
+  res.status(created ? 201 : 200).json(await constantDetail(req.member, row.number))
 })
 
 constant.get('/:number', validate(one), async (req: Validated<typeof one>, res) => {

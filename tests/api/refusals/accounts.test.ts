@@ -219,6 +219,21 @@ describe('an access token', () => {
     expect((await asProgram().expect(401)).body.code).toBe('token_refused')
   })
 
+  it('that may not read sees what everybody sees, and its answers to what it may do', async () => {
+    const agent = await signedInAs(await makeMember(), app)
+    const withScope = async (scope: string) => {
+      const { token } = (await agent.post('/api/v1/access-tokens').send({ name: scope, scopes: [scope], days: 1 }).expect(201)).body
+      return (method: 'get' | 'post', path: string) => request(app)[method](path).set('Authorization', `Bearer ${token}`)
+    }
+    const [drafting, reading] = [await withScope('draft'), await withScope('read')]
+    const definition = { type: 'series', set: { kind: 'almost-primes', k: 7, exclude: [2, 11] }, weight: {} }
+    const { number } = (await drafting('post', '/api/v1/constants').send({ definition }).expect(201)).body
+    await drafting('get', `/api/v1/constants/${number}`).expect(404)
+    await drafting('get', `/constants/${number}`).set('Accept', 'text/html').expect(404)
+    expect((await drafting('get', '/api/v1/constants').expect(200)).body.items).toEqual([])
+    await reading('get', `/api/v1/constants/${number}`).expect(200)
+  })
+
   it('of somebody else cannot be revoked', async () => {
     const { id } = (await (await signedInAs(await makeMember(), app)).post('/api/v1/access-tokens').send({ name: 'x', scopes: ['read'], days: 1 })).body
     await (await signedInAs(await makeMember(), app)).delete(`/api/v1/access-tokens/${id}`).expect(404)
