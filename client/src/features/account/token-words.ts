@@ -3,8 +3,8 @@ import type { AccessToken, TokenScope } from '../../../../shared/schemas/session
 /** What a token with this scope may do. */
 export const SCOPES: Record<TokenScope, { label: string; hint: string }> = {
   read: { label: 'read', hint: 'everything that you may read' },
-  run: { label: 'run', hint: 'start runs and rechecks, and follow them' },
-  draft: { label: 'draft', hint: 'state constants and draft claims; submitting and signing stay with you' },
+  run: { label: 'run', hint: 'start, stop and resume runs' },
+  draft: { label: 'draft', hint: 'state constants, draft and submit claims; reviewing and signing stay with people' },
 }
 
 export const TOKEN_STATES: Record<AccessToken['state'], string> = { active: 'in use', expired: 'expired', revoked: 'revoked' }
