@@ -160,6 +160,7 @@ describe('an objection', () => {
     await resubmit()
     const settled = (await act(referee, claim.id, 'settle', { objectionId, outcome: 'settled', text: 'yes' }).expect(200)).body as ClaimView
     expect(settled.objections[0]!.messages.map(({ text }) => text)).toEqual(['why?', 'because', 'not so', 'look again', 'yes'])
+    expect(settled.next).toBe(`${cast.referee.name}: give a verdict`)
     expect((await confirm()).body.state).toBe('endorsed')
   })
 

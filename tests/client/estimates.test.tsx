@@ -43,6 +43,10 @@ describe('print', () => {
     expect(printedText('x >= 908994923')).toBe('x\u00a0≥\u00a0908\u202f994\u202f923')
     expect(printedText('1.101 * 10^26')).toBe('1.101\u00a0·\u00a010^26')
   })
+  test('functions have their letters, small numbers their power of ten; identifiers and decimals stay as they are', () => {
+    expect(printedText('theta(x) - x < 6.3417e-9 sqrt(x)')).toBe('θ(x) − x < 6.3417\u00a0·\u00a010^-9 √(x)')
+    expect(printedText('theta-johnston-2022, arXiv:1511.02032, 1.93378')).toBe('theta-johnston-2022, arXiv:1511.02032, 1.93378')
+  })
   test('powers are raised', () => {
     const { container } = render(<Printed text="x >= e^28, radius 10^-40" />)
     expect([...container.querySelectorAll('sup')].map((sup) => sup.textContent)).toEqual(['28', '−40'])

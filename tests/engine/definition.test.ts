@@ -108,6 +108,8 @@ describe('what makes no sense is refused with the field at fault', () => {
 describe('readings', () => {
   it.each<[DefinitionText, string, string]>([
     [series({ kind: 'primes', exclude: none }), '\\sum_{p} \\frac{1}{p \\log p}', 'sum over primes p of 1/(p log p)'],
+    [{ type: 'over-primes', expression: '(6p-1)/p^4', combine: 'sum', exclude: none }, '\\sum_{p} \\frac{6p - 1}{p^{4}}', 'sum over primes p of (6p - 1)/p^4'],
+    [{ type: 'over-primes', expression: '1-1/(2*p^2)', combine: 'product', exclude: [2] }, '\\prod_{p \\ne 2} \\left(1 - \\frac{1}{2p^{2}}\\right)', 'product over primes p other than 2 of 1 - 1/(2p^2)'],
     [
       series({ kind: 'almost-primes', k: 3, exclude: [2] }),
       '\\sum_{\\substack{n \\ge 2 \\\\ \\Omega(n) = 3 \\\\ 2 \\nmid n}} \\frac{1}{n \\log n}',
