@@ -5,7 +5,7 @@ import type { ConstantSummary, constantQuery } from '../../shared/schemas/consta
 import { select, selectByKey, type Bind } from '../db.ts'
 import { invalid, invalidField, type FieldError } from '../errors.ts'
 import { audienceOf, stateColumn, type Reader } from './audience.ts'
-import { readTextQuery } from './constant-text.ts'
+import { readTextQuery, type TextQuery } from './constant-text.ts'
 import { readCursor, writeCursor, type CursorKey } from './cursor.ts'
 import { leadingDigits } from './leading-digits.ts'
 import { MEETS } from './look-up.ts'
@@ -36,9 +36,9 @@ const columns = (reader: Reader): string => `c.id, c.number, CASE WHEN pg_column
   g.id AS group_id, g.name AS group_name, e.changed_at, e.key::text AS sort_key`
 
 /** Entries that fit, in order, with what is shown of them: filters and order need the entries alone, so only what is shown is joined. */
-function rowsSql(reader: Reader, { key, order, conditions, limit, total }: { key: string; order: 'asc' | 'desc'; conditions: readonly string[]; limit: string; total?: string }): string {
-  return `SELECT ${columns(reader)}${total === undefined ? '' : `, (${total}) AS total`}
-    FROM (SELECT e.*, ${key} AS key FROM register_entries e WHERE ${conditions.join(' AND ')} ORDER BY ${key} ${order}, e.number ${order} LIMIT ${limit}) e
+function rowsSql(reader: Reader, { key, order, conditions, limit, total = null }: { key: string; order: 'asc' | 'desc'; conditions: readonly string[]; limit: string; total?: string | null }): string {
+  return `SELECT ${columns(reader)}${total === null ? '' : `, (${total}) AS total`}
+    FROM (SELECT e.*, ${key} AS key${total === COUNT_FOUND ? ', count(*) OVER ()::int AS found' : ''} FROM register_entries e WHERE ${conditions.join(' AND ')} ORDER BY ${key} ${order}, e.number ${order} LIMIT ${limit}) e
     JOIN constants c ON c.id = e.constant_id JOIN groups g ON g.id = e.group_id
     ORDER BY e.key ${order}, e.number ${order}`
 }
@@ -50,10 +50,12 @@ const WITH_K = new Set(['primes', 'almost-primes', 'squarefree-almost-primes', '
 interface Filter {
   where: string[]
   bind: Bind
+  /** How many constants have the words and digits that are asked for, if any are. */
+  matched: 'few' | 'many' | null
 }
 
 /** The conditions of a query of the register, over the entries `e` that this reader sees. Refuses what makes no sense. */
-export function registerFilter(reader: Reader, query: ConstantQuery): Filter {
+async function registerFilter(reader: Reader, query: ConstantQuery): Promise<Filter> {
   const where = ['e.audience = $audience']
   const bind: Bind = { audience: audienceOf(reader) }
   const faults: FieldError[] = []
@@ -66,7 +68,8 @@ export function registerFilter(reader: Reader, query: ConstantQuery): Filter {
     else if (query.k !== undefined && WITHOUT_K.has(query.set)) faults.push({ path: 'k', message: 'this set has no k' })
     add('e.set_kind = $set', { set: query.set })
   }
-  if (query.k !== undefined) add('e.k = $k', { k: query.k })
+  // As the index by k has it.
+  if (query.k !== undefined) add('coalesce(e.k, 0) = $k', { k: query.k })
   for (const [field, column] of [['power', 'power'], ['logPower', 'log_power']] as const) {
     const text = query[field]
     if (text === undefined) continue
@@ -82,28 +85,47 @@ export function registerFilter(reader: Reader, query: ConstantQuery): Filter {
   if (query.state !== undefined) add(`e.${stateColumn(reader)} = $state`, { state: query.state })
   if (query.minDigits !== undefined && query.minDigits > 0) add('coalesce(e.digits_truncated, -1) >= $minDigits', { minDigits: query.minDigits })
   if (query.group !== undefined) add('e.group_id = $group', { group: query.group })
-  if (query.text !== undefined && query.text !== '') textFilter(query.text, add)
+  const asked = query.text === undefined || query.text === '' ? null : readTextQuery(query.text)
+  if (asked) textFilter(asked, add)
   if (faults.length > 0) throw invalid(faults)
-  return { where, bind }
+  return { where, bind, matched: asked && (await narrow(reader, asked, add)) }
 }
 
-function textFilter(text: string, add: (condition: string, values: Bind) => void): void {
-  const asked = readTextQuery(text)
+function textFilter(asked: TextQuery, add: (condition: string, values: Bind) => void): void {
   if (Object.keys(asked).length === 1 && asked.words.length === 0) throw invalidField('text', 'says nothing to search for: write words, a definition such as "odd, k = 3", or leading digits such as 1.6366')
   if (asked.number !== undefined) add('e.number = $textNumber', { textNumber: asked.number })
   if (asked.power !== undefined) add('e.power = $textPower AND e.log_power = $textLogPower', { textPower: asked.power, textLogPower: asked.logPower })
   if (asked.overPrimes && asked.k === undefined) add(`e.set_kind IN ('primes', 'residue-class')`, {})
-  if (asked.k !== undefined) add('e.k = $textK', { textK: asked.k })
+  if (asked.k !== undefined) add('coalesce(e.k, 0) = $textK', { textK: asked.k })
   if (asked.odd) add(`(e.exclude = '2' OR e.exclude LIKE '2,%')`, {})
   if (asked.exclude) add('e.exclude = $textExclude', { textExclude: asked.exclude.join(',') })
-  if (asked.digits !== undefined) {
-    const [lo, hi] = leadingDigits(asked.digits)
-    const meets = MEETS('$digitsLo', '$digitsHi')
-    // Many digits mean few constants, which the index on ranges finds first; of few digits a walk in order soon has a page.
-    const few = (asked.digits.split('.')[1]?.length ?? 0) >= FEW_FROM_DECIMALS
-    add(few ? `e.constant_id = ANY (ARRAY(SELECT constant_id FROM register_entries WHERE audience = $audience AND ${meets}))` : meets, { digitsLo: lo, digitsHi: hi })
+}
+
+/**
+ * Words and digits: where few constants have them they are found first, and the rest of the query looks at those alone; where many
+ * have them, a walk in the order of the list soon has a page.
+ */
+async function narrow(reader: Reader, { words, digits }: TextQuery, add: (condition: string, values: Bind) => void): Promise<Filter['matched']> {
+  let matched: Filter['matched'] = null
+  const narrowBy = async (name: string, found: string, walked: string, values: Bind): Promise<void> => {
+    const ids = (await select<{ id: string }>(`${found} LIMIT ${MOST_NARROWED + 1}`, values)).map(({ id }) => id)
+    if (ids.length <= MOST_NARROWED) {
+      matched = 'few'
+      return add(`e.constant_id = ANY ($${name}::uuid[])`, { [name]: ids })
+    }
+    matched ??= 'many'
+    add(walked, values)
   }
-  if (asked.words.length > 0) add(`e.constant_id IN (SELECT id FROM constants WHERE search @@ to_tsquery('simple', $words))`, { words: asked.words.map((word) => `${word}:*`).join(' & ') })
+  if (digits !== undefined) {
+    const [lo, hi] = leadingDigits(digits)
+    const meets = MEETS('$digitsLo', '$digitsHi')
+    await narrowBy('digitIds', `SELECT constant_id AS id FROM register_entries WHERE audience = $audience AND ${meets}`, meets, { audience: audienceOf(reader), digitsLo: lo, digitsHi: hi })
+  }
+  if (words.length > 0) {
+    const has = `SELECT id FROM constants WHERE search @@ to_tsquery('simple', $words)`
+    await narrowBy('wordIds', `${has} ORDER BY number`, `e.constant_id IN (${has})`, { words: words.map((word) => `${word}:*`).join(' & ') })
+  }
+  return matched
 }
 
 /** By what each sorting goes, and the type of that; every one has an index. */
@@ -128,7 +150,7 @@ export async function listConstants(
   reader: Reader,
   { cursor, limit, ...query }: z.output<typeof constantQuery>,
 ): Promise<{ rows: ConstantRow[]; next: string | null; total?: number }> {
-  const { where, bind } = registerFilter(reader, query)
+  const { where, bind, matched } = await registerFilter(reader, query)
   const mark = { list: 'constants', audience: audienceOf(reader), state: stateColumn(reader), ...query }
   const [key, type] = sorting(query)
   const conditions = [...where]
@@ -139,34 +161,37 @@ export async function listConstants(
     conditions.push(`(${key}, e.number) ${query.order === 'asc' ? '>' : '<'} (${position}, $afterNumber::int)`)
     Object.assign(bind, query.sort === 'value' ? { afterNumber: number } : { after, afterNumber: number })
   }
-  const first = cursor === undefined
+  // Few are all found anyway; of a filter that very many fit a bounded count would cost more than the page.
+  const total = cursor !== undefined || matched === 'many' ? null : matched === 'few' ? COUNT_FOUND : where.length === 1 ? COUNT_ALL : countSql(where)
   const rows = await select<ConstantRow & { total: number }>(
-    rowsSql(reader, { key, order: query.order, conditions, limit: '$limit', ...(first && { total: where.length === 1 ? countAllSql(reader) : countSql(where) }) }),
+    rowsSql(reader, { key, order: query.order, conditions, limit: '$limit', total }),
     { ...bind, limit: limit + 1 },
   )
   const counted = rows[0]?.total ?? 0
-  const total = first && (where.length === 1 || counted <= MOST_COUNTED) ? counted : undefined
+  const known = total === COUNT_FOUND || total === COUNT_ALL || (total !== null && counted <= MOST_COUNTED)
   const page = rows.slice(0, limit)
   const last = page.at(-1)
   const after: CursorKey | null = rows.length > limit && last ? [query.sort === 'value' ? null : last.sort_key, last.number] : null
-  return { rows: page, next: after && writeCursor(mark, after), ...(total !== undefined && { total }) }
+  return { rows: page, next: after && writeCursor(mark, after), ...(known && { total: counted }) }
 }
 
-/** Decimals from which on digits mean few constants. */
-const FEW_FROM_DECIMALS = 3
+/** Most constants with some words or digits that a query is narrowed to. */
+const MOST_NARROWED = 1_000
 
 /** Most that is counted of a filtered list, so that counting never costs more than listing. */
 const MOST_COUNTED = 300
 
 const countSql = (where: readonly string[]): string => `SELECT count(*)::int FROM (SELECT 1 FROM register_entries e WHERE ${where.join(' AND ')} ORDER BY e.number LIMIT ${MOST_COUNTED + 1}) AS counted`
 
-/** The whole register: to members every constant is known, and numbers have no gaps. */
-const countAllSql = (reader: Reader): string =>
-  `SELECT ${reader ? 'coalesce(max(number), 0)' : 'count(*)::int'} FROM register_entries WHERE audience = $audience`
+/** All that the same statement finds. */
+const COUNT_FOUND = 'e.found'
+
+/** The whole register, as the database counts it. */
+const COUNT_ALL = 'SELECT entries FROM register_counts WHERE audience = $audience'
 
 /** Every row of a query, for an export, up to `most`. */
 export async function allConstants(reader: Reader, query: ConstantQuery, most: number): Promise<ConstantRow[]> {
-  const { where, bind } = registerFilter(reader, query)
+  const { where, bind } = await registerFilter(reader, query)
   const [key] = sorting(query)
   return select<ConstantRow>(rowsSql(reader, { key, order: query.order, conditions: where, limit: '$most' }), { ...bind, most })
 }

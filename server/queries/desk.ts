@@ -1,6 +1,6 @@
 import { hasRight } from '../../shared/permissions.ts'
 import type { Desk } from '../../shared/schemas/claim.ts'
-import { select, selectOne } from '../db.ts'
+import { selectByKey } from '../db.ts'
 import type { SignedInMember } from '../middleware/request.ts'
 
 type Part = keyof Desk['total']
@@ -42,6 +42,9 @@ const REFEREE = `
 /** Estimates in doubt in the group of the claim `c` that it rests on. */
 const DOUBTS = 'SELECT d.estimate FROM estimate_doubts d JOIN claim_estimates u ON u.estimate = d.estimate WHERE u.claim_id = c.id AND d.group_id = c.group_id AND d.lifted_at IS NULL'
 
+/** Whether the group has any estimate in doubt at all: asked once, before every single claim is looked at. */
+const ANY_DOUBT = 'EXISTS (SELECT 1 FROM estimate_doubts WHERE group_id = $group AND lifted_at IS NULL)'
+
 /** What a lead is to do: find referees, remind those who are late, sign what one may sign, settle conflicts, decide on what is suspended. */
 const LEAD = [
   `SELECT 'lead', 'assign', c.id, c.since, NULL, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'submitted'`,
@@ -57,11 +60,11 @@ const LEAD = [
    WHERE c.group_id = $group AND c.state = 'in-review' AND s.state <> 'declined' AND (s.verdict IS DISTINCT FROM 'confirmed' OR s.verdict_digest <> c.digest)
      AND greatest(coalesce(s.answered_at, s.asked_at), c.since, s.reminded_at) < now() - make_interval(days => g.reminder_days)
    GROUP BY c.id`,
-  `SELECT 'lead', 'sign', c.id, c.since, NULL, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'endorsed' AND c.author_id <> $me AND NOT EXISTS (${DOUBTS})
+  `SELECT 'lead', 'sign', c.id, c.since, NULL, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'endorsed' AND c.author_id <> $me AND NOT (${ANY_DOUBT} AND EXISTS (${DOUBTS}))
      AND NOT EXISTS (SELECT 1 FROM assignments s WHERE s.claim_id = c.id AND s.referee_id = $me AND (s.state <> 'declined' OR s.verdict IS NOT NULL))`,
   `SELECT 'lead', 'conflict', c.id, min(k.opened_at), NULL, count(*)::int FROM conflicts k CROSS JOIN LATERAL unnest(ARRAY[k.claim_id, k.signed_claim_id]) AS side (id) JOIN claims c ON c.id = side.id
    WHERE c.group_id = $group AND k.closed_at IS NULL GROUP BY c.id`,
-  `SELECT 'lead', 'decide', c.id, c.since, (SELECT min(d.estimate) FROM (${DOUBTS}) d), 0 FROM claims c WHERE c.group_id = $group AND c.state = 'suspended'`,
+  `SELECT 'lead', 'decide', c.id, c.since, CASE WHEN ${ANY_DOUBT} THEN (SELECT min(d.estimate) FROM (${DOUBTS}) d) END, 0 FROM claims c WHERE c.group_id = $group AND c.state = 'suspended'`,
 ]
 
 /** What waits for a member, by the rights of their roles, as SQL; null where their roles make nothing wait. */
@@ -80,7 +83,7 @@ function waitingSql(roles: SignedInMember['roles']): string | null {
 export async function waitingFor(member: Pick<SignedInMember, 'id' | 'groupId' | 'roles'>, most = Number.MAX_SAFE_INTEGER): Promise<WaitingRow[]> {
   const waiting = waitingSql(member.roles)
   if (waiting === null) return []
-  return select<WaitingRow>(
+  return selectByKey<WaitingRow>(
     `SELECT part, kind, claim_id, since, who, count, in_part
      FROM (SELECT w.*, count(*) OVER (PARTITION BY part)::int AS in_part, row_number() OVER (PARTITION BY part ORDER BY since, claim_id, kind) AS place FROM (${waiting}) w) placed
      WHERE place <= $most ORDER BY since, claim_id, kind`,
@@ -92,6 +95,6 @@ export async function waitingFor(member: Pick<SignedInMember, 'id' | 'groupId' |
 export async function deskCount(member: Pick<SignedInMember, 'id' | 'groupId' | 'roles'>): Promise<number> {
   const waiting = waitingSql(member.roles)
   if (waiting === null) return 0
-  const row = await selectOne<{ count: number }>(`SELECT count(*)::int AS count FROM (${waiting}) w WHERE kind <> 'finish-draft'`, { me: member.id, group: member.groupId })
+  const [row] = await selectByKey<{ count: number }>(`SELECT count(*)::int AS count FROM (${waiting}) w WHERE kind <> 'finish-draft'`, { me: member.id, group: member.groupId })
   return row?.count ?? 0
 }

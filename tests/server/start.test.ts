@@ -33,7 +33,7 @@ describe('npm start', { timeout: LONG }, () => {
     const { address } = await start({ PORT: port }).ready()
     expect(address).toBe(`http://127.0.0.1:${port}`)
     expect((await post(`${address}/api/v1/session`, account())).status).toBe(200)
-    const page = await fetch(`${address}/constants/MST-0001`, { headers: { Accept: 'text/html' } })
+    const page = await fetch(`${address}/register`, { headers: { Accept: 'text/html' } })
     expect(page.status).toBe(200)
     expect(page.headers.get('content-security-policy')).toContain("script-src 'self'")
     expect(await page.text()).toMatch(/<div id="?root"?>/)
