@@ -17,7 +17,8 @@ export interface Repetition {
   outcome: Outcome | null
 }
 
-const COMPARED = ['enclosure', 'radius', 'digits', 'budget', 'estimates'] as const
+/** The parameters as the engine reads them: one that it does not know, or writes otherwise, is certified by nobody. */
+const COMPARED = ['parameters', 'enclosure', 'radius', 'digits', 'budget', 'estimates'] as const
 
 /** Computes the certificate's enclosure again, here, and compares. Needs nothing but the certificate. */
 export async function repeatCertificate(certificate: Certificate, onProgress?: (share: number) => void): Promise<Repetition> {
@@ -34,6 +35,7 @@ export async function repeatCertificate(certificate: Certificate, onProgress?: (
 }
 
 function difference(part: (typeof COMPARED)[number], stated: string, found: string): string {
+  if (part === 'parameters') return 'The parameters are not written as the engine writes them, or name what it does not know.'
   if (part === 'budget' || part === 'estimates') return `The ${part} comes out differently.`
   return `The ${part} is stated as ${stated} and comes out as ${found}.`
 }
