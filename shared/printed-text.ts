@@ -10,6 +10,7 @@ export function printedText(text: string): string {
     .replace(/(\S) ?<= ?/g, '$1\u00a0≤\u00a0')
     .replace(/(\d) ?\* ?(?=\d)/g, '$1\u00a0·\u00a0')
     .replace(/(\d)e(-?\d+)\b/g, '$1\u00a0·\u00a010^$2')
+    .replace(/ ([<>]) /g, '\u00a0$1\u00a0')
     .replaceAll(' - ', ' − ')
     .replace(/\b(?:theta|psi|phi|pi|sqrt)\b(?!-)/g, (name) => SYMBOLS[name] ?? name)
     .replace(/(?<![.\d])\d{5,}/g, (digits) => digits.replace(/\B(?=(\d{3})+$)/g, '\u202f'))

@@ -1,7 +1,7 @@
 import { claimSlug, parseClaimNumber } from '../../shared/constant-number.ts'
 import { claimHead } from '../../shared/page-head.ts'
 import type { Claim } from '../../shared/schemas/claim.ts'
-import { cautionWords, digitsWords, KIND_WORDS, METHOD_WORDS, pastWords, SOURCE_WORDS, STATE_WORDS } from '../../shared/words.ts'
+import { cautionWords, CONFLICT_UNSEEN, digitsWords, KIND_WORDS, METHOD_WORDS, pastWords, SOURCE_WORDS, STATE_WORDS } from '../../shared/words.ts'
 import { html, type Html } from '../html.ts'
 import { cite, claimLink, constantLink, day, definitionOf, digits, facts, link, magnitude, printed, table, textPage } from './parts.ts'
 import type { PageContent } from './template.ts'
@@ -42,6 +42,7 @@ function notices(claim: Claim): Html {
   const elsewhere = claim.statedValue ? `, printed there as ${claim.statedValue.digits} (${claim.statedValue.reading})` : ''
   return html`
     ${open.map((conflict) => html`<p><strong>In conflict.</strong> No number lies in both this enclosure and that of ${claimLink(conflict.claim)}. At least one is wrong.</p>`)}
+    ${claim.inConflict && open.length === 0 && html`<p><strong>In conflict.</strong> ${CONFLICT_UNSEEN}</p>`}
     ${claim.kind === 'stated' && !claim.repeatedHere && html`<p><strong>Not repeated here.</strong> The value is taken from its source${elsewhere}. No run of this installation meets it yet.</p>`}
     ${claim.supersededBy !== null && html`<p><strong>Superseded.</strong> ${claimLink(claim.supersededBy)} is narrower. This one stays citable.</p>`}
     ${claim.doubts.map(({ estimate, title, group, at, reason }) => html`<p><strong>In doubt.</strong> It rests on ${link(`/estimates/${estimate}`, printed(title))}, which ${group.name} has in doubt since ${day(at)}: <span class="as-written">${reason}</span></p>`)}

@@ -1,6 +1,6 @@
 import { constantHead } from '../../shared/page-head.ts'
 import type { Constant } from '../../shared/schemas/constant.ts'
-import { STATE_WORDS } from '../../shared/words.ts'
+import { CONFLICT_UNSEEN, STATE_WORDS } from '../../shared/words.ts'
 import { html } from '../html.ts'
 import { cite, claimLink, day, definitionOf, digits, facts, link, printed, table, textPage } from './parts.ts'
 import type { PageContent } from './template.ts'
@@ -20,8 +20,9 @@ export const constantPage = (constant: Constant): PageContent => ({
             ['Upper end', html`<span class="number">${constant.best.hi}</span>`],
             ['Certified', `${constant.best.digits.truncated} digits after the point when truncated, ${constant.best.digits.rounded} when rounded`],
           ])}`
-        : html`<p>No enclosure of it is signed.</p>`}
+        : html`<p>No signed enclosure of it is in force.</p>`}
     </div>
+    ${constant.inConflict && constant.conflicts.every(({ closedAt }) => closedAt !== null) && html`<p><strong>In conflict.</strong> ${CONFLICT_UNSEEN}</p>`}
     <h2>Claims</h2>
     ${table(constant.claims, [
       { header: 'Claim', cell: ({ number }) => (number === null ? '' : claimLink(number)) },

@@ -198,6 +198,12 @@ describe('claim', () => {
     await userEvent.click(screen.getByRole('button', { name: 'Start the recheck' }))
     expect(act).toHaveBeenCalledWith('recheck', { method: 'transform', arithmetic: 'mpfr', digits: 36 })
   })
+  test('a recheck offers the methods that are made for the definition', async () => {
+    const definition = { ...fixtures.claimForReferee.definition, canonical: { type: 'over-primes' } }
+    await show(claim({ ...fixtures.claimForReferee, definition, run: null }))
+    const methods = within(screen.getByLabelText('Method')).getAllByRole('option')
+    expect(methods.map((option) => option.textContent)).toEqual(['expansion in prime zeta values'])
+  })
   test('an author answers an objection', async () => {
     const act = vi.fn(done)
     await show(claim(fixtures.claimReturned, { onAct: act }))
@@ -223,6 +229,7 @@ describe('claim', () => {
     await show(claim({ ...fixtures.claimSigned, kind: 'stated', repeatedHere: false, statedValue: { digits: '1.03083', reading: 'truncated' }, conflicts: [{ claim: 'MST-0003/2', claimId: 'x', openedAt: '2026-05-01T00:00:00Z', closedAt: null }] }))
     expect(screen.getByText('Not repeated here.')).toBeInTheDocument()
     expect(screen.getByText('In conflict.').parentElement).toHaveTextContent('MST-0003/2')
+    expect(screen.getByText(/^A value from elsewhere is as sound as its source/)).toBeInTheDocument()
   })
 })
 

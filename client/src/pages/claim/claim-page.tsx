@@ -47,7 +47,7 @@ function Loaded({ claim }: { claim: Claim }) {
       onUpload={(file) => upload.mutateAsync(file)}
       onRemoveEvidence={(evidenceId) => removeEvidence.mutateAsync(evidenceId)}
       onKeepDraft={(text) => keepDraft.mutateAsync(text)}
-      repetition={claim.certificate && <ClaimRepetition claimId={claim.id} />}
+      repetition={claim.outcome && claim.certificate && <ClaimRepetition claimId={claim.id} />}
     />
   )
 }

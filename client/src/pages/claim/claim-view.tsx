@@ -1,5 +1,6 @@
 import type { ReactNode } from 'react'
 import { claimHead, pageHead } from '../../../../shared/page-head.ts'
+import { METHOD_WORDS } from '../../../../shared/words.ts'
 import type { Claim } from '../../../../shared/schemas/claim.ts'
 import { paths } from '../../app/paths.ts'
 import { ErrorBudget } from '../../components/charts/error-budget.tsx'
@@ -124,7 +125,7 @@ function Loaded({ claim, done, mayReadRuns, onAct, onEdit, onDelete, onUpload, o
 /** What the claim rests on, part by part. */
 function ClaimMatter({ claim, mayReadRuns, onAct, onUpload, onRemoveEvidence, repetition }: Pick<LoadedProps, 'claim' | 'mayReadRuns' | 'onAct' | 'onUpload' | 'onRemoveEvidence' | 'repetition'>) {
   const { outcome, enclosure } = claim
-  const meeting = claim.rechecks.flatMap((recheck) => (recheck.enclosure ? [{ label: `recheck, ${recheck.method}, ${recheck.arithmetic}`, ...recheck.enclosure }] : []))
+  const meeting = claim.rechecks.flatMap((recheck) => (recheck.enclosure ? [{ label: `recheck, ${METHOD_WORDS[recheck.method]}, ${recheck.arithmetic}`, ...recheck.enclosure }] : []))
   return (
     <>
       {claim.state !== 'draft' && (

@@ -1,6 +1,6 @@
 import { constantHead, pageHead } from '../../../../shared/page-head.ts'
 import type { Constant } from '../../../../shared/schemas/constant.ts'
-import { METHOD_WORDS } from '../../../../shared/words.ts'
+import { CONFLICT_UNSEEN, METHOD_WORDS } from '../../../../shared/words.ts'
 import { paths } from '../../app/paths.ts'
 import { Narrowing } from '../../components/charts/narrowing.tsx'
 import { Nest } from '../../components/charts/nest.tsx'
@@ -64,6 +64,7 @@ export function ConstantView({ number, constant, error, onRetry, mayStart }: Con
           <TextLink to={paths.claim(conflict.claims[1])}>{conflict.claims[1]}</TextLink> have no number in common. At least one is wrong; both are shown until one is withdrawn.
         </Notice>
       ))}
+      {constant.inConflict && open.length === 0 && <Notice tone="refused" title="In conflict." className="mt-5">{CONFLICT_UNSEEN}</Notice>}
       {mayStart && (
         <div className="mt-5 flex flex-wrap gap-3 print:hidden">
           <ButtonLink to={paths.newRun({ constant: constant.number })}>New run of this constant</ButtonLink>

@@ -1,5 +1,5 @@
 import type { Claim } from '../../../../../shared/schemas/claim.ts'
-import { cautionWords, digitsWords } from '../../../../../shared/words.ts'
+import { cautionWords, CONFLICT_UNSEEN, digitsWords } from '../../../../../shared/words.ts'
 import { paths } from '../../../app/paths.ts'
 import { DigitLine } from '../../../components/digit-line/digit-line.tsx'
 import { EndsOnPaper } from '../../../components/digit-line/ends-on-paper.tsx'
@@ -29,6 +29,7 @@ export function ClaimSubject({ claim }: { claim: Claim }) {
               No number lies in both this enclosure and that of <TextLink to={paths.claim(conflict.claim)}>{conflict.claim}</TextLink>. At least one is wrong; both are shown until one is withdrawn.
             </Notice>
           ))}
+        {claim.inConflict && claim.conflicts.every(({ closedAt }) => closedAt !== null) && <Notice tone="refused" title="In conflict.">{CONFLICT_UNSEEN}</Notice>}
         {claim.kind === 'stated' && !claim.repeatedHere && (
           <Notice tone="undecided" title="Not repeated here.">
             The value is taken from its source{claim.statedValue ? `, printed there as ${claim.statedValue.digits} (${claim.statedValue.reading})` : ''}. No run of this installation meets it yet.

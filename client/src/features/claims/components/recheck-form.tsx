@@ -1,6 +1,8 @@
 import { z } from 'zod'
 import { arithmetic, method } from '../../../../../shared/schemas/run.ts'
 import type { Claim } from '../../../../../shared/schemas/claim.ts'
+import type { Method } from '../../../../../shared/engine/methods/computation.ts'
+import type { Definition } from '../../../../../shared/engine/sets/definition.ts'
 import { METHOD_WORDS } from '../../../../../shared/words.ts'
 import { Button } from '../../../components/ui/button.tsx'
 import { Field, Select, TextInput } from '../../../components/ui/field.tsx'
@@ -10,11 +12,19 @@ import type { DoAct } from '../queries.ts'
 
 const recheckForm = z.object({ method, arithmetic, digits: z.string().trim().regex(/^[1-9]\d{0,4}$/, 'Write a whole number of digits.') })
 
+/** The methods made for a kind of definition, the usual one first; whether one reaches the digits the server says. */
+function methodsFor(claim: Claim): readonly [Method, ...Method[]] {
+  const canonical = claim.definition.canonical as Definition
+  if (canonical.type !== 'series') return ['expansion']
+  return canonical.set.kind === 'finite' ? ['finite'] : ['transform', 'panels', 'partial-sum', 'derivatives']
+}
+
 /** Starts a recheck; by default the claim's own method with the other arithmetic. */
 export function RecheckForm({ claim, onAct }: { claim: Claim; onAct: DoAct }) {
+  const methods = methodsFor(claim)
   const { form, submit, errorAt, rootError, sending } = useApiForm(
     recheckForm,
-    { method: claim.run?.method ?? 'transform', arithmetic: claim.run?.arithmetic === 'ball' ? 'mpfr' : 'ball', digits: String(Math.max(1, claim.digits?.truncated ?? 20)) },
+    { method: claim.run?.method ?? methods[0], arithmetic: claim.run?.arithmetic === 'ball' ? 'mpfr' : 'ball', digits: String(Math.max(1, claim.digits?.truncated ?? 20)) },
     ({ digits, ...rest }) => onAct('recheck', { ...rest, digits: Number(digits) }),
   )
   return (
@@ -28,7 +38,7 @@ export function RecheckForm({ claim, onAct }: { claim: Claim; onAct: DoAct }) {
         <Field label="Method" error={errorAt('method')}>
           {(control) => (
             <Select {...control} {...form.register('method')}>
-              {method.options.map((name) => (
+              {methods.map((name) => (
                 <option key={name} value={name}>
                   {METHOD_WORDS[name]}
                 </option>
