@@ -141,7 +141,7 @@ export const VISITS: readonly Visit[] = [
 
 /** Files as large as they come. Nobody reads them while others wait for a list, so they are asked for one at a time, after the readers. */
 export const LARGE_FILES: readonly Visit[] = [
-  ...(['csv', 'json', 'bibtex', 'latex'] as const).map((format) => get('/constants/export', `10,000 rows, ${format}`, 'anyone', () => `/constants/export?format=${format}`)),
+  ...(['csv', 'json', 'bibtex', 'latex'] as const).map((format) => get('/constants/export', `the whole register, ${format}`, 'anyone', () => `/constants/export?format=${format}`)),
   get('/audit/export', 'all that a group has stated', 'audit.read', () => '/audit/export?act=constant.state&format=csv'),
 ]
 

@@ -1,6 +1,8 @@
 import { readFileSync } from 'node:fs'
 import { parseArgs } from 'node:util'
+import { ONE, parseRational } from '../../shared/engine/arithmetic/rational.ts'
 import { hasValidSignature } from '../../shared/engine/certificate/signature.ts'
+import { goalText, serves } from '../../shared/engine/methods/goal.ts'
 import { readDefinition } from '../../shared/engine/sets/typeset.ts'
 import { readCertificate } from '../../shared/schemas/certificate.ts'
 import { readEngineRelease } from '../engine-release.ts'
@@ -45,6 +47,7 @@ async function main(): Promise<number> {
   console.log(readDefinition(certificate.definition).text)
   console.log(`  in [${certificate.enclosure.lo}, ${certificate.enclosure.hi}]`)
   for (const finding of findings) console.log(`  ${finding}`)
+  if (!serves(certificate.goal, parseRational(certificate.radius) ?? ONE)) console.log(`  It is wider than was asked for: ${goalText(certificate.goal)}.`)
   if (!sameEngine) console.log('  It was made by another release of the engine than this one.')
   if (certificate.signature && key === undefined) console.log('  It is signed; give the public key by --key to check the signature.')
   console.log(holds ? 'holds: the enclosure repeats to the last digit' : 'does not hold')

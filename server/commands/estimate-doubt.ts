@@ -85,7 +85,7 @@ async function tellAll(transaction: Transaction, member: SignedInMember, estimat
   for (const claim of falling) note(claim.author_id, named(claim), 'suspended')
   for (const claim of waiting) note(claim.author_id, named(claim), 'waits')
   for (const { number, ordinal, text, member_id: person, part } of await othersTouched(ids(falling), ids(waiting), transaction)) {
-    note(person, { number: numberOfClaim({ number, ordinal }), constant: text }, part === 'referee' ? 'reviewed' : 'rests-on-it')
+    note(person, { number: numberOfClaim({ number, ordinal }), constant: text }, part)
   }
   const about = { by: member.name, group: member.groupName, estimate: estimate.id, title: printedText(estimate.title), reason }
   for (const [memberId, items] of letters) await queueMail(transaction, 'estimate-in-doubt', { memberId }, { ...about, items: [...items.values()] }, { groupId: member.groupId })

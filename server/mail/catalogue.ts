@@ -17,7 +17,7 @@ export interface MailData {
   /** `touched`: numbers of what rests on it. */
   'claim-suspended': ClaimMail & { by: string; reason: string; touched: string[] }
   /** To everybody whose claims or reviews an estimate in doubt touches: one mail with all of them. */
-  'estimate-in-doubt': { by: string; group: string; estimate: string; title: string; reason: string; items: { number: string; constant: string; touched: 'suspended' | 'waits' | 'reviewed' | 'rests-on-it' }[] }
+  'estimate-in-doubt': { by: string; group: string; estimate: string; title: string; reason: string; items: { number: string; constant: string; touched: 'suspended' | 'waits' | 'reviewed' | 'refereed' | 'rests-on-it' }[] }
   'claim-withdrawn': ClaimMail & { by: string; reason: string }
   /** What waits for this person, and for how many days. */
   reminder: { name: string; items: { number: string; what: string; days: number; path: string }[] }

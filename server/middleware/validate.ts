@@ -1,5 +1,5 @@
 import type { Request, RequestHandler } from 'express'
-import type { z } from 'zod'
+import { z } from 'zod'
 import { invalid, type FieldError } from '../errors.ts'
 import { fieldErrors } from './field-errors.ts'
 
@@ -31,11 +31,18 @@ export function validate(schemas: RequestSchemas): RequestHandler & { schemas: R
         errors.push(...unkeepable(parsed.data))
       } else if (parsed) errors.push(...fieldErrors(parsed.error))
     }
+    errors.push(...unknownIn(schemas.query, req.query))
     if (errors.length > 0) throw invalid(errors)
     req.input = input
     next()
   }
   return Object.assign(check, { schemas })
+}
+
+/** What an address asks for besides what it may: a misspelt filter that is passed over would look like a result. */
+function unknownIn(schema: z.ZodType | undefined, query: Request['query']): FieldError[] {
+  if (!(schema instanceof z.ZodObject)) return []
+  return Object.keys(query).filter((name) => !Object.hasOwn(schema.shape, name)).map((name) => ({ path: name, message: 'is nothing that can be asked for here' }))
 }
 
 /** Texts with a zero character or half a surrogate pair, which PostgreSQL cannot keep. */

@@ -48,7 +48,7 @@ export async function estimatePage(id: string): Promise<PageContent> {
       <h2>What was checked</h2><p>${printed(estimate.checked)}</p>
       <h2>Signed claims that rest on it</h2>
       ${estimate.usedBy.length === 0
-        ? html`<p>No signed claim uses it yet.</p>`
+        ? html`<p>No claim in force rests on it.</p>`
         : html`<ul>${estimate.usedBy.map(({ claimNumber, usedAt }) => html`<li>${claimLink(claimNumber)}, used at ${printed(usedAt)}</li>`)}</ul>`}`),
   }
 }

@@ -28,14 +28,20 @@ interface Writer {
 /** Under which name and as what a file is sent. */
 export const exportFile = (format: ExportFormat): { type: string; name: string } => ({ type: TYPES[format].type, name: `merestone-register.${TYPES[format].extension}` })
 
-/** Rows that are written in one go. */
-const PIECE = 200
+type Pages = AsyncGenerator<ConstantRow[], void>
 
-/** The register's rows as a file, piece by piece. Every number is rounded outward where it is not whole. */
-export function* exportConstants(rows: readonly ConstantRow[], format: ExportFormat): Generator<string> {
+/** The register's rows as a file, a piece for each page of rows, the first of which is there. Every number is rounded outward where it is not whole. */
+export async function* exportConstants(first: Awaited<ReturnType<Pages['next']>>, rest: Pages, format: ExportFormat): AsyncGenerator<string, void> {
   const { head, row, tail } = WRITERS[format]
   yield head
-  for (let from = 0; from < rows.length; from += PIECE) yield rows.slice(from, from + PIECE).map((one, index) => row(one, from + index === 0)).join('')
+  let isFirst = true
+  for (let page = first; !page.done; page = await rest.next()) {
+    yield page.value.map((one) => {
+      const written = row(one, isFirst)
+      isFirst = false
+      return written
+    }).join('')
+  }
   yield tail
 }
 

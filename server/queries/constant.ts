@@ -111,7 +111,8 @@ async function narrow(reader: Reader, { words, digits }: TextQuery, add: (condit
     const ids = (await select<{ id: string }>(`${found} LIMIT ${MOST_NARROWED + 1}`, values)).map(({ id }) => id)
     if (ids.length <= MOST_NARROWED) {
       matched = 'few'
-      return add(`e.constant_id = ANY ($${name}::uuid[])`, { [name]: ids })
+      // A row each: of a long list of values the planner would look at every one.
+      return add(`e.constant_id IN (SELECT unnest($${name}::uuid[]))`, { [name]: ids })
     }
     matched ??= 'many'
     add(walked, values)
@@ -123,7 +124,7 @@ async function narrow(reader: Reader, { words, digits }: TextQuery, add: (condit
   }
   if (words.length > 0) {
     const has = `SELECT id FROM constants WHERE search @@ to_tsquery('simple', $words)`
-    await narrowBy('wordIds', `${has} ORDER BY number`, `e.constant_id IN (${has})`, { words: words.map((word) => `${word}:*`).join(' & ') })
+    await narrowBy('wordIds', has, `e.constant_id IN (${has})`, { words: words.map((word) => `${word}:*`).join(' & ') })
   }
   return matched
 }
@@ -189,11 +190,17 @@ const COUNT_FOUND = 'e.found'
 /** The whole register, as the database counts it. */
 const COUNT_ALL = 'SELECT entries FROM register_counts WHERE audience = $audience'
 
-/** Every row of a query, for an export, up to `most`. */
-export async function allConstants(reader: Reader, query: ConstantQuery, most: number): Promise<ConstantRow[]> {
-  const { where, bind } = await registerFilter(reader, query)
-  const [key] = sorting(query)
-  return select<ConstantRow>(rowsSql(reader, { key, order: query.order, conditions: where, limit: '$most' }), { ...bind, most })
+/** Rows of an export that are read at once. */
+const ROWS_AT_ONCE = 500
+
+/** Every row of a query, page by page, for an export. */
+export async function* allConstants(reader: Reader, query: ConstantQuery, limit = ROWS_AT_ONCE): AsyncGenerator<ConstantRow[], void> {
+  let cursor: string | undefined
+  do {
+    const { rows, next }: { rows: ConstantRow[]; next: string | null } = await listConstants(reader, { ...query, limit, ...(cursor !== undefined && { cursor }) })
+    yield rows
+    cursor = next ?? undefined
+  } while (cursor !== undefined)
 }
 
 /** One constant as this reader sees it. */

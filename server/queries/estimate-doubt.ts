@@ -127,17 +127,22 @@ export interface OtherRow {
   ordinal: number
   text: string
   member_id: string
-  part: 'referee' | 'author'
+  part: 'reviewed' | 'refereed' | 'rests-on-it'
 }
 
-/** Who is to hear of a doubt beside the authors of a group's claims: referees of what waits, authors elsewhere of orders that rest on what falls. */
+/**
+ * Who is to hear of a doubt beside the authors of a group's claims: referees of what waits, those who have said their word on what falls, and
+ * authors elsewhere of orders that rest on it.
+ */
 export const othersTouched = (fallen: readonly string[], waiting: readonly string[], transaction: Transaction): Promise<OtherRow[]> =>
   select(
     `SELECT k.number, c.ordinal, ${ABOUT} AS text, touched.member_id, touched.part
      FROM (
-       SELECT s.claim_id, s.referee_id AS member_id, 'referee' AS part FROM assignments s WHERE s.claim_id = ANY ($waiting::uuid[]) AND s.state <> 'declined'
+       SELECT s.claim_id, s.referee_id AS member_id, 'reviewed' AS part FROM assignments s WHERE s.claim_id = ANY ($waiting::uuid[]) AND s.state <> 'declined'
        UNION
-       SELECT o.id, o.author_id, 'author' FROM claims o CROSS JOIN LATERAL jsonb_array_elements((o.basis->'lesser'->'claims') || (o.basis->'greater'->'claims')) AS side (claim)
+       SELECT s.claim_id, s.referee_id, 'refereed' FROM assignments s WHERE s.claim_id = ANY ($fallen::uuid[]) AND s.state <> 'declined' AND s.verdict IS NOT NULL
+       UNION
+       SELECT o.id, o.author_id, 'rests-on-it' FROM claims o CROSS JOIN LATERAL jsonb_array_elements((o.basis->'lesser'->'claims') || (o.basis->'greater'->'claims')) AS side (claim)
        WHERE o.kind = 'order' AND o.state NOT IN ('draft', 'withdrawn') AND (side.claim->>'id')::uuid = ANY ($fallen::uuid[])) touched
      JOIN claims c ON c.id = touched.claim_id JOIN constants k ON k.id = c.constant_id LEFT JOIN constants g ON g.id = c.other_constant_id ORDER BY k.number, c.ordinal, touched.member_id`,
     { fallen, waiting },

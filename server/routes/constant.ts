@@ -1,4 +1,5 @@
-import { setImmediate as nextTurn } from 'node:timers/promises'
+import { Readable } from 'node:stream'
+import { pipeline } from 'node:stream/promises'
 import { Router } from 'express'
 import { z } from 'zod'
 import { parseConstantNumber } from '../../shared/constant-number.ts'
@@ -18,9 +19,6 @@ import { constantDetail } from '../queries/constant-page.ts'
 /** The register: open to everybody, each to what is open to them. */
 export const constant = Router()
 
-/** Most constants in one export. */
-const MOST_EXPORTED = 10_000
-
 const list = { query: constantQuery }
 const file = { query: constantExportQuery }
 const creation = { body: constantInput }
@@ -33,15 +31,15 @@ constant.get('/', validate(list), async (req: Validated<typeof list>, res) => {
 
 constant.get('/export', validate(file), async (req: Validated<typeof file>, res) => {
   const { format, ...query } = req.input
-  const rows = await allConstants(req.reader, query, MOST_EXPORTED)
+  const pages = allConstants(req.reader, query)
+  // A filter that makes no sense is refused before anything is sent.
+  const first = await pages.next()
   const { type, name } = exportFile(format)
   res.set({ 'Content-Type': type, 'Content-Disposition': `attachment; filename="${name}"`, 'Cache-Control': 'no-cache' })
-  for (const piece of exportConstants(rows, format)) {
-    res.write(piece)
-    // Others are answered in between.
-    await nextTurn()
-  }
-  res.end()
+  await pipeline(Readable.from(exportConstants(first, pages, format)), res).catch((error: NodeJS.ErrnoException) => {
+    // Whoever does not want the rest of the file goes away.
+    if (error.code !== 'ERR_STREAM_PREMATURE_CLOSE') throw error
+  })
 })
 
 constant.post('/', signedInFor('draft'), may('research'), validate(creation), async (req: Validated<typeof creation>, res) => {

@@ -1,6 +1,8 @@
 import request from 'supertest'
 import { beforeAll, describe, expect, it } from 'vitest'
 import { createApp } from '../../server/app.ts'
+import { allConstants } from '../../server/queries/constant.ts'
+import { constantQuery } from '../../shared/schemas/constant.ts'
 import { select } from '../../server/db.ts'
 import { makeGroup, makeMember, signedInAs, type Agent, type TestMember } from '../support/people.ts'
 import { makeClaim, makeConstant, series } from '../support/register.ts'
@@ -247,6 +249,22 @@ describe('the register', () => {
     const { body } = await agent.get(`/api/v1/constants?limit=2&group=${member.groupId}`)
     expect(body.total).toBe(6)
     expect((await agent.get(`/api/v1/constants?limit=2&group=${member.groupId}&cursor=${encodeURIComponent(body.next)}`)).body.total).toBeUndefined()
+  })
+
+  it('goes through everything that is filtered, in order, however many pages it takes', async () => {
+    for (const sort of ['number', 'value', 'changed'] as const) {
+      const query = constantQuery.parse({ group: member.groupId, sort, order: 'desc' })
+      const pages = async (limit: number) => {
+        const found: number[][] = []
+        for await (const rows of allConstants(undefined, query, limit)) found.push(rows.map(({ number }) => number))
+        return found
+      }
+      const [whole] = await pages(100)
+      const inTwos = await pages(2)
+      expect(whole!.length).toBeGreaterThan(2)
+      expect(inTwos).toHaveLength(Math.ceil(whole!.length / 2))
+      expect(inTwos.flat()).toEqual(whole)
+    }
   })
 
   it('exports what is filtered, digits outward', async () => {

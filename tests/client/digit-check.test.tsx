@@ -41,6 +41,12 @@ describe('printed groups', () => {
     const checked = checkText(text, 'truncated', PRIMES.lo, PRIMES.hi)
     return checked.kind === 'checked' ? printedGroups(checked.result) : null
   }
+  test('the first wrong digit is refuted where it stands, though it is possible alone', () => {
+    // Of numbers from 1.49 to 1.51 the third digit can be 9, but not after 1.5.
+    const checked = checkDigits({ negative: false, integer: '1', fraction: '59', uncertainty: null } as Parameters<typeof checkDigits>[0], 'truncated', '1.49', '1.51')
+    expect(checked.firstWrong).toBe(2)
+    expect(printedGroups(checked).flat().map(({ digits, verdict, firstWrong }) => [digits, verdict, firstWrong])).toEqual([['1', 'confirmed', false], ['5', 'undecided', false], ['9', 'refuted', true]])
+  })
   test('groups of five after the point, cut where the verdict changes', () => {
     expect(groupsOf('1.63661 64')?.map((group) => group.map(({ digits, verdict }) => `${digits} ${verdict}`))).toEqual([
       ['1 confirmed'], ['63661 confirmed'], ['6 confirmed', '4 refuted'],

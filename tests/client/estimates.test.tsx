@@ -101,6 +101,6 @@ describe('one estimate', () => {
   test('a conditional one says so before anything else', () => {
     render(<MemoryRouter><EstimateView estimate={have(all[1] as Estimate)} /></MemoryRouter>)
     expect(screen.getByText('Conditional.')).toBeInTheDocument()
-    expect(screen.getByText('No signed claim uses it yet.')).toBeInTheDocument()
+    expect(screen.getByText('No claim in force rests on it.')).toBeInTheDocument()
   })
 })

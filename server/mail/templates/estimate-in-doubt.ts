@@ -7,6 +7,7 @@ const TOUCHED: Record<Data['items'][number]['touched'], string> = {
   suspended: 'your claim is suspended',
   waits: 'your claim can be neither endorsed nor signed while the doubt stands',
   reviewed: 'you referee it; it can be neither endorsed nor signed while the doubt stands',
+  refereed: 'which you refereed, is suspended',
   'rests-on-it': 'your order rests on an enclosure that is suspended',
 }
 

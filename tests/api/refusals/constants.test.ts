@@ -7,6 +7,17 @@ import { series } from '../../support/register.ts'
 
 const app = createApp()
 
+describe('a list is refused', () => {
+  it.each([
+    ['/constants?kind=primes', 'kind'],
+    ['/constants/export?format=csv&sett=primes', 'sett'],
+    ['/claims?states=signed', 'states'],
+  ])('where the address asks for what there is not: %s', async (path, field) => {
+    const { body } = await request(app).get(`/api/v1${path}`).expect(400)
+    expect(body.fields).toEqual([{ path: field, message: 'is nothing that can be asked for here' }])
+  })
+})
+
 describe('stating a constant is refused', () => {
   let agent: Agent
   beforeAll(async () => {

@@ -84,7 +84,9 @@ export function printedGroups({ digits, sign, firstWrong }: DigitCheckResult): D
   const groups: DigitRun[][] = []
   // Where the sign is wrong already, the fault is pointed at there.
   const faultyPlace = sign === 'refuted' ? null : firstWrong
-  for (const { digit, place, verdict } of digits) {
+  for (const { digit, place, verdict: alone } of digits) {
+    // A digit that is possible alone can be impossible after those before it.
+    const verdict = place === faultyPlace ? 'refuted' : alone
     const opensGroup = groups.length === 0 || (place >= 1 && (place - 1) % 5 === 0)
     if (opensGroup) groups.push([])
     const group = groups[groups.length - 1] as DigitRun[]

@@ -4,7 +4,7 @@ import { ApiError } from '../../lib/errors.ts'
 import type { Choice } from './components/forecast-table.tsx'
 import type { PlanInput } from './queries.ts'
 import { fieldOf, readRunForm } from './run-form.ts'
-import type { FieldMessages, RunFormValues } from './run-form.ts'
+import type { FieldMessages, RunField, RunFormValues } from './run-form.ts'
 
 /** Typing is over when nothing has changed for this many milliseconds; then the forecast is asked for. */
 const SETTLE = 350
@@ -35,7 +35,8 @@ export function useNewRun(initial: RunFormValues) {
     read: () => reading.input,
     /** What is wrong at the fields: what can't be read here, then what the server refuses of what it was last asked. */
     errorsWith: (refusal: unknown): FieldMessages => {
-      if (reading.errors) return reading.errors
+      // What is not filled in yet is not wrong, and needs no words.
+      if (reading.errors) return Object.fromEntries(Object.entries(reading.errors).map(([field, message]) => [field, values[field as RunField] === '' ? '' : message]))
       if (!(refusal instanceof ApiError) || text !== settledText) return {}
       const errors: FieldMessages = {}
       for (const { path, message } of refusal.fields) {

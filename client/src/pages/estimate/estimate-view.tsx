@@ -65,7 +65,7 @@ function EstimateBody({ estimate, forLead }: { estimate: Estimate; forLead: Reac
         beside={estimate.uses > estimate.usedBy.length && `the latest ${estimate.usedBy.length} of ${estimate.uses}`}
       >
         {estimate.usedBy.length === 0 ? (
-          <Empty title={estimate.state === 'in-doubt' ? 'No signed claim rests on it at present.' : 'No signed claim uses it yet.'}>
+          <Empty title="No claim in force rests on it.">
             <p>When a claim is signed whose certificate uses this estimate, it is listed here with the point at which the estimate was used.</p>
           </Empty>
         ) : (
