@@ -4,7 +4,7 @@ import { hasRight, type Role } from '../../shared/permissions.ts'
 import { pick, type Roll } from './load-definitions.ts'
 import type { Facts } from './load-facts.ts'
 import { PASSWORD, type LoadGroup, type LoadMember } from './load-people.ts'
-import { DEEP_LISTS, LARGE_FILES, VISITS, type Asked, type Own, type Visit } from './load-visits.ts'
+import { DEEP_LISTS, EXPORTS, VISITS, type Asked, type Own, type Visit } from './load-visits.ts'
 
 interface Reader {
   cookie: string
@@ -53,7 +53,7 @@ function send(address: string, cookie: string, { path, body }: Asked): Promise<A
 /** Half of the readers have no account; the others are members of all roles and of every group in turn. */
 export async function gatherCrowd(address: string, facts: Facts, groups: readonly LoadGroup[], count: number, deep: number): Promise<Crowd> {
   const members = Array.from({ length: Math.floor(count / 2) }, (_, index) => groups[index % groups.length]!.members[Math.floor(index / groups.length) + (index % 2 === 0 ? 0 : 4)]!)
-  const crowd: Crowd = { address, facts, readers: [], measured: new Map([...VISITS, ...LARGE_FILES].map((visit) => [visit, { visit, milliseconds: [] }])), faults: [] }
+  const crowd: Crowd = { address, facts, readers: [], measured: new Map([...VISITS, ...EXPORTS].map((visit) => [visit, { visit, milliseconds: [] }])), faults: [] }
   const anonymous: Reader = { cookie: '', roles: undefined, own: { name: '', runs: [], claims: [], cursors: new Map() } }
   await findDeepPages(crowd, anonymous, deep)
   crowd.readers = await Promise.all(members.map((member) => signIn(crowd, member, deep)))

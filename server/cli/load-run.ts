@@ -8,7 +8,7 @@ import { gatherFacts, type Facts } from './load-facts.ts'
 import type { LoadGroup } from './load-people.ts'
 import { checkPlansOf, listenToStatements, type PlanCheck, type Statement } from './load-plans.ts'
 import { askOnce, gatherCrowd } from './load-readers.ts'
-import { LARGE_FILES, VISITS } from './load-visits.ts'
+import { EXPORTS, VISITS } from './load-visits.ts'
 
 /** What readers ask for, an invitation that stays open among it. */
 export async function prepareFacts(groups: readonly LoadGroup[]): Promise<Facts> {
@@ -33,7 +33,7 @@ export async function checkPlans(facts: Facts, groups: readonly LoadGroup[], { r
     const crowd = await gatherCrowd(`http://127.0.0.1:${(server.address() as AddressInfo).port}`, facts, groups, readers, deep)
     ear.heard()
     const sent: [string, Statement[]][] = []
-    await askOnce(crowd, [...VISITS, ...LARGE_FILES], roll, ({ route, what }) => sent.push([`${route}, ${what},`, ear.heard()]))
+    await askOnce(crowd, [...VISITS, ...EXPORTS], roll, ({ route, what }) => sent.push([`${route}, ${what},`, ear.heard()]))
     ear.stop()
     const { statements, faults } = await checkPlansOf(sent, { evenSmall })
     return { statements, faults: [...crowd.faults, ...faults] }

@@ -85,6 +85,12 @@ const someWeek = (roll: Roll): string => {
   return `from=${month}-01T00:00:00Z&to=${month}-08T00:00:00Z`
 }
 
+/** Pages of one thing, made of many questions, and what a page of a member begins with: no lists, filters or look-ups. */
+export const PAGES: ReadonlySet<string> = new Set([
+  'GET /constants/:number', 'GET /claims/:id', 'GET /claims/:id/certificate', 'GET /evidence/:id', 'GET /estimates/:id', 'GET /estimates/:id/doubt', 'GET /runs/:id',
+  'GET /runs/:id/events', 'GET /runs/:id/certificate', 'GET /invitations/accept/:token', 'GET /group', 'GET /account', 'GET /session', 'GET /desk',
+])
+
 /** Every list, filter, page and look-up that the routes offer. */
 export const VISITS: readonly Visit[] = [
   ...REGISTER.map(([what, query]) => get('/constants', what, 'anyone', (facts, _own, roll) => `/constants?${typeof query === 'string' ? query : query(facts, roll)}`)),
@@ -135,13 +141,15 @@ export const VISITS: readonly Visit[] = [
   get('/audit', 'text: a number', 'audit.read', ({ claims }, _own, roll) => `/audit?text=${pick(roll, claims).slice(0, -2)}`),
   get('/audit', 'text: a name', 'audit.read', (_facts, { name }) => `/audit?text=${encodeURIComponent(name)}`),
   get('/audit', 'text: nothing fits', 'audit.read', () => '/audit?text=unheard+of'),
-  ...(['csv', 'json', 'bibtex', 'latex'] as const).map((format) => get('/constants/export', `some hundred rows, ${format}`, 'anyone', (_facts, _own, roll) => `/constants/export?format=${format}&set=squarefree-almost-primes&k=${2 + roll(11)}&minDigits=40`)),
-  get('/audit/export', 'a week', 'audit.read', (_facts, _own, roll) => `/audit/export?${someWeek(roll)}&format=${pick(roll, ['csv', 'jsonl'])}`),
 ]
 
-/** Files as large as they come. Nobody reads them while others wait for a list, so they are asked for one at a time, after the readers. */
-export const LARGE_FILES: readonly Visit[] = [
-  ...(['csv', 'json', 'bibtex', 'latex'] as const).map((format) => get('/constants/export', `the whole register, ${format}`, 'anyone', () => `/constants/export?format=${format}`)),
+const FORMATS = ['csv', 'json', 'bibtex', 'latex'] as const
+
+/** Exports, which are sent page by page between the answers to others, and have no end to wait for with a finger on the key: asked for one at a time, after the readers. */
+export const EXPORTS: readonly Visit[] = [
+  ...FORMATS.map((format) => get('/constants/export', `some hundred rows, ${format}`, 'anyone', (_facts, _own, roll) => `/constants/export?format=${format}&set=squarefree-almost-primes&k=${2 + roll(11)}&minDigits=40`)),
+  get('/audit/export', 'a week', 'audit.read', (_facts, _own, roll) => `/audit/export?${someWeek(roll)}&format=${pick(roll, ['csv', 'jsonl'])}`),
+  ...FORMATS.map((format) => get('/constants/export', `the whole register, ${format}`, 'anyone', () => `/constants/export?format=${format}`)),
   get('/audit/export', 'all that a group has stated', 'audit.read', () => '/audit/export?act=constant.state&format=csv'),
 ]
 

@@ -22,7 +22,7 @@ if (!constants || !readers || !seconds || think === undefined || seed === undefi
 }
 
 const GROUPS = 6
-/** How often each of the large files is asked for. */
+/** How often each export is asked for. */
 const ROUNDS = 3
 /** Rows before a list's deep page. */
 const DEEP = 2_000
@@ -35,7 +35,7 @@ try {
   const { fill, withoutIndexes } = await import('./load-fill.ts')
   const { checkPlans, prepareFacts } = await import('./load-run.ts')
   const { askOnce, gatherCrowd, letRead, measuredOf, resetMeasured } = await import('./load-readers.ts')
-  const { LARGE_FILES, VISITS } = await import('./load-visits.ts')
+  const { EXPORTS, VISITS } = await import('./load-visits.ts')
   const { linesOf, table, together, tooSlow } = await import('./load-report.ts')
 
   const groups = await makePeople(GROUPS)
@@ -52,14 +52,14 @@ try {
   resetMeasured(crowd)
   say(`${readers} readers at once, ${think === 0 ? 'each asking again as soon as it is answered' : `each thinking ${think} ms on average`}; load of the machine before: ${loadavg()[0]!.toFixed(1)} on ${cpus().length} cores`)
   const elapsed = await letRead(crowd, seconds, think, dice(seed + 1))
-  for (let round = 0; round < ROUNDS; round += 1) await askOnce(crowd, LARGE_FILES, dice(seed))
+  for (let round = 0; round < ROUNDS; round += 1) await askOnce(crowd, EXPORTS, dice(seed))
   await end(web.child, 'SIGTERM')
 
   const measured = measuredOf(crowd, VISITS)
   const lines = [...linesOf(measured), together(measured)]
   const { requests } = lines.at(-1)!
   console.log(`\n${table(lines)}\n\n${requests} requests in ${elapsed.toFixed(0)} s (${(requests / elapsed).toFixed(0)} a second)`)
-  console.log(`\nLarge files, one at a time after the readers:\n${table(linesOf(measuredOf(crowd, LARGE_FILES)))}\n`)
+  console.log(`\nExports, one at a time after the readers:\n${table(linesOf(measuredOf(crowd, EXPORTS)))}\n`)
   const faults = [...plans.faults, ...crowd.faults, ...tooSlow(lines).map(({ name }) => `too slow: ${name}`)]
   for (const fault of faults.slice(0, 50)) console.log(`FAULT ${fault}`)
   console.log(faults.length === 0 ? 'Everything in time, by indexes.' : `${faults.length} faults.`)

@@ -107,12 +107,13 @@ function textFilter(asked: TextQuery, add: (condition: string, values: Bind) => 
  */
 async function narrow(reader: Reader, { words, digits }: TextQuery, add: (condition: string, values: Bind) => void): Promise<Filter['matched']> {
   let matched: Filter['matched'] = null
-  const narrowBy = async (name: string, found: string, walked: string, values: Bind): Promise<void> => {
-    const ids = (await select<{ id: string }>(`${found} LIMIT ${MOST_NARROWED + 1}`, values)).map(({ id }) => id)
-    if (ids.length <= MOST_NARROWED) {
+  const finds: Promise<void>[] = []
+  const narrowBy = async (name: keyof typeof MOST_NARROWED, found: string, walked: string, values: Bind): Promise<void> => {
+    const ids = (await select<{ id: string }>(`${found} LIMIT ${MOST_NARROWED[name] + 1}`, values)).map(({ id }) => id)
+    if (ids.length <= MOST_NARROWED[name]) {
       matched = 'few'
       // A row each: of a long list of values the planner would look at every one.
-      return add(`e.constant_id IN (SELECT unnest($${name}::uuid[]))`, { [name]: ids })
+      return add(`e.constant_id IN (SELECT unnest($${name}Found::uuid[]))`, { [`${name}Found`]: ids })
     }
     matched ??= 'many'
     add(walked, values)
@@ -120,12 +121,13 @@ async function narrow(reader: Reader, { words, digits }: TextQuery, add: (condit
   if (digits !== undefined) {
     const [lo, hi] = leadingDigits(digits)
     const meets = MEETS('$digitsLo', '$digitsHi')
-    await narrowBy('digitIds', `SELECT constant_id AS id FROM register_entries WHERE audience = $audience AND ${meets}`, meets, { audience: audienceOf(reader), digitsLo: lo, digitsHi: hi })
+    finds.push(narrowBy('digits', `SELECT constant_id AS id FROM register_entries WHERE audience = $audience AND ${meets}`, meets, { audience: audienceOf(reader), digitsLo: lo, digitsHi: hi }))
   }
   if (words.length > 0) {
     const has = `SELECT id FROM constants WHERE search @@ to_tsquery('simple', $words)`
-    await narrowBy('wordIds', has, `e.constant_id IN (${has})`, { words: words.map((word) => `${word}:*`).join(' & ') })
+    finds.push(narrowBy('words', has, `e.constant_id IN (${has})`, { words: words.map((word) => `${word}:*`).join(' & ') }))
   }
+  await Promise.all(finds)
   return matched
 }
 
@@ -150,6 +152,7 @@ function sorting({ sort, order }: ConstantQuery): [key: string, type: string] {
 export async function listConstants(
   reader: Reader,
   { cursor, limit, ...query }: z.output<typeof constantQuery>,
+  counted: boolean = cursor === undefined,
 ): Promise<{ rows: ConstantRow[]; next: string | null; total?: number }> {
   const { where, bind, matched } = await registerFilter(reader, query)
   const mark = { list: 'constants', audience: audienceOf(reader), state: stateColumn(reader), ...query }
@@ -163,21 +166,21 @@ export async function listConstants(
     Object.assign(bind, query.sort === 'value' ? { afterNumber: number } : { after, afterNumber: number })
   }
   // Few are all found anyway; of a filter that very many fit a bounded count would cost more than the page.
-  const total = cursor !== undefined || matched === 'many' ? null : matched === 'few' ? COUNT_FOUND : where.length === 1 ? COUNT_ALL : countSql(where)
+  const total = !counted || matched === 'many' ? null : matched === 'few' ? COUNT_FOUND : where.length === 1 ? COUNT_ALL : countSql(where)
   const rows = await select<ConstantRow & { total: number }>(
     rowsSql(reader, { key, order: query.order, conditions, limit: '$limit', total }),
     { ...bind, limit: limit + 1 },
   )
-  const counted = rows[0]?.total ?? 0
-  const known = total === COUNT_FOUND || total === COUNT_ALL || (total !== null && counted <= MOST_COUNTED)
+  const count = rows[0]?.total ?? 0
+  const known = total === COUNT_FOUND || total === COUNT_ALL || (total !== null && count <= MOST_COUNTED)
   const page = rows.slice(0, limit)
   const last = page.at(-1)
   const after: CursorKey | null = rows.length > limit && last ? [query.sort === 'value' ? null : last.sort_key, last.number] : null
-  return { rows: page, next: after && writeCursor(mark, after), ...(known && { total: counted }) }
+  return { rows: page, next: after && writeCursor(mark, after), ...(known && { total: count }) }
 }
 
 /** Most constants with some words or digits that a query is narrowed to. */
-const MOST_NARROWED = 1_000
+const MOST_NARROWED = { digits: 1_000, words: 2_000 }
 
 /** Most that is counted of a filtered list, so that counting never costs more than listing. */
 const MOST_COUNTED = 300
@@ -197,7 +200,7 @@ const ROWS_AT_ONCE = 500
 export async function* allConstants(reader: Reader, query: ConstantQuery, limit = ROWS_AT_ONCE): AsyncGenerator<ConstantRow[], void> {
   let cursor: string | undefined
   do {
-    const { rows, next }: { rows: ConstantRow[]; next: string | null } = await listConstants(reader, { ...query, limit, ...(cursor !== undefined && { cursor }) })
+    const { rows, next }: { rows: ConstantRow[]; next: string | null } = await listConstants(reader, { ...query, limit, ...(cursor !== undefined && { cursor }) }, false)
     yield rows
     cursor = next ?? undefined
   } while (cursor !== undefined)

@@ -11,7 +11,7 @@ import { checkPlansOf } from '../../server/cli/load-plans.ts'
 import { askOnce, gatherCrowd, letRead, measuredOf, type Crowd } from '../../server/cli/load-readers.ts'
 import { linesOf, table, together, tooSlow } from '../../server/cli/load-report.ts'
 import { checkPlans, prepareFacts } from '../../server/cli/load-run.ts'
-import { LARGE_FILES, LEFT_OUT, VISITS } from '../../server/cli/load-visits.ts'
+import { EXPORTS, LEFT_OUT, VISITS } from '../../server/cli/load-visits.ts'
 import { refreshBest } from '../../server/commands/constant-best.ts'
 import { inTransaction, select } from '../../server/db.ts'
 import { operationsOf } from '../../server/openapi/operations.ts'
@@ -65,13 +65,13 @@ describe('the database of a load run', () => {
 describe('the readers', () => {
   it('ask every route that reads, but for those that say why not', () => {
     const routes = operationsOf(RESOURCES).filter(({ method }) => method === 'get').map(({ path }) => `GET ${path}`)
-    const asked = new Set([...VISITS.map(({ route }) => route), ...Object.keys(LEFT_OUT)])
+    const asked = new Set([...[...VISITS, ...EXPORTS].map(({ route }) => route), ...Object.keys(LEFT_OUT)])
     expect(routes.filter((route) => !asked.has(route))).toEqual([])
     expect([...asked].filter((route) => route.startsWith('GET') && !routes.includes(route))).toEqual([])
   })
 
   it('are answered, each way of asking, and go on asking until the time is over', async () => {
-    await askOnce(crowd, [...VISITS, ...LARGE_FILES], dice(7))
+    await askOnce(crowd, [...VISITS, ...EXPORTS], dice(7))
     await letRead(crowd, 2, 0, dice(8))
     expect(crowd.faults).toEqual([])
     const lines = linesOf(crowd.measured.values())
