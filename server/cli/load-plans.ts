@@ -11,6 +11,7 @@ export interface Statement {
 interface Node {
   'Node Type': string
   'Relation Name'?: string
+  'Total Cost': number
   Plans?: Node[]
 }
 
@@ -42,8 +43,14 @@ export function listenToStatements(): { heard: () => Statement[]; stop: () => vo
   }
 }
 
+/** A limit is expected to end the scan below it within a tenth of the table. */
+function endsEarly({ 'Node Type': type, 'Total Cost': cost, Plans: [below] = [] }: Node): boolean {
+  return type === 'Limit' && below !== undefined && below['Node Type'] === 'Seq Scan' && cost < below['Total Cost'] / 10
+}
+
 /** Names of the tables that a plan reads from end to end. */
 function fullScans(node: Node): string[] {
+  if (endsEarly(node)) return []
   const own = node['Node Type'].endsWith('Seq Scan') && node['Relation Name'] !== undefined ? [node['Relation Name']] : []
   return [...own, ...(node.Plans ?? []).flatMap(fullScans)]
 }
