@@ -101,34 +101,45 @@ function textFilter(asked: TextQuery, add: (condition: string, values: Bind) => 
   if (asked.exclude) add('e.exclude = $textExclude', { textExclude: asked.exclude.join(',') })
 }
 
+/** Words that many constants have, as they were found to be: constants are only ever added, so that they stay many. */
+const broadWords = new Set<string>()
+const MOST_BROAD_WORDS = 1_000
+
 /**
  * Words and digits: where few constants have them they are found first, and the rest of the query looks at those alone; where many
  * have them, a walk in the order of the list soon has a page.
  */
 async function narrow(reader: Reader, { words, digits }: TextQuery, add: (condition: string, values: Bind) => void): Promise<Filter['matched']> {
-  let matched: Filter['matched'] = null
-  const finds: Promise<void>[] = []
-  const narrowBy = async (name: keyof typeof MOST_NARROWED, found: string, walked: string, values: Bind): Promise<void> => {
-    const ids = (await select<{ id: string }>(`${found} LIMIT ${MOST_NARROWED[name] + 1}`, values)).map(({ id }) => id)
-    if (ids.length <= MOST_NARROWED[name]) {
-      matched = 'few'
-      // A row each: of a long list of values the planner would look at every one.
-      return add(`e.constant_id IN (SELECT unnest($${name}Found::uuid[]))`, { [`${name}Found`]: ids })
-    }
-    matched ??= 'many'
-    add(walked, values)
+  /** Adds the condition by what few it finds, or as one to walk by; answers whether they are few. */
+  const narrowBy = async (name: 'digits' | 'words', found: string, walked: string, values: Bind): Promise<boolean> => {
+    const ids = (await select<{ id: string }>(`${found} LIMIT ${narrowing.most + 1}`, values)).map(({ id }) => id)
+    const few = ids.length <= narrowing.most
+    // A row each: of a long list of values the planner would look at every one.
+    if (few) add(`e.constant_id IN (SELECT unnest($${name}Found::uuid[]))`, { [`${name}Found`]: ids })
+    else add(walked, values)
+    return few
   }
-  if (digits !== undefined) {
-    const [lo, hi] = leadingDigits(digits)
+  const byDigits = async (printed: string): Promise<boolean> => {
+    const [lo, hi] = leadingDigits(printed)
     const meets = MEETS('$digitsLo', '$digitsHi')
-    finds.push(narrowBy('digits', `SELECT constant_id AS id FROM register_entries WHERE audience = $audience AND ${meets}`, meets, { audience: audienceOf(reader), digitsLo: lo, digitsHi: hi }))
+    return narrowBy('digits', `SELECT constant_id AS id FROM register_entries WHERE audience = $audience AND ${meets}`, meets, { audience: audienceOf(reader), digitsLo: lo, digitsHi: hi })
   }
-  if (words.length > 0) {
+  const byWords = async (asked: string): Promise<boolean> => {
     const has = `SELECT id FROM constants WHERE search @@ to_tsquery('simple', $words)`
-    finds.push(narrowBy('words', has, `e.constant_id IN (${has})`, { words: words.map((word) => `${word}:*`).join(' & ') }))
+    const walked = `e.constant_id IN (${has})`
+    if (broadWords.has(asked)) {
+      add(walked, { words: asked })
+      return false
+    }
+    const few = await narrowBy('words', has, walked, { words: asked })
+    if (!few && broadWords.size < MOST_BROAD_WORDS) broadWords.add(asked)
+    return few
   }
-  await Promise.all(finds)
-  return matched
+  const few = await Promise.all([
+    ...(digits === undefined ? [] : [byDigits(digits)]),
+    ...(words.length === 0 ? [] : [byWords(words.map((word) => `${word}:*`).join(' & '))]),
+  ])
+  return few.length === 0 ? null : few.includes(true) ? 'few' : 'many'
 }
 
 /** By what each sorting goes, and the type of that; every one has an index. */
@@ -180,7 +191,7 @@ export async function listConstants(
 }
 
 /** Most constants with some words or digits that a query is narrowed to. */
-const MOST_NARROWED = { digits: 1_000, words: 2_000 }
+export const narrowing = { most: 1_000 }
 
 /** Most that is counted of a filtered list, so that counting never costs more than listing. */
 const MOST_COUNTED = 300

@@ -1,7 +1,7 @@
 import request from 'supertest'
 import { beforeAll, describe, expect, it } from 'vitest'
 import { createApp } from '../../server/app.ts'
-import { allConstants } from '../../server/queries/constant.ts'
+import { allConstants, narrowing } from '../../server/queries/constant.ts'
 import { constantQuery } from '../../shared/schemas/constant.ts'
 import { select } from '../../server/db.ts'
 import { makeGroup, makeMember, signedInAs, type Agent, type TestMember } from '../support/people.ts'
@@ -249,6 +249,23 @@ describe('the register', () => {
     const { body } = await agent.get(`/api/v1/constants?limit=2&group=${member.groupId}`)
     expect(body.total).toBe(6)
     expect((await agent.get(`/api/v1/constants?limit=2&group=${member.groupId}&cursor=${encodeURIComponent(body.next)}`)).body.total).toBeUndefined()
+  })
+
+  it('finds the same for words and digits that few constants have and that many have', async () => {
+    const found = async (text: string) => (await agent.get(`/api/v1/constants?text=${encodeURIComponent(text)}&group=${member.groupId}&sort=value`).expect(200)).body as { items: { number: string }[]; total?: number }
+    const few = narrowing.most
+    for (const text of ['primes', '1.6', 'prime factors', '1.6, primes', 'squarefree', '9.99']) {
+      const narrowed = await found(text)
+      expect(narrowed.total).toBe(narrowed.items.length)
+      narrowing.most = 0
+      const [walked, again] = [await found(text), await found(text)]
+      narrowing.most = few
+      expect(walked.items).toEqual(narrowed.items)
+      expect(again).toEqual(walked)
+      if (narrowed.items.length > 0) expect(walked.total).toBeUndefined()
+    }
+    expect((await found('primes')).items.length).toBeGreaterThan(0)
+    expect((await found('1.6')).items.length).toBeGreaterThan(0)
   })
 
   it('goes through everything that is filtered, in order, however many pages it takes', async () => {
