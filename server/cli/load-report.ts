@@ -1,8 +1,8 @@
 import type { Measured } from './load-readers.ts'
-import { PAGES } from './load-visits.ts'
+import { EXPORTS, PAGES, type Visit } from './load-visits.ts'
 
-/** Milliseconds that an answer may take, half of all and all but one of a hundred: of lists, filters and look-ups, and of pages. */
-const LIMITS = { list: { median: 100, p99: 300 }, page: { median: 250, p99: 600 } }
+/** Milliseconds that an answer may take, half of all and all but one of a hundred: of lists, filters and look-ups, and of pages. Files take as long as they are. */
+const LIMITS = { list: { median: 100, p99: 300 }, page: { median: 250, p99: 600 }, file: { median: Infinity, p99: Infinity } }
 
 /** The value below which this share of the sorted numbers lies. */
 const quantile = (sorted: readonly number[], share: number): number => sorted[Math.min(sorted.length - 1, Math.ceil(share * sorted.length) - 1)] ?? 0
@@ -21,8 +21,10 @@ const lineOf = (name: string, kind: Line['kind'], milliseconds: readonly number[
   return { name, kind, requests: sorted.length, median: quantile(sorted, 0.5), p99: quantile(sorted, 0.99), most: sorted.at(-1) ?? 0 }
 }
 
+const kindOf = (visit: Visit): Line['kind'] => (EXPORTS.includes(visit) ? 'file' : PAGES.has(visit.route) ? 'page' : 'list')
+
 /** One line a way of asking. */
-export const linesOf = (measured: Iterable<Measured>): Line[] => [...measured].map(({ visit, milliseconds }) => lineOf(`${visit.route}  ${visit.what}`, PAGES.has(visit.route) ? 'page' : 'list', milliseconds))
+export const linesOf = (measured: Iterable<Measured>): Line[] => [...measured].map(({ visit, milliseconds }) => lineOf(`${visit.route}  ${visit.what}`, kindOf(visit), milliseconds))
 
 /** All ways of asking as one. */
 export const together = (measured: Iterable<Measured>): Line => lineOf('all of these', 'list', [...measured].flatMap(({ milliseconds }) => milliseconds))
