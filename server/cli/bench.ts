@@ -106,6 +106,12 @@ function aMillion(): string[] {
 const shown = (reference: number | null, name: string, seconds: number, scale = 1): string =>
   reference === null ? `${name} is not installed` : `${name} ${(reference * scale).toFixed(2)} s, ratio ${((reference * scale) / seconds).toFixed(1)}`
 
+/** Wall time by one thread and by two, of each the better of two rounds taken in turn: what else the machine does falls on both. */
+async function sideBySide(request: ComputationRequest): Promise<[one: number, two: number]> {
+  const rounds = [[await threaded(1, request), await threaded(2, request)], [await threaded(1, request), await threaded(2, request)]] as const
+  return [Math.min(rounds[0][0], rounds[1][0]), Math.min(rounds[0][1], rounds[1][1])]
+}
+
 async function rows(long: boolean): Promise<Row[]> {
   const primes: SetOfIntegers = { kind: 'primes', exclude: [] }
   const primeSum = canonicalDefinition({ type: 'series', set: primes, weight: WEIGHT })
@@ -121,9 +127,9 @@ async function rows(long: boolean): Promise<Row[]> {
   const whole100 = command(['--set', 'almost-primes', '--k', '1..20', '--digits', '100'])
   const one200 = await cpu(() => enclose({ definitions: [almostPrimes(1)], method: 'panels', goal: { digits: 200 } }))
   const request200: ComputationRequest = { definitions: [almostPrimes(1)], method: 'panels', arithmetic: 'ball', goal: { digits: 200 } }
-  const [oneThread, twoThreads] = [await threaded(1, request200), await threaded(2, request200)]
+  const [oneThread, twoThreads] = await sideBySide(request200)
   const request9: ComputationRequest = { definitions: [primeSum], method: 'partial-sum', arithmetic: 'ball', goal: { cutoff: '4000000000' } }
-  const [oneSieve, twoSieve] = [await threaded(1, request9), await threaded(2, request9)]
+  const [oneSieve, twoSieve] = await sideBySide(request9)
   const sum9 = await cpu(() => enclose({ definitions: [primeSum], method: 'partial-sum', goal: { cutoff: '1000000000' } }))
   const sum7 = await cpu(() => enclose({ definitions: [primeSum], method: 'partial-sum', goal: { cutoff: '10000000' } }))
   const factors = await cpu(() => allFactorsTo(100_000_000))
